@@ -1,0 +1,113 @@
+//! The ranges of what is written in files and options, each declared once with its human name.
+//!
+//! The parser, the message and the manual all read this table.
+
+use std::fmt;
+
+/// A named closed range of a number in a stated unit.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Bound {
+    /// What the number is, as an observer would call it.
+    pub name: &'static str,
+    /// Its unit in the plural, or nothing for a plain number.
+    pub unit: &'static str,
+    /// The least value allowed.
+    pub least: f64,
+    /// The greatest value allowed.
+    pub greatest: f64,
+}
+
+impl Bound {
+    const fn new(name: &'static str, unit: &'static str, least: f64, greatest: f64) -> Self {
+        Self {
+            name,
+            unit,
+            least,
+            greatest,
+        }
+    }
+
+    /// The value itself if it lies in the range; a value that is not a number never does.
+    pub fn check(&self, value: f64) -> Result<f64, OutOfBounds> {
+        if value >= self.least && value <= self.greatest {
+            Ok(value)
+        } else {
+            Err(OutOfBounds {
+                bound: *self,
+                value,
+            })
+        }
+    }
+}
+
+/// A number outside its range.
+#[derive(Clone, Copy, Debug, PartialEq, thiserror::Error)]
+pub struct OutOfBounds {
+    /// The range it should lie in.
+    pub bound: Bound,
+    /// The number found.
+    pub value: f64,
+}
+
+impl fmt::Display for OutOfBounds {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        let Bound {
+            name,
+            unit,
+            least,
+            greatest,
+        } = self.bound;
+        write!(f, "{name} {} is outside {least} to {greatest}", self.value)?;
+        if unit.is_empty() {
+            Ok(())
+        } else {
+            write!(f, " {unit}")
+        }
+    }
+}
+
+/// Geographic latitude, north positive.
+pub const LATITUDE: Bound = Bound::new("latitude", "degrees", -90.0, 90.0);
+/// Geographic longitude, east positive.
+pub const LONGITUDE: Bound = Bound::new("longitude", "degrees", -180.0, 180.0);
+/// Height of the site above sea level: from the Dead Sea's shore to above the highest summit.
+pub const ELEVATION: Bound = Bound::new("elevation", "metres", -500.0, 9000.0);
+/// Air pressure at the site; zero stands for no refraction.
+pub const PRESSURE: Bound = Bound::new("pressure", "hPa", 0.0, 1100.0);
+/// Air temperature at the site.
+pub const TEMPERATURE: Bound = Bound::new("temperature", "degrees Celsius", -80.0, 60.0);
+/// UT1 - UTC, kept within 0.9 s by leap seconds (ITU-R TF.460).
+pub const DUT1: Bound = Bound::new("UT1-UTC", "seconds", -0.9, 0.9);
+/// Declination, north positive.
+pub const DECLINATION: Bound = Bound::new("declination", "degrees", -90.0, 90.0);
+/// Right ascension.
+pub const RIGHT_ASCENSION: Bound = Bound::new("right ascension", "degrees", 0.0, 360.0);
+/// Hour angle at which a side of the pier is left, west positive.
+pub const LIMIT_HOUR_ANGLE: Bound = Bound::new("hour angle", "hours", -12.0, 12.0);
+/// Azimuth from north through east.
+pub const AZIMUTH: Bound = Bound::new("azimuth", "degrees", 0.0, 360.0);
+/// Altitude of the horizon mask.
+pub const MASK_ALTITUDE: Bound = Bound::new("altitude", "degrees", 0.0, 90.0);
+/// Lowest altitude the mount may be used at.
+pub const LOWEST_ALTITUDE: Bound = Bound::new("lowest altitude", "degrees", -5.0, 90.0);
+/// Year of an equinox or of an epoch: the precession model is good far beyond.
+pub const EQUINOX_YEAR: Bound = Bound::new("year of the equinox", "", 1750.0, 2200.0);
+/// Field of an optic.
+pub const FIELD: Bound = Bound::new("field", "degrees", 0.001, 60.0);
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn the_message_names_the_thing_the_value_and_the_range() {
+        let said = LATITUDE.check(95.0).unwrap_err().to_string();
+        assert_eq!(said, "latitude 95 is outside -90 to 90 degrees");
+    }
+
+    #[test]
+    fn what_is_not_a_number_is_never_in_range() {
+        assert!(DUT1.check(f64::NAN).is_err());
+        assert!(DUT1.check(0.9).is_ok());
+    }
+}

@@ -1,0 +1,1 @@
+//! What is known of the mount's errors: prior, readings, fit, prediction.

@@ -1,0 +1,2 @@
+//! nonius
+fn main() {}

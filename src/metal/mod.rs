@@ -1,0 +1,13 @@
+//! The mount as built: graduated circles, axes and sides, the exact geometry between sky and axes.
+
+pub mod circle;
+pub mod errors;
+pub mod mount;
+pub mod side;
+
+pub use circle::{
+    DeclinationCircle, DeclinationNumbering, HourCircle, HourNumbering, Increases, Ring,
+};
+pub use errors::MountErrors;
+pub use mount::{Dome, ExpectedErrors, HourAngleSpan, Kind, Limits, Mount, Optic, Tube};
+pub use side::Side;

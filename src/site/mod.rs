@@ -1,0 +1,1 @@
+//! The files a user writes, read strictly into the types of the floors below.
