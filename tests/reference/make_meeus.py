@@ -11,7 +11,7 @@ import palpy
 from pymeeus import Coordinates, Epoch
 from pymeeus.Angle import Angle
 
-import erfa_place
+import erfa_place  # noqa: F401  (quiets ERFA beyond its table of leap seconds)
 import table
 
 HEAD = """
@@ -35,7 +35,6 @@ def degrees(text):
 
 def rows():
     apr10 = (2446895.5, 0.0)
-    tt = (2446895.5, 55.3 / 86400)
     evening = (2446895.5, (19 * 60 + 21) / 1440)
     gmst = [np.degrees(erfa.gmst06(*ut, ut[0], ut[1] + 55.3 / 86400)) for ut in (apr10, evening)]
     gast = [np.degrees(erfa.gst06a(*ut, ut[0], ut[1] + 55.3 / 86400)) for ut in (apr10, evening)]
