@@ -1,95 +1,14 @@
-//! Angles as people write them: hours or degrees with minutes and seconds, read and written.
+//! Reading a written angle.
 //!
 //! Read: `20h 56m 40.5s`, `20 56 40`, `20:56:40`, `314.2d`, `32° 35'`, `32 35 N`, `-5.4`, `+0h40m`,
 //! `4m`, `20s`, `30'`. The first mark settles the unit; a bare number is in the unit the caller
 //! expects there. Only the last part may have decimals, and minutes and seconds stay below sixty
-//! unless they stand first. Written: `20h 56m 40s`, `32° 35'`, as fine as the step asked for.
+//! unless they stand first.
 
-use std::fmt;
 use std::ops::Range;
 
+use super::{Half, TextFault, Unit, Written};
 use crate::angle::Angle;
-
-/// The unit of the whole part of a written angle.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Unit {
-    /// Hours of 15 degrees, with minutes and seconds of time.
-    Hours,
-    /// Degrees, with minutes and seconds of arc.
-    Degrees,
-}
-
-impl Unit {
-    /// An angle of so many of this unit.
-    #[must_use]
-    pub const fn of(self, value: f64) -> Angle {
-        match self {
-            Self::Hours => Angle::from_hours(value),
-            Self::Degrees => Angle::from_degrees(value),
-        }
-    }
-
-    /// An angle in this unit.
-    #[must_use]
-    pub const fn measure(self, angle: Angle) -> f64 {
-        match self {
-            Self::Hours => angle.hours(),
-            Self::Degrees => angle.degrees(),
-        }
-    }
-}
-
-/// The letter that says in which half of a circle an unsigned reading lies.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Half {
-    /// North of the equator.
-    North,
-    /// South of the equator.
-    South,
-    /// East of the meridian.
-    East,
-    /// West of the meridian.
-    West,
-}
-
-/// An angle as it was written, before anything is made of its sign or letter.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Written {
-    /// The sign if one was written: true for minus.
-    pub negative: Option<bool>,
-    /// Its size, never negative.
-    pub size: Angle,
-    /// The unit it was written in.
-    pub unit: Unit,
-    /// True if any mark named the unit, false if it was the caller's.
-    pub unit_was_named: bool,
-    /// The letter that followed, if any.
-    pub half: Option<Half>,
-}
-
-impl Written {
-    /// The angle with its written sign; a letter is not looked at.
-    #[must_use]
-    pub fn signed(&self) -> Angle {
-        if self.negative == Some(true) {
-            -self.size
-        } else {
-            self.size
-        }
-    }
-}
-
-/// Why a text is no angle, and where.
-#[derive(Clone, Debug, PartialEq, Eq, thiserror::Error)]
-#[error("{message}")]
-pub struct TextFault {
-    /// The bytes of the text that are wrong.
-    pub at: Range<usize>,
-    /// What is wrong.
-    pub message: String,
-    /// What to write instead.
-    pub hint: &'static str,
-}
 
 /// The places of a written angle.
 #[derive(Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
@@ -369,93 +288,6 @@ impl Reader<'_> {
     }
 }
 
-/// How an angle is written: its unit, and the step it is rounded to.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Notation {
-    unit: Unit,
-    /// The step in seconds of the unit, above zero.
-    step_s: f64,
-}
-
-impl Notation {
-    /// The finest step written, in seconds.
-    const FINEST_S: f64 = 0.001;
-
-    /// Writes in `unit`, rounded to `step` (held at a thousandth of a second or more).
-    #[must_use]
-    pub fn new(unit: Unit, step: Angle) -> Self {
-        Self {
-            unit,
-            step_s: (unit.measure(step) * 3600.0).abs().max(Self::FINEST_S),
-        }
-    }
-
-    /// The nearest multiple of the step.
-    #[must_use]
-    pub fn round(&self, angle: Angle) -> Angle {
-        let seconds = self.unit.measure(angle) * 3600.0;
-        self.unit
-            .of((seconds / self.step_s).round() * self.step_s / 3600.0)
-    }
-
-    /// The rounded angle as text, with a minus sign where it is negative.
-    #[must_use]
-    pub fn write(&self, angle: Angle) -> String {
-        let rounded = self.unit.measure(self.round(angle)) * 3600.0;
-        let sign = if rounded < -Self::FINEST_S / 2.0 {
-            "-"
-        } else {
-            ""
-        };
-        format!("{sign}{}", self.unsigned(rounded.abs()))
-    }
-
-    /// True if `step` is a whole number of `seconds`.
-    fn in_whole(&self, seconds: f64) -> bool {
-        let steps = self.step_s / seconds;
-        (steps - steps.round()).abs() < 1e-6 && steps > 0.5
-    }
-
-    fn unsigned(&self, seconds: f64) -> String {
-        let [whole_mark, minute_mark, second_mark] = match self.unit {
-            Unit::Hours => ["h", "m", "s"],
-            Unit::Degrees => ["°", "'", "\""],
-        };
-        #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)]
-        // not negative, and bounded by the reader
-        let thousandths = (seconds * 1000.0).round() as u64;
-        let (whole, minutes) = (thousandths / 3_600_000, thousandths / 60_000 % 60);
-        let (second, thousandth) = (thousandths / 1000 % 60, thousandths % 1000);
-        if self.in_whole(3600.0) {
-            format!("{whole}{whole_mark}")
-        } else if self.in_whole(60.0) {
-            format!("{whole}{whole_mark} {minutes:02}{minute_mark}")
-        } else if self.in_whole(1.0) {
-            format!("{whole}{whole_mark} {minutes:02}{minute_mark} {second:02}{second_mark}")
-        } else if self.in_whole(0.1) {
-            format!(
-                "{whole}{whole_mark} {minutes:02}{minute_mark} {second:02}.{}{second_mark}",
-                thousandth / 100
-            )
-        } else {
-            format!(
-                "{whole}{whole_mark} {minutes:02}{minute_mark} {second:02}.{thousandth:03}{second_mark}"
-            )
-        }
-    }
-}
-
-impl fmt::Display for Half {
-    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
-        f.write_str(match self {
-            Self::North => "N",
-            Self::South => "S",
-            Self::East => "E",
-            Self::West => "W",
-        })
-    }
-}
-
 #[cfg(test)]
 mod tests {
     use proptest::prelude::*;
@@ -546,47 +378,10 @@ mod tests {
         }
     }
 
-    #[test]
-    fn text_is_as_fine_as_the_step() {
-        let hours = |step_s: f64| Notation::new(Unit::Hours, Angle::from_time_seconds(step_s));
-        let value = Angle::from_hours(20.944_5);
-        assert_eq!(hours(20.0).write(value), "20h 56m 40s");
-        assert_eq!(hours(60.0).write(value), "20h 57m");
-        assert_eq!(hours(300.0).write(value), "20h 55m");
-        assert_eq!(hours(3600.0).write(value), "21h");
-        assert_eq!(hours(0.1).write(value), "20h 56m 40.2s");
-        let degrees =
-            |step_arcmin: f64| Notation::new(Unit::Degrees, Angle::from_arcminutes(step_arcmin));
-        assert_eq!(degrees(5.0).write(Angle::from_degrees(-32.59)), "-32° 35'");
-        assert_eq!(
-            degrees(0.5).write(Angle::from_degrees(32.59)),
-            "32° 35' 30\""
-        );
-        assert_eq!(degrees(15.0).write(Angle::from_degrees(-0.05)), "0° 00'");
-    }
-
-    #[test]
-    fn rounding_carries_into_the_whole() {
-        let notation = Notation::new(Unit::Hours, Angle::from_time_seconds(1.0));
-        assert_eq!(notation.write(Angle::from_hours(2.999_99)), "3h 00m 00s");
-    }
-
     proptest! {
         #[test]
         fn reading_never_panics(text in "\\PC{0,24}") {
             let _ = read(&text, Unit::Hours);
-        }
-
-        #[test]
-        fn what_is_written_is_read_back(degrees in -400.0..400.0f64, step in 0.001..7200.0f64) {
-            for unit in [Unit::Hours, Unit::Degrees] {
-                let notation = Notation::new(unit, Angle::from_arcseconds(step));
-                let angle = Angle::from_degrees(degrees);
-                let back = read(&notation.write(angle), unit).unwrap().signed();
-                // half a thousandth of a second of the unit is lost where the step is an odd fraction
-                let lost = if notation.in_whole(1.0) { 1e-6 } else { 0.0006 * 15.0 };
-                prop_assert!((back - notation.round(angle)).arcseconds().abs() <= lost + 1e-6);
-            }
         }
     }
 }
