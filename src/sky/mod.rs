@@ -1,1 +1,31 @@
 //! Where things are, for an observer at a place: catalogue place, apparent place, observed place.
+//!
+//! | place | type | what it is |
+//! |---|---|---|
+//! | catalogue | [`CataloguePlace`] | right ascension and declination at an equinox and an epoch |
+//! | apparent | [`Apparent`] | from the site, on the true equator and equinox of date, without air |
+//! | observed | [`Observed`] | the apparent place lifted by refraction: where the tube must point |
+//!
+//! [`Moment`] is the sky at one instant for one observer: made once, it gives the place of any
+//! number of targets. The models are those of IAU SOFA as carried by `sofars`; polar motion
+//! (0.3" at most, on the sky) is left out.
+
+mod air;
+mod body;
+mod catalogue_place;
+mod earth;
+mod fk4;
+mod horizon;
+mod moment;
+mod observer;
+mod place;
+pub mod refraction;
+mod vector;
+
+pub use air::Air;
+pub use body::Body;
+pub use catalogue_place::{CataloguePlace, Equinox};
+pub use horizon::HorizonMask;
+pub use moment::Moment;
+pub use observer::Observer;
+pub use place::{Apparent, Observed, Source, separation};
