@@ -1,1 +1,7 @@
 //! The terminal at the eyepiece.
+
+pub mod figures;
+pub mod happening;
+pub mod keys;
+pub mod light;
+pub mod terminal;
