@@ -1,11 +1,11 @@
 #!/usr/bin/env python3
-"""Make messier.csv from OpenNGC and a table of remembered corrections.
+"""Make messier.csv and ngc.csv from OpenNGC and a table of remembered corrections.
 
 Packages, exactly these versions:
     PyOngc==1.2.2    (ongc.db: OpenNGC, CC BY-SA 4.0)
     skyfield==1.55   (constellation boundaries)
 
-Run:  python3 make_deep_sky.py     writes messier.csv beside this file.
+Run:  python3 make_deep_sky.py     writes messier.csv and ngc.csv beside this file.
 """
 
 import csv
@@ -101,6 +101,15 @@ def read_source():
     for old, new in BETTER_KNOWN_AS.items():
         objects[new] = objects.pop(old)
         others[new] = (others.pop(old, set()) | {old}) - {new}
+    owners = {}
+    for name in sorted(others, key=number_key):
+        if name not in objects:
+            print(f"no object {name} for its other numbers {sorted(others[name])}")
+        for other in sorted(others[name]):
+            owner = owners.setdefault(other, name)
+            if other in objects or owner != name:  # its own record, or the first that claims it, wins
+                others[name].discard(other)
+                print(f"{other} is not {name}: {'it has a record' if other in objects else 'it is ' + owner}")
     return objects, others, len(rows), skipped
 
 
@@ -122,9 +131,12 @@ def put_right(objects):
 
 
 def magnitude(thing):
-    """V; B where there is no V, or where a galaxy's V is fainter than its B, which cannot be."""
-    v, b = thing["v"], thing["b"]
-    return b if v is None or (thing["kind"] == "galaxy" and b is not None and v >= b) else v
+    """V; or B, for an object of stars without V or a galaxy whose V is fainter than its B, which cannot be."""
+    v, b, kind = thing["v"], thing["b"], thing["kind"]
+    if v is None:
+        cloud = ("nebula" in kind and kind != "planetary nebula") or kind == "supernova remnant"
+        return None if cloud else b
+    return b if kind == "galaxy" and b is not None and v >= b else v
 
 
 def line(name, thing, also, constellation_at):
@@ -159,9 +171,10 @@ Made by make_deep_sky.py beside this file."""
 
 COLUMN_TEXT = """\
 Columns: name; kind in words; ra_deg, dec_deg = ICRS (J2000), degrees, to 0.0001 degree; magnitude = V (where the source
-has no V, or a galaxy's V that is fainter than its B, then B: a galaxy looks up to a magnitude brighter than that);
-major_arcmin, minor_arcmin = size in minutes of arc (minor empty: round or not known); constellation = IAU
-abbreviation; also = other names, separated by semicolons. An empty field is not known."""
+has no V, or a galaxy's V that is fainter than its B, then B: a galaxy looks up to a magnitude brighter than that; no B
+for nebulae, where it is mostly that of a star in them); major_arcmin, minor_arcmin = size in minutes of arc (minor
+empty: round or not known); constellation = IAU abbreviation; also = other names, separated by semicolons. An empty
+field is not known."""
 
 
 def main():
@@ -174,7 +187,8 @@ def main():
         label = thing["messier"] or (name if name.startswith("M ") else None)
         if label is None:
             continue
-        numbers = sorted(({name} | others.get(name, set())) - {label}, key=number_key)
+        numbers = [] if name == label else [name]
+        numbers += sorted(others.get(name, set()), key=number_key)
         numbers += ["M 102"] if label == "M 101" else []
         messier.append(line(label, thing, numbers + thing["names"], constellation_at))
     messier.sort(key=lambda row: number_key(row[0]))
@@ -187,6 +201,27 @@ as listed in deep-sky-remembered.csv; M 102 taken as a second name of M 101 (som
 NGC 5866); M 40 and M 73 given sizes. Sizes of open clusters are the source's: often half of what an eye takes in.
 {COLUMN_TEXT}
 """, messier)
+
+    ngc = []
+    for name, thing in objects.items():
+        if name.startswith("M "):
+            continue
+        also = [thing["messier"]] if thing["messier"] else []
+        also += ["M 102"] if thing["messier"] == "M 101" else []
+        also += sorted(others.get(name, set()), key=number_key)
+        ngc.append(line(name, thing, also + thing["names"], constellation_at))
+    ngc.sort(key=lambda row: number_key(row[0]))
+    extra = [row[0] for row in ngc if not row[0].startswith(("NGC ", "IC "))]
+    write(HERE / "ngc.csv", f"""\
+The NGC and IC, existing objects once each, and {len(extra)} without such a number
+{CREDIT} Changes made: of the source's {total} rows {skipped} are left out (second
+records of an object, things that do not exist, parts of pairs, other catalogues); second numbers given as other names;
+radians turned into degrees; kinds put into words; constellations by the IAU boundaries (skyfield 1.55); {touched} objects,
+here and in messier.csv, put right or named FROM MEMORY as listed in deep-sky-remembered.csv, among them: the Flame is
+NGC 2024, not IC 434; the Rosette's cluster is NGC 2244 (the source has it as NGC 2239); IC 1396 is 170' across; NGC 7000
+is given by its middle. Sizes of clusters not listed there are the source's: often half of what an eye takes in.
+{COLUMN_TEXT}
+""", ngc)
 
 
 if __name__ == "__main__":
