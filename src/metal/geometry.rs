@@ -196,7 +196,8 @@ fn axes_without_index<S: Scalar>(
     Ok((hour, dec))
 }
 
-fn direction(hour_angle: HourAngle, declination: Declination) -> [f64; 3] {
+/// The unit vector of a place in the equatorial frame.
+pub(super) fn direction(hour_angle: HourAngle, declination: Declination) -> [f64; 3] {
     let (sin_h, cos_h) = hour_angle.angle().radians().sin_cos();
     let (sin_d, cos_d) = declination.angle().radians().sin_cos();
     [cos_d * cos_h, cos_d * sin_h, sin_d]
@@ -219,7 +220,7 @@ fn hemisphere(latitude: Latitude) -> f64 {
 }
 
 /// East, north and up of a direction of the equatorial frame.
-fn to_horizon<S: Scalar>([x, y, z]: [S; 3], latitude: Latitude) -> [S; 3] {
+pub(super) fn to_horizon<S: Scalar>([x, y, z]: [S; 3], latitude: Latitude) -> [S; 3] {
     let (sin, cos) = latitude.angle().radians().sin_cos();
     let (sin, cos) = (S::from(sin), S::from(cos));
     [-y, z * cos - x * sin, x * cos + z * sin]

@@ -1,16 +1,31 @@
 //! The mount as built: graduated circles, axes and sides, the exact geometry between sky and axes.
 
 pub mod circle;
+pub mod dome;
 mod dual;
+pub mod engraved;
 pub mod errors;
 pub mod geometry;
+pub mod limits;
+pub mod look;
+pub mod marks;
 pub mod mount;
+pub mod reading;
+pub mod scale;
 pub mod side;
+pub mod side_choice;
+pub mod typed;
 
 pub use circle::{
     DeclinationCircle, DeclinationNumbering, HourCircle, HourNumbering, Increases, Ring,
 };
+pub use dome::{EyepiecePlace, Slit, TubeDirections};
+pub use engraved::{Graduation, VernierLine};
 pub use errors::MountErrors;
 pub use geometry::{Axes, Slopes, TooNearPole, to_axes, to_axes_with_slopes, to_sky};
+pub use marks::{MarkAhead, StripMark};
 pub use mount::{Dome, ExpectedErrors, HourAngleSpan, Kind, Limits, Mount, Optic, Tube};
+pub use scale::{Reading, Scale};
 pub use side::Side;
+pub use side_choice::{NoSuchSide, SideRequest, UnknownSide};
+pub use typed::{read_dec, read_hour};

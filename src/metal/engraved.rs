@@ -1,0 +1,191 @@
+//! A reading as the engraving has it: the text, and where it lies among the marks.
+//!
+//! The text is rounded to what the eye can set, the vernier's least count or else a quarter of a division
+//! (common practice, no source), and brought back onto the scale after the rounding: 23h 59m 58s may become
+//! 0h 00m. "Past" a mark is the way the numbers grow there, so away from zero on a scale that has two sides.
+
+use crate::angle::Angle;
+use crate::metal::scale::{Face, Reading, SAME_POSITION_RAD, Scale};
+use crate::sexagesimal::Notation;
+
+/// Without a vernier the eye sets a quarter of a division (common practice, no source).
+const DIVISIONS_THE_EYE_SETS: f64 = 0.25;
+
+/// A value this near the next mark, in divisions, lies on it: rounding, not engraving.
+const ON_A_MARK_DIVISIONS: f64 = 1e-7;
+
+/// Parts of a division as an observer says them, none further than a twentieth from its neighbour's middle.
+const PARTS: [(f64, &str); 11] = [
+    (0.1, "a tenth of a division"),
+    (0.2, "a fifth of a division"),
+    (0.25, "a quarter of a division"),
+    (1.0 / 3.0, "a third of a division"),
+    (0.4, "two fifths of a division"),
+    (0.5, "half a division"),
+    (0.6, "three fifths of a division"),
+    (2.0 / 3.0, "two thirds of a division"),
+    (0.75, "three quarters of a division"),
+    (0.8, "four fifths of a division"),
+    (0.9, "nine tenths of a division"),
+];
+
+/// Where a reading lies among the marks.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Graduation {
+    /// The mark passed last as the numbers grow.
+    pub mark: Reading,
+    /// That mark as numbered, without a letter.
+    pub mark_text: String,
+    /// How far past it, in divisions, from 0 to below 1.
+    pub past: f64,
+    /// The same in words: "two fifths of a division past 3h 12m", "on the mark 3h 12m".
+    pub words: String,
+    /// The vernier line that meets a mark, where there is a vernier.
+    pub vernier: Option<VernierLine>,
+}
+
+/// A line of a vernier.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct VernierLine {
+    /// Its number; 0 is the index line itself.
+    pub number: u32,
+    /// What it adds to the mark passed last.
+    pub text: String,
+}
+
+impl Scale {
+    /// The smallest step the eye can set.
+    #[must_use]
+    pub fn settable_step(&self) -> Angle {
+        self.vernier
+            .unwrap_or(self.division * DIVISIONS_THE_EYE_SETS)
+    }
+
+    /// The reading as engraved, rounded as the eye can set it: `20h 56m 40s`, `3h 12m E`, `-5° 24'`.
+    #[must_use]
+    pub fn text(&self, reading: Reading) -> String {
+        let step = self.settable_step();
+        self.write(self.rounded(reading, step), step)
+    }
+
+    /// Where the reading lies among the marks; with a vernier, after rounding to its least count.
+    #[must_use]
+    pub fn graduation(&self, reading: Reading) -> Graduation {
+        let seen = match self.vernier {
+            Some(least_count) => self.rounded(reading, least_count),
+            None => reading,
+        };
+        let divisions = seen.value.abs() / self.division;
+        let marks = (divisions + ON_A_MARK_DIVISIONS).floor();
+        let past = (divisions - marks).max(0.0);
+        let numbered = |marks: f64| {
+            let size = self.division * marks;
+            let value = if seen.value < Angle::ZERO {
+                -size
+            } else {
+                size
+            };
+            let half = seen.half;
+            let mark = self.on_scale(Reading { value, half });
+            (mark, self.write_unlettered(mark, self.division))
+        };
+        let (mark, mark_text) = numbered(marks);
+        let vernier = self.vernier.map(|least_count| {
+            let line = (self.division * past / least_count).round();
+            VernierLine {
+                number: whole(line),
+                text: Notation::new(self.unit, least_count).write(least_count * line),
+            }
+        });
+        let between_marks = vernier.as_ref().is_some_and(|line| line.number > 0);
+        let words = match part(past) {
+            Part::Of(part) => format!("{part} past {mark_text}"),
+            Part::None if between_marks => format!("just past {mark_text}"),
+            Part::None => format!("on the mark {mark_text}"),
+            Part::Whole if between_marks => format!("just short of {}", numbered(marks + 1.0).1),
+            Part::Whole => format!("on the mark {}", numbered(marks + 1.0).1),
+        };
+        Graduation {
+            mark,
+            mark_text,
+            past,
+            words,
+            vernier,
+        }
+    }
+
+    /// The reading to the nearest step, on the scale.
+    pub(super) fn rounded(&self, reading: Reading, step: Angle) -> Reading {
+        let value = Notation::new(self.unit, step).round(reading.value);
+        self.on_scale(Reading { value, ..reading })
+    }
+
+    /// The reading as text, as fine as the step, with sign and letter where the scale has them.
+    pub(super) fn write(&self, reading: Reading, step: Angle) -> String {
+        let number = self.write_unlettered(reading, step);
+        match reading.half {
+            Some(half) => format!("{number} {half}"),
+            None => number,
+        }
+    }
+
+    /// As [`Self::write`], without the letter.
+    pub(super) fn write_unlettered(&self, reading: Reading, step: Angle) -> String {
+        let number = Notation::new(self.unit, step).write(reading.value.abs());
+        if !self.face.is_signed() || self.is_shared_by_both_halves(reading.value) {
+            number
+        } else if reading.value < Angle::ZERO {
+            format!("-{number}")
+        } else {
+            format!("+{number}")
+        }
+    }
+
+    /// A rounded reading brought back onto the scale: what has passed the end stands at the end, which is
+    /// zero on a scale that goes once round, and no letter stays where the halves meet.
+    fn on_scale(&self, reading: Reading) -> Reading {
+        let end = self.face.greatest();
+        let past_end = reading.value.abs().radians() > end.radians() - SAME_POSITION_RAD;
+        let value = match self.face {
+            Face::Turn if past_end => Angle::ZERO,
+            Face::SignedQuarters if past_end && reading.value < Angle::ZERO => -end,
+            // ±180° is one mark
+            _ if past_end => end,
+            _ => reading.value,
+        };
+        let half = reading
+            .half
+            .filter(|_| !self.is_shared_by_both_halves(value));
+        Reading { value, half }
+    }
+
+    /// True at zero, and at 180° where that is the end.
+    fn is_shared_by_both_halves(&self, value: Angle) -> bool {
+        let size = value.abs();
+        let ends_at_half_turn = matches!(self.face, Face::Halves | Face::SignedHalves);
+        size.radians() < SAME_POSITION_RAD
+            || ends_at_half_turn && (size - Angle::HALF_TURN).abs().radians() < SAME_POSITION_RAD
+    }
+}
+
+/// A part of a division in words.
+enum Part {
+    None,
+    Of(&'static str),
+    Whole,
+}
+
+fn part(past: f64) -> Part {
+    let whole = [(0.0, Part::None), (1.0, Part::Whole)].into_iter();
+    let parts = PARTS.into_iter().map(|(size, said)| (size, Part::Of(said)));
+    whole
+        .chain(parts)
+        .min_by(|a, b| (a.0 - past).abs().total_cmp(&(b.0 - past).abs()))
+        .map_or(Part::None, |(_, part)| part)
+}
+
+/// A count of lines as a whole number.
+#[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // not negative; a cast holds at the ends
+fn whole(count: f64) -> u32 {
+    count.max(0.0) as u32
+}
