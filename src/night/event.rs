@@ -180,6 +180,21 @@ impl Event {
         }
     }
 
+    /// The object or star it is about, if any.
+    #[must_use]
+    pub fn about(&self) -> Option<&str> {
+        match self {
+            Self::TargetTaken { target, .. } | Self::TargetAdded { target } => Some(&target.name),
+            Self::StarRead(reading) => Some(&reading.star),
+            Self::Found { target, .. }
+            | Self::Missed { target, .. }
+            | Self::SunRiskAcknowledged { target } => Some(target),
+            Self::Note { target, .. } => target.as_deref(),
+            Self::RingSet { reading, .. } => reading.as_ref().map(|reading| reading.star.as_str()),
+            _ => None,
+        }
+    }
+
     /// The word for it in the log.
     #[must_use]
     pub const fn word(&self) -> &'static str {

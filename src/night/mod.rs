@@ -1,11 +1,25 @@
 //! The session: events, state, journal, replay.
+//!
+//! An act becomes an [`Event`]; the event is made safe in the [`Journal`]; then [`update`] makes the
+//! next state of it. Opening a night again is going through its events.
 
+mod acts;
+mod apply;
+pub mod effect;
 pub mod event;
 pub mod journal;
 pub mod listed;
+#[allow(clippy::module_inception)] // the night itself
+pub mod night;
 pub mod reading;
+pub mod session;
+pub mod state;
 
+pub use effect::{Effect, Said};
 pub use event::{Circle, Event, Opening, Stamped};
 pub use journal::{Journal, JournalFault, Notice};
 pub use listed::{ListedPlace, ListedTarget};
+pub use night::{Night, Refusal, update};
 pub use reading::{Setting, StarReading};
+pub use session::{Begun, Session, SessionFault};
+pub use state::{NightReading, NightTarget, Outcome, State, TubeShown, Zeros};
