@@ -101,15 +101,20 @@ pub fn read(path: &Path) -> Result<Contents, JournalFault> {
         path: path.to_owned(),
         source,
     })?;
-    if !scan::is_a_journal(&bytes) {
-        return Err(JournalFault::NotAJournal {
-            path: path.to_owned(),
-        });
-    }
-    let scan::Scan {
-        events, notices, ..
-    } = scan::scan(&bytes);
-    Ok(Contents { events, notices })
+    understand(&bytes).ok_or_else(|| JournalFault::NotAJournal {
+        path: path.to_owned(),
+    })
+}
+
+/// What stands in a journal of these bytes; nothing if they are something else.
+#[must_use]
+pub fn understand(bytes: &[u8]) -> Option<Contents> {
+    scan::is_a_journal(bytes).then(|| {
+        let scan::Scan {
+            events, notices, ..
+        } = scan::scan(bytes);
+        Contents { events, notices }
+    })
 }
 
 impl Journal {
@@ -180,5 +185,68 @@ impl Journal {
     #[must_use]
     pub fn path(&self) -> &Path {
         &self.path
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use std::sync::{Arc, Mutex};
+
+    use super::*;
+
+    /// A disk in memory that holds so many bytes and no more.
+    struct SmallDisk {
+        bytes: Arc<Mutex<Vec<u8>>>,
+        room: usize,
+    }
+
+    impl Disk for SmallDisk {
+        fn write(&mut self, at: u64, bytes: &[u8]) -> io::Result<()> {
+            let mut held = self.bytes.lock().unwrap();
+            held.truncate(usize::try_from(at).unwrap());
+            let fitting = bytes.len().min(self.room - held.len());
+            held.extend_from_slice(&bytes[..fitting]);
+            if fitting == bytes.len() {
+                Ok(())
+            } else {
+                Err(io::ErrorKind::StorageFull.into())
+            }
+        }
+
+        fn cut(&mut self, length: u64) -> io::Result<()> {
+            let mut held = self.bytes.lock().unwrap();
+            held.truncate(usize::try_from(length).unwrap());
+            Ok(())
+        }
+    }
+
+    #[test]
+    fn a_full_disk_is_said_and_leaves_no_half_line() {
+        let bytes = Arc::new(Mutex::new(Vec::new()));
+        let mut journal = Journal {
+            path: PathBuf::from("night.jsonl"),
+            disk: Box::new(SmallDisk {
+                bytes: Arc::clone(&bytes),
+                room: 250,
+            }),
+            end: 0,
+            next_number: 1,
+        };
+        let utc = Utc::parse("2026-12-01T21:30:00Z").unwrap();
+        let note = |text: &str| Event::Note {
+            target: None,
+            text: text.to_owned(),
+        };
+        journal.append(utc, &note("first")).unwrap();
+        let whole = bytes.lock().unwrap().clone();
+        let fault = journal.append(utc, &note(&"long ".repeat(40))).unwrap_err();
+        assert!(matches!(fault, JournalFault::Write { .. }));
+        assert_eq!(*bytes.lock().unwrap(), whole);
+        // what is short enough still goes in, with the next number
+        let stamped = journal.append(utc, &note("short")).unwrap();
+        assert_eq!(stamped.number, 2);
+        let contents = understand(&bytes.lock().unwrap()).unwrap();
+        assert_eq!(contents.events.len(), 2);
+        assert_eq!(contents.notices, []);
     }
 }
