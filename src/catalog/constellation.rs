@@ -18,7 +18,11 @@ pub struct Constellation {
     pub genitive: &'static str,
 }
 
-const fn of(abbreviation: &'static str, name: &'static str, genitive: &'static str) -> Constellation {
+const fn of(
+    abbreviation: &'static str,
+    name: &'static str,
+    genitive: &'static str,
+) -> Constellation {
     Constellation {
         abbreviation,
         name,

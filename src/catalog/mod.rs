@@ -1,1 +1,32 @@
 //! Catalogues and target lists: what they hold, the names things go by, the search.
+//!
+//! [`Catalogue`] is the door: [`Catalogue::resolve`] from a name or coordinates to a [`Target`],
+//! [`Catalogue::search`] from a few typed words to many, [`Catalogue::resolve_entry`] from an entry
+//! of a list, [`Catalogue::bright_stars`] for calibration. The built-in tables stay text and are
+//! read in place, so that a run that wants one target pays for one.
+
+mod asked;
+mod catalogue;
+pub mod constellation;
+mod deep_sky;
+mod fold;
+pub mod given;
+pub mod greek;
+pub mod kind;
+mod likeness;
+pub mod list;
+pub mod report;
+mod rows;
+pub mod search;
+mod solar_system;
+mod stars;
+pub mod target;
+
+pub use catalogue::{Catalogue, Unresolved};
+pub use constellation::Constellation;
+pub use greek::Greek;
+pub use kind::{Kind, UnknownKind};
+pub use list::{TargetList, clean};
+pub use report::FindReport;
+pub use search::{Filter, Found, Near};
+pub use target::{Origin, Target};

@@ -78,6 +78,15 @@ impl CataloguePlace {
         }
     }
 
+    /// Where the target stands in the ICRS at epoch J2000.0; nothing for a place of date, which is
+    /// past that stage.
+    #[must_use]
+    pub fn at_icrs_j2000(&self) -> Option<(RightAscension, Declination)> {
+        let star = self.star()?;
+        let (ra, dec) = spherical(&plus(&star.direction, 2000.0 - star.epoch, &star.motion));
+        Some((RightAscension::new(ra), Declination::new(dec)))
+    }
+
     /// The star in the axes of the ICRS; nothing for a place of date, which is past that stage.
     pub(crate) fn star(&self) -> Option<Star> {
         match self.equinox {

@@ -1,0 +1,242 @@
+//! All catalogues together: from a name to a target.
+
+use crate::catalog::asked::{Asked, Fit};
+use crate::catalog::deep_sky::DeepSky;
+use crate::catalog::stars::{Star, StarNames, Stars};
+use crate::catalog::target::Origin;
+use crate::catalog::{Filter, Target, given, solar_system};
+use crate::sexagesimal::TextFault;
+use crate::sky::{Body, CataloguePlace, Source, separation};
+
+/// The catalogues compiled into the program, and the observer's own targets.
+///
+/// The built-in tables stay the text they are; making one of these costs nothing to speak of, and
+/// a name looks only at what it needs.
+#[derive(Clone, Debug)]
+pub struct Catalogue {
+    pub(super) stars: Stars,
+    pub(super) deep_sky: [DeepSky; 1],
+    pub(super) own: Vec<Target>,
+}
+
+/// Why a text is no target.
+#[derive(Clone, Debug, PartialEq, Eq, thiserror::Error)]
+pub enum Unresolved {
+    /// No catalogue knows the name.
+    #[error(
+        "no catalogue knows \"{text}\"{}",
+        listed(", the nearest names are", nearest)
+    )]
+    Unknown {
+        /// The name as given.
+        text: String,
+        /// Names much like it, the likest first; may be empty.
+        nearest: Vec<String>,
+    },
+    /// The letter belongs to several stars too far apart to be taken for one.
+    #[error("\"{text}\" is several stars{}", listed(":", choices))]
+    Several {
+        /// The name as given.
+        text: String,
+        /// The names of the stars.
+        choices: Vec<String>,
+    },
+    /// It looks like coordinates, and something is wrong with them.
+    #[error("\"{text}\" is not a place: {fault}")]
+    Coordinates {
+        /// The coordinates as given.
+        text: String,
+        /// What is wrong, and where in the text.
+        fault: TextFault,
+    },
+}
+
+fn listed(before: &str, names: &[String]) -> String {
+    if names.is_empty() {
+        String::new()
+    } else {
+        format!("{before} {}", names.join(", "))
+    }
+}
+
+impl Unresolved {
+    /// What to write instead.
+    #[must_use]
+    pub fn hint(&self) -> String {
+        match self {
+            Self::Unknown { nearest, .. } if nearest.is_empty() => {
+                "search the catalogues with `nonius find`, or give coordinates as in \"05:52:18.3 +32:33:11\"".to_owned()
+            }
+            Self::Unknown { nearest: names, .. } | Self::Several { choices: names, .. } => {
+                format!("did you mean {}?", names.join(" or "))
+            }
+            Self::Coordinates { fault, .. } => fault.hint.to_owned(),
+        }
+    }
+}
+
+/// How many near names are offered.
+const SUGGESTIONS: usize = 5;
+
+/// Stars that share a letter within this count as one target, in degrees: they share a field of low power.
+const ONE_TARGET_DEG: f64 = 0.25;
+
+impl Catalogue {
+    /// The catalogues compiled into the program.
+    #[must_use]
+    pub fn builtin() -> Self {
+        Self::new(
+            include_str!("../../catalogs/stars.csv"),
+            include_str!("../../catalogs/star-names.csv"),
+            include_str!("../../catalogs/messier.csv"),
+        )
+    }
+
+    /// From the texts of the tables of stars, of their names, and of the Messier objects.
+    #[must_use]
+    pub fn new(stars: &'static str, names: &'static str, messier: &'static str) -> Self {
+        Self {
+            stars: Stars::new(stars, names),
+            deep_sky: [DeepSky::new(Origin::Messier, messier)],
+            own: Vec::new(),
+        }
+    }
+
+    /// With the observer's own targets, which win over built-in ones of the same name.
+    #[must_use]
+    pub fn with_own(mut self, own: Vec<Target>) -> Self {
+        self.own.extend(own);
+        self
+    }
+
+    /// The target of a name, or of coordinates, forgiving of case, gaps and usual spellings.
+    pub fn resolve(&self, text: &str) -> Result<Target, Unresolved> {
+        if given::looks_like(text) {
+            return given::read(text).map_err(|fault| Unresolved::Coordinates {
+                text: text.to_owned(),
+                fault,
+            });
+        }
+        let asked = Asked::new(text);
+        if asked.is_empty() {
+            return Err(Unresolved::Unknown {
+                text: text.to_owned(),
+                nearest: Vec::new(),
+            });
+        }
+        if let Some(found) = self.exact(&asked) {
+            return Ok(found);
+        }
+        self.by_letter(&asked, text)?
+            .ok_or_else(|| self.unknown(text))
+    }
+
+    fn unknown(&self, text: &str) -> Unresolved {
+        let filter = Filter {
+            limit: SUGGESTIONS,
+            ..Filter::default()
+        };
+        let near = self.search(text, &filter).into_iter();
+        Unresolved::Unknown {
+            text: text.to_owned(),
+            nearest: near.map(|found| found.target.name).collect(),
+        }
+    }
+
+    /// What goes by exactly this name.
+    fn exact(&self, asked: &Asked) -> Option<Target> {
+        let own = self
+            .own
+            .iter()
+            .find(|target| target.names().any(|name| asked.is(name)));
+        if let Some(own) = own {
+            return Some(own.clone());
+        }
+        if let Some(body) = Body::ALL.into_iter().find(|body| asked.is(body.name())) {
+            return Some(solar_system::target(body));
+        }
+        let mut deep_sky = self.deep_sky.iter().flat_map(|table| table.all());
+        if let Some(object) = deep_sky.find(|object| object.names().any(|name| asked.is(name))) {
+            return object.target();
+        }
+        if let Some(star) = asked.hip().and_then(|hip| self.stars.numbered(hip)) {
+            return self.stars.target(star);
+        }
+        let named = self.stars.named().find(|names| {
+            names.proper().any(|name| asked.is(name)) || asked.fits(names) == Some(Fit::Whole)
+        });
+        self.stars.target(self.star(&named?)?)
+    }
+
+    /// The star of a letter asked for without the number of its component.
+    fn by_letter(&self, asked: &Asked, text: &str) -> Result<Option<Target>, Unresolved> {
+        let mut stars: Vec<Star> = self
+            .stars
+            .named()
+            .filter(|names| asked.fits(names).is_some())
+            .filter_map(|names| self.star(&names))
+            .collect();
+        let magnitude = |star: &Star| star.magnitude().unwrap_or(f64::INFINITY);
+        stars.sort_by(|a, b| magnitude(a).total_cmp(&magnitude(b)));
+        let Some((&brightest, others)) = stars.split_first() else {
+            return Ok(None);
+        };
+        let apart = |other: &Star| Some(distance_deg(&brightest.place()?, &other.place()?));
+        if others
+            .iter()
+            .all(|other| apart(other).is_some_and(|deg| deg < ONE_TARGET_DEG))
+        {
+            return Ok(self.stars.target(brightest));
+        }
+        let names = stars
+            .iter()
+            .filter_map(|&star| Some(self.stars.target(star)?.name));
+        Err(Unresolved::Several {
+            text: text.to_owned(),
+            choices: names.collect(),
+        })
+    }
+
+    /// The star a row of names belongs to.
+    pub(super) fn star(&self, names: &StarNames) -> Option<Star> {
+        self.stars.numbered(names.hip.parse().ok()?)
+    }
+
+    /// Stars no fainter than this Hp, the brightest first.
+    #[must_use]
+    pub fn bright_stars(&self, faintest_hp: f64) -> Vec<Target> {
+        let mut bright: Vec<(f64, Star)> = self
+            .stars
+            .all()
+            .filter_map(|star| Some((star.magnitude()?, star)))
+            .filter(|(hp, _)| *hp <= faintest_hp)
+            .collect();
+        bright.sort_by(|a, b| a.0.total_cmp(&b.0));
+        bright
+            .into_iter()
+            .filter_map(|(_, star)| self.stars.target(star))
+            .collect()
+    }
+
+    /// The place in the ICRS at J2000.0 of a target with a fixed place; nothing for a body of the
+    /// solar system and for a place of date.
+    #[must_use]
+    pub fn fixed_place(target: &Target) -> Option<CataloguePlace> {
+        match &target.source {
+            Source::Catalogue(place) => {
+                let (ra, dec) = place.at_icrs_j2000()?;
+                Some(CataloguePlace::icrs(ra, dec))
+            }
+            Source::Body(_) => None,
+        }
+    }
+}
+
+/// How far two places of the ICRS at J2000.0 are apart.
+pub(super) fn distance_deg(a: &CataloguePlace, b: &CataloguePlace) -> f64 {
+    separation(
+        (a.right_ascension.angle(), a.declination),
+        (b.right_ascension.angle(), b.declination),
+    )
+    .degrees()
+}
