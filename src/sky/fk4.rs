@@ -3,8 +3,8 @@
 //!
 //! Source: C. A. Smith and others 1989, *Astronomical Journal* 97, 265 (E-terms, and precession by
 //! Newcomb's constants in Kinoshita's form, 1975, SAO Special Report 364, as given there). Years are
-//! Besselian. The constants are from memory; the tests hold them to the constant vector of `fk425`
-//! and to numbers made by `palpy` 1.8.4.
+//! Besselian. The constants are from memory; tests hold them to those of `fk425` and, with
+//! `tests/reference/equinoxes.csv`, to another writing of the same formulas.
 
 use sofars::consts::DAS2R;
 use sofars::vm;
@@ -62,4 +62,37 @@ pub fn precession(from: f64, to: f64) -> Matrix {
     vm::ry(theta, &mut rotation);
     vm::rz(-z, &mut rotation);
     rotation
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn the_e_terms_of_1950_are_the_constant_vector_of_the_fk4() {
+        // Source: the vector A of IAU SOFA's fk425 (Explanatory Supplement 1992, 3.591-2), five figures
+        let printed = [-1.625_57e-6, -0.319_19e-6, -0.138_43e-6];
+        for (ours, theirs) in e_terms(1950.0).iter().zip(printed) {
+            assert!((ours - theirs).abs() < 0.000_03e-6, "{ours} {theirs}");
+        }
+    }
+
+    #[test]
+    fn e_terms_put_in_come_out_again() {
+        for place in [[0.0, 0.0, 1.0], [1.0, 0.0, 0.0], [0.6, -0.48, 0.64]] {
+            let back = without_e_terms(&with_e_terms(&place, 1875.0), 1875.0);
+            for (ours, theirs) in back.iter().zip(place) {
+                assert!((ours - theirs).abs() < 1e-15);
+            }
+        }
+    }
+
+    #[test]
+    fn precession_to_and_fro_is_none() {
+        // the constants are not quite their own inverse: a thousandth of a second in a century
+        let place = [0.6, -0.48, 0.64];
+        let there = crate::sky::vector::turned(&precession(1875.0, 1950.0), &place);
+        let back = crate::sky::vector::turned(&precession(1950.0, 1875.0), &there);
+        assert!(vm::sepp(&place, &back) < 0.002 * DAS2R);
+    }
 }

@@ -21,6 +21,9 @@ mod moment;
 mod observer;
 mod place;
 pub mod refraction;
+#[cfg(test)]
+mod samples;
+mod through_air;
 mod vector;
 
 pub use air::Air;

@@ -3,20 +3,17 @@
 //! Everything that does not depend on the target is worked out once: precession and nutation (IAU
 //! 2006/2000A), sidereal time, the Earth's place and motion, the site's place and motion. The chain
 //! for a target is SOFA's: space motion and parallax, light bent by the Sun, aberration, equator of
-//! date, hour angle, refraction. Polar motion is taken for nothing (at most 0.3").
+//! date, hour angle. Polar motion is taken for nothing (at most 0.3").
 
 use sofars::astro::{IauAstrom, ab, apcs, ld, ldsun, pvtob};
 
-use crate::angle::{Altitude, Angle, Declination, HourAngle, RightAscension};
+use crate::angle::{Angle, Declination, HourAngle, RightAscension};
 use crate::sky::body::Body;
 use crate::sky::catalogue_place::{CataloguePlace, Star};
 use crate::sky::earth::Earth;
 use crate::sky::observer::Observer;
-use crate::sky::place::{Apparent, Observed, Source};
-use crate::sky::refraction;
-use crate::sky::vector::{
-    Matrix, Vector, equatorial, horizontal, length_and_direction, plus, spherical, turned,
-};
+use crate::sky::place::{Apparent, Source};
+use crate::sky::vector::{Matrix, Vector, length_and_direction, plus, spherical, turned};
 use crate::time::{SiderealTime, Tt, Utc};
 
 /// The state of the sky at one instant for one observer.
@@ -231,92 +228,151 @@ impl Moment {
         self.at_right_ascension(RightAscension::new(ra), Declination::new(dec))
     }
 
-    fn at_right_ascension(&self, ra: RightAscension, dec: Declination) -> Apparent {
+    /// With the hour angle that goes with a right ascension now.
+    pub(crate) fn at_right_ascension(&self, ra: RightAscension, dec: Declination) -> Apparent {
         Apparent {
             hour_angle: HourAngle::new(self.apparent_sidereal.angle() - ra.angle()),
             right_ascension: ra,
             declination: dec,
         }
     }
+}
 
-    /// The observed place: the apparent one lifted by refraction.
-    #[must_use]
-    pub fn observed(&self, apparent: &Apparent) -> Observed {
-        let latitude = self.observer.latitude;
-        let (azimuth, airless) = horizontal(apparent.hour_angle, apparent.declination, latitude);
-        let refraction = refraction::at_true(airless, self.observer.air);
-        let altitude = Altitude::new(airless.angle() + refraction);
-        let (hour_angle, declination) = equatorial(azimuth, altitude, latitude);
-        Observed {
-            hour_angle,
-            declination,
-            azimuth,
-            altitude,
-            refraction,
-        }
+#[cfg(test)]
+mod tests {
+    use proptest::prelude::*;
+
+    use super::*;
+    use crate::sky::catalogue_place::Equinox;
+    use crate::sky::samples::{any_direction, any_moment, any_utc, at};
+
+    fn any_equinox() -> impl Strategy<Value = Equinox> {
+        prop_oneof![
+            Just(Equinox::Icrs),
+            Just(Equinox::J2000),
+            Just(Equinox::B1950),
+            Just(Equinox::OfDate),
+            (1750.0..2200.0).prop_map(Equinox::Julian),
+            (1750.0..2200.0).prop_map(Equinox::Besselian),
+        ]
     }
 
-    /// The observed place at an hour angle and declination the tube points to.
-    #[must_use]
-    pub fn observed_at(&self, hour_angle: HourAngle, declination: Declination) -> Observed {
-        let (azimuth, altitude) = horizontal(hour_angle, declination, self.observer.latitude);
-        Observed {
-            hour_angle,
-            declination,
-            azimuth,
-            altitude,
-            refraction: refraction::at_observed(altitude, self.observer.air),
-        }
-    }
-
-    /// The apparent place of what is seen at an observed place: the inverse of [`Self::observed`].
-    #[must_use]
-    pub fn airless(&self, observed: &Observed) -> Apparent {
-        let airless = Altitude::new(observed.altitude.angle() - observed.refraction);
-        let (hour_angle, declination) =
-            equatorial(observed.azimuth, airless, self.observer.latitude);
-        Apparent {
-            hour_angle,
-            right_ascension: RightAscension::new(
-                self.apparent_sidereal.angle() - hour_angle.angle(),
-            ),
-            declination,
-        }
-    }
-
-    /// Altitude of an apparent place, without air.
-    #[must_use]
-    pub fn airless_altitude(&self, apparent: &Apparent) -> Altitude {
-        horizontal(
-            apparent.hour_angle,
-            apparent.declination,
-            self.observer.latitude,
+    fn any_star() -> impl Strategy<Value = CataloguePlace> {
+        (
+            any_direction(),
+            any_equinox(),
+            1750.0..2200.0,
+            (-1e4..1e4, -1e4..1e4),
+            prop_oneof![Just(0.0), 0.0..800.0],
+            -300.0..300.0,
         )
-        .1
+            .prop_map(
+                |((ra, dec), equinox, epoch, motion, parallax, rv)| CataloguePlace {
+                    equinox,
+                    epoch,
+                    pm_ra_mas: motion.0,
+                    pm_dec_mas: motion.1,
+                    parallax_mas: parallax,
+                    radial_velocity_km_s: rv,
+                    ..CataloguePlace::icrs(ra, dec)
+                },
+            )
     }
 
-    /// The Sun's observed place.
-    #[must_use]
-    pub fn sun(&self) -> Observed {
-        self.observed(&self.apparent_body(Body::Sun))
+    proptest! {
+        #![proptest_config(ProptestConfig::with_cases(300))]
+
+        #[test]
+        fn there_is_a_place_for_every_star_and_body_anywhere_at_any_time(
+            moment in any_moment(), star in any_star(),
+        ) {
+            let bodies = Body::ALL.into_iter().map(Source::Body);
+            for source in bodies.chain([Source::Catalogue(star)]) {
+                let apparent = moment.apparent(&source);
+                let observed = moment.observed(&apparent);
+                for angle in [
+                    apparent.hour_angle.angle(),
+                    apparent.right_ascension.angle(),
+                    apparent.declination.angle(),
+                    observed.hour_angle.angle(),
+                    observed.declination.angle(),
+                    observed.azimuth.angle(),
+                    observed.altitude.angle(),
+                    observed.refraction,
+                ] {
+                    prop_assert!(angle.is_finite(), "{source:?}");
+                }
+                let hour = moment.apparent_sidereal().angle() - apparent.right_ascension.angle();
+                let off = (hour - apparent.hour_angle.angle()).wrapped_signed();
+                prop_assert!(off.abs().arcseconds() < 1e-6);
+            }
+        }
+
+        #[test]
+        fn a_moment_stepped_within_a_day_agrees_with_a_new_one(
+            moment in any_moment(), (ra, dec) in any_direction(), seconds in -86_000.0..86_000.0,
+        ) {
+            /// What nutation, and the pull of all but the Sun on the Earth, do in a day.
+            const STEP_ARCSEC: f64 = 0.5;
+            let stepped = moment.later(seconds);
+            let new = Moment::new(moment.observer(), stepped.utc());
+            let star = Source::Catalogue(CataloguePlace::icrs(ra, dec));
+            for source in [star, Source::Body(Body::Sun), Source::Body(Body::Moon)] {
+                let (a, b) = (stepped.apparent(&source), new.apparent(&source));
+                let off = crate::sky::separation(
+                    (a.hour_angle.angle(), a.declination),
+                    (b.hour_angle.angle(), b.declination),
+                );
+                prop_assert!(off.arcseconds() < STEP_ARCSEC, "{source:?} {off:?}");
+            }
+        }
+
+        #[test]
+        fn a_place_of_date_is_used_as_it_is(moment in any_moment(), (ra, dec) in any_direction()) {
+            let place = CataloguePlace { equinox: Equinox::OfDate, ..CataloguePlace::icrs(ra, dec) };
+            let apparent = moment.apparent(&Source::Catalogue(place));
+            prop_assert_eq!(apparent.right_ascension, ra);
+            prop_assert_eq!(apparent.declination, dec);
+        }
+
+        #[test]
+        fn the_sun_is_nowhere_far_from_the_ecliptic(utc in any_utc()) {
+            let mut moment = at("2000-01-01T00:00:00Z", 0.0, 0.0);
+            moment = Moment::new(moment.observer(), utc);
+            let dec = moment.apparent_body(Body::Sun).declination.degrees();
+            prop_assert!(dec.abs() < 23.5);
+            prop_assert!((0.98..1.02).contains(&moment.distance_au(Body::Sun)));
+        }
     }
 
-    /// The Moon's observed place.
-    #[must_use]
-    pub fn moon(&self) -> Observed {
-        self.observed(&self.apparent_body(Body::Moon))
+    #[test]
+    fn a_chain_of_steps_never_grows_stale() {
+        let mut moment = at("2026-12-01T12:00:00Z", 54.5, 1000.0);
+        for _ in 0..40 {
+            moment = moment.later(20_000.0);
+        }
+        let new = Moment::new(moment.observer(), moment.utc());
+        let (stepped, fresh) = (moment.sun(), new.sun());
+        assert!(stepped.separation(&fresh).arcseconds() < 0.5);
+        assert!(moment.season.age(moment.tt).abs() <= 1.0);
     }
 
-    /// True while the Sun's upper limb is above the level horizon: its centre, without air, higher
-    /// than its semidiameter and the 34' of horizontal refraction below it (the almanacs' sunrise).
-    /// That refraction is allowed for in any air, also where refraction is switched off.
-    #[must_use]
-    pub fn sun_is_up(&self) -> bool {
-        const HORIZONTAL_REFRACTION: Angle = Angle::from_arcminutes(34.0);
-        let semidiameter = Body::Sun
-            .semidiameter(self.distance_au(Body::Sun))
-            .unwrap_or(Angle::ZERO);
-        let centre = self.airless_altitude(&self.apparent_body(Body::Sun));
-        (centre.angle() + semidiameter + HORIZONTAL_REFRACTION).radians() > 0.0
+    #[test]
+    fn beyond_the_earth_models_century_the_sun_keeps_its_way() {
+        // the model ends at noon of 2100 January 1: a year shifted there is measured a year before
+        const SHIFT_ARCSEC: f64 = 60.0;
+        let day = |text: &str| at(text, 0.0, 0.0).apparent_body(Body::Sun);
+        let (last, first) = (day("2100-01-01T11:00:00Z"), day("2100-01-01T13:00:00Z"));
+        // two hours of the Sun's way at perihelion: 61' a day
+        let way = last.separation(&first).arcseconds();
+        assert!((way - 61.0 * 60.0 / 12.0).abs() < SHIFT_ARCSEC, "{way}");
+    }
+
+    #[test]
+    fn the_moon_is_lit_as_its_phase_says() {
+        // Source: new Moon 2026 December 9 00:52 UT and full Moon December 24 01:28 UT (from memory)
+        let lit = |text: &str| at(text, 0.0, 0.0).illuminated(Body::Moon);
+        assert!(lit("2026-12-09T00:52:00Z") < 0.01);
+        assert!(lit("2026-12-24T01:28:00Z") > 0.99);
     }
 }

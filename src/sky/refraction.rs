@@ -2,17 +2,19 @@
 //!
 //! Each formula where it is good, by observed altitude:
 //!
-//! * above 9°: SOFA's `refco`, A tan z + B tan³ z, humidity 0.5, yellow light (0.55 µm);
+//! * above 14°: SOFA's `refco`, A tan z + B tan³ z, dry air (damp air bends light by some 0.1 % less),
+//!   yellow light (0.55 µm);
 //! * from the horizon to 4°: the formula of *The Nautical Almanac*, 1/tan(H + 7.32/(H + 4.32)) minutes of
 //!   arc with H in degrees, for 10 °C and 1010 hPa, times the density of the air, and corrected in
 //!   other weather because the air near the ground bends light more than in proportion;
-//! * between 4° and 9°: both, faded smoothly from one to the other;
+//! * between 4° and 14°: both, faded smoothly from one to the other;
 //! * below the horizon, where nothing is seen and no formula holds: the Almanac's formula to its own turning
 //!   point, then fading to nothing at 12° below, so that altitudes keep their order and no step shows.
 //!
 //! Against the numerical integral of Hohenkerk and Sinclair (`tests/reference/refraction.csv`; 700 to
-//! 1030 hPa, -20 to 35 °C) it is good to 0.06' from 3° up and 0.14' from the horizon up. The real air
-//! near the horizon departs from any model by more than that.
+//! 1030 hPa, -20 to 35 °C) it is good to 0.09' from 1° up and 0.14' from the horizon up; in the
+//! Almanac's own weather to 0.09' of its formula everywhere. The real air near the horizon departs
+//! from any model by more than that.
 
 use crate::angle::{Altitude, Angle};
 use crate::sky::air::Air;
@@ -48,7 +50,7 @@ pub fn at_true(altitude: Altitude, air: Air) -> Angle {
 /// The lowest altitude, in degrees, that the formula of the zenith distance alone has a hand in, and
 /// the lowest at which it stands alone.
 const HIGH_FROM_DEG: f64 = 4.0;
-const HIGH_ALONE_DEG: f64 = 9.0;
+const HIGH_ALONE_DEG: f64 = 14.0;
 /// Where the Almanac's formula has its greatest value: H + 4.32 = sqrt(7.32).
 const TURNING_POINT_DEG: f64 = -1.614_450_515;
 /// Where refraction has faded out.
@@ -72,7 +74,8 @@ impl Layer {
         const PRESSURE_HPA: f64 = 1010.0;
         const KELVIN: f64 = 283.0;
         const ICE_K: f64 = 273.0;
-        const HUMIDITY: f64 = 0.5;
+        /// With more, `refco` fails in thin hot air, where it would put more vapour than air.
+        const HUMIDITY: f64 = 0.0;
         const YELLOW_MICROMETRE: f64 = 0.55;
         let air = air.held();
         let (a, b) = sofars::astro::refco(
@@ -88,8 +91,8 @@ impl Layer {
             a: Angle::from_radians(a),
             b: Angle::from_radians(b),
             density,
-            // fitted to the numerical integral at 25 weathers, 0 to 12 degrees
-            bends_more: (0.68 - 0.77 * colder) * colder + 0.094 * (density - 1.0),
+            // fitted to the numerical integral at 25 weathers, 0 to 90 degrees
+            bends_more: (0.67 - 0.708 * colder) * colder + 0.095 * (density - 1.0),
         }
     }
 
@@ -115,7 +118,7 @@ impl Layer {
         /// The Almanac's horizontal refraction, where the correction for the weather is whole.
         const AT_HORIZON_ARCMIN: f64 = 33.8;
         /// How fast that correction falls off as refraction does, from the same fit.
-        const FALL_OFF: f64 = 1.4;
+        const FALL_OFF: f64 = 1.3;
         let h = altitude_deg.max(TURNING_POINT_DEG);
         let almanac = 1.0 / Angle::from_degrees(h + 7.32 / (h + 4.32)).tan();
         let correction = self.bends_more * (almanac / AT_HORIZON_ARCMIN).powf(FALL_OFF);

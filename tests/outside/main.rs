@@ -1,5 +1,13 @@
 //! Checks against sources outside the project, each named beside its numbers.
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
 
+mod bodies;
+mod equinoxes;
+mod meeus;
 mod mount;
+mod observing;
+mod published;
+mod refraction;
+mod stages;
+mod stars;
 mod table;
