@@ -8,7 +8,7 @@
 use crate::angle::{Angle, AxisAngle, HourAngle};
 use crate::night::event::{Circle, Event, Opening, Stamped};
 use crate::night::listed::ListedTarget;
-use crate::night::reading::StarReading;
+use crate::night::reading::{Setting, StarReading};
 use crate::night::state::{NightReading, NightTarget, Outcome, State, TubeShown};
 use crate::time::Utc;
 use crate::time::sidereal::{DEGREES_PER_SECOND, SiderealTime};
@@ -37,18 +37,14 @@ impl State {
                 reading,
             } => {
                 self.change(target, |entry| entry.outcome = Some(Outcome::Found(utc)));
-                if let Some(setting) = setting {
-                    self.tube = Some(TubeShown::by_setting(setting, utc));
-                }
+                self.set_to(setting.as_ref(), utc);
                 if let Some(reading) = reading {
                     self.read(line, utc, reading);
                 }
             }
             Event::Missed { target, setting } => {
                 self.change(target, |entry| entry.outcome = Some(Outcome::Missed(utc)));
-                if let Some(setting) = setting {
-                    self.tube = Some(TubeShown::by_setting(setting, utc));
-                }
+                self.set_to(setting.as_ref(), utc);
             }
             Event::Note { target, text } => match target {
                 Some(name) => self.change(name, |entry| entry.notes.push(text.clone())),
@@ -126,8 +122,18 @@ impl State {
         self.current = Some(index);
     }
 
+    /// The tube was set by the circles, as told.
+    fn set_to(&mut self, setting: Option<&Setting>, utc: Utc) {
+        if let Some(&Setting { axes, side, .. }) = setting {
+            self.tube = Some(TubeShown { axes, side, utc });
+        }
+    }
+
     fn read(&mut self, line: u64, utc: Utc, reading: &StarReading) {
-        self.tube = Some(TubeShown::by_reading(reading, utc));
+        if let Some(axes) = reading.shown() {
+            let side = reading.side;
+            self.tube = Some(TubeShown { axes, side, utc });
+        }
         self.readings.push(NightReading {
             line,
             utc,
@@ -154,8 +160,10 @@ impl State {
             let sidereal = Angle::from_degrees(reading.sidereal_deg) + turned;
             reading.sidereal_deg = SiderealTime::new(sidereal).degrees();
             if reading.driven {
-                let axis = Angle::from_degrees(reading.hour_axis_deg) + turned;
-                reading.hour_axis_deg = AxisAngle::new(axis).degrees();
+                let taken_as = reading.taken_as.iter_mut().map(|shown| &mut shown.hour_deg);
+                for axis in taken_as.chain(&mut reading.hour_candidates_deg) {
+                    *axis = AxisAngle::new(Angle::from_degrees(*axis) + turned).degrees();
+                }
             }
         }
         if let Some(tube) = &mut self.tube {

@@ -153,6 +153,17 @@ pub enum Circle {
     Declination,
 }
 
+impl Circle {
+    /// The word for it before "circle".
+    #[must_use]
+    pub const fn word(self) -> &'static str {
+        match self {
+            Self::Hour => "hour",
+            Self::Declination => "declination",
+        }
+    }
+}
+
 impl Event {
     /// True if the observer can take it back.
     ///

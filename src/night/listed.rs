@@ -12,9 +12,15 @@ pub struct ListedTarget {
     pub name: String,
     /// Where it is.
     pub place: ListedPlace,
+    /// Other names, the usual ones first.
+    #[serde(default)]
+    pub also: Vec<String>,
     /// What it is, in words: "open cluster".
     #[serde(default)]
     pub kind: Option<String>,
+    /// The catalogue it was found in.
+    #[serde(default)]
+    pub catalogue: Option<String>,
     /// The constellation's three letters.
     #[serde(default)]
     pub constellation: Option<String>,
@@ -44,11 +50,17 @@ pub enum ListedPlace {
         /// The Julian year of the place.
         epoch: f64,
         /// Proper motion in right ascension, on the sky, milliseconds of arc a year.
+        #[serde(default)]
         pm_ra_mas: f64,
         /// Proper motion in declination, milliseconds of arc a year.
+        #[serde(default)]
         pm_dec_mas: f64,
         /// Parallax, in milliseconds of arc.
+        #[serde(default)]
         parallax_mas: f64,
+        /// Velocity away from the Sun.
+        #[serde(default)]
+        radial_velocity_km_s: f64,
     },
     /// The Sun, the Moon or a planet.
     Body {

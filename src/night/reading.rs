@@ -5,7 +5,17 @@
 
 use serde::{Deserialize, Serialize};
 
-use crate::metal::Side;
+use crate::angle::AxisAngle;
+use crate::metal::{Axes, Side};
+
+/// The two shown axis angles.
+#[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
+pub struct ShownAxes {
+    /// Of the hour axis.
+    pub hour_deg: f64,
+    /// Of the declination axis.
+    pub dec_deg: f64,
+}
 
 /// What the circles were told to be set to.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
@@ -16,10 +26,8 @@ pub struct Setting {
     pub dec: String,
     /// The side of the pier it was meant for.
     pub side: Side,
-    /// The shown hour axis angle.
-    pub hour_axis_deg: f64,
-    /// The shown declination axis angle.
-    pub dec_axis_deg: f64,
+    /// The shown axis angles they stand for.
+    pub axes: ShownAxes,
 }
 
 /// A star (or any object) centred, and both circles read.
@@ -39,10 +47,13 @@ pub struct StarReading {
     pub hour: String,
     /// The declination circle, as typed.
     pub dec: String,
-    /// The shown hour axis angle the reading was understood as.
-    pub hour_axis_deg: f64,
-    /// The shown declination axis angle the reading was understood as.
-    pub dec_axis_deg: f64,
+    /// Every shown hour axis angle the reading can stand for; the estimate finds which was meant.
+    pub hour_candidates_deg: Vec<f64>,
+    /// Every shown declination axis angle the reading can stand for.
+    pub dec_candidates_deg: Vec<f64>,
+    /// Which of them the readings were taken to stand for at that moment.
+    #[serde(default)]
+    pub taken_as: Option<ShownAxes>,
     /// Error of one look at the hour circle, 1 sigma.
     pub hour_sigma_deg: f64,
     /// Error of one look at the declination circle, 1 sigma.
@@ -59,6 +70,40 @@ pub struct StarReading {
     /// False if it is kept in the record and not used in the estimate.
     #[serde(default = "used")]
     pub used: bool,
+}
+
+impl StarReading {
+    /// The shown axis angles, if it is known which were meant.
+    #[must_use]
+    pub fn shown(&self) -> Option<ShownAxes> {
+        match (
+            self.taken_as,
+            self.hour_candidates_deg.as_slice(),
+            self.dec_candidates_deg.as_slice(),
+        ) {
+            (Some(shown), ..) => Some(shown),
+            (None, &[hour_deg], &[dec_deg]) => Some(ShownAxes { hour_deg, dec_deg }),
+            _ => None,
+        }
+    }
+}
+
+impl From<Axes> for ShownAxes {
+    fn from(axes: Axes) -> Self {
+        Self {
+            hour_deg: axes.hour.degrees(),
+            dec_deg: axes.dec.degrees(),
+        }
+    }
+}
+
+impl From<ShownAxes> for Axes {
+    fn from(shown: ShownAxes) -> Self {
+        Self {
+            hour: AxisAngle::from_degrees(shown.hour_deg),
+            dec: AxisAngle::from_degrees(shown.dec_deg),
+        }
+    }
 }
 
 /// A reading is used unless it says otherwise.

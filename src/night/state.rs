@@ -7,7 +7,7 @@ use std::collections::BTreeSet;
 use crate::metal::Side;
 use crate::night::event::Opening;
 use crate::night::listed::{ListedPlace, ListedTarget};
-use crate::night::reading::{Setting, StarReading};
+use crate::night::reading::{ShownAxes, StarReading};
 use crate::time::Utc;
 
 /// Where a night stands.
@@ -86,10 +86,8 @@ pub struct NightReading {
 /// Where the tube was last known to be, by what the circles showed.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct TubeShown {
-    /// The shown hour axis angle.
-    pub hour_axis_deg: f64,
-    /// The shown declination axis angle.
-    pub dec_axis_deg: f64,
+    /// The shown axis angles.
+    pub axes: ShownAxes,
     /// The side of the pier.
     pub side: Side,
     /// When, by the clock as corrected since.
@@ -158,35 +156,13 @@ impl NightTarget {
         Self::new(ListedTarget {
             name: name.to_owned(),
             place: ListedPlace::Unknown,
+            also: Vec::new(),
             kind: None,
+            catalogue: None,
             constellation: None,
             magnitude: None,
             size_arcmin: None,
             note: String::new(),
         })
-    }
-}
-
-impl TubeShown {
-    /// The tube as told to be set at this moment.
-    #[must_use]
-    pub const fn by_setting(setting: &Setting, utc: Utc) -> Self {
-        Self {
-            hour_axis_deg: setting.hour_axis_deg,
-            dec_axis_deg: setting.dec_axis_deg,
-            side: setting.side,
-            utc,
-        }
-    }
-
-    /// The tube as read at this moment.
-    #[must_use]
-    pub const fn by_reading(reading: &StarReading, utc: Utc) -> Self {
-        Self {
-            hour_axis_deg: reading.hour_axis_deg,
-            dec_axis_deg: reading.dec_axis_deg,
-            side: reading.side,
-            utc,
-        }
     }
 }

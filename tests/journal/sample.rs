@@ -1,7 +1,9 @@
 //! Events of every kind, by hand and by chance. The site and its readings are invented.
 
 use nonius::metal::Side;
-use nonius::night::{Circle, Event, ListedPlace, ListedTarget, Opening, Setting, StarReading};
+use nonius::night::{
+    Circle, Event, ListedPlace, ListedTarget, Opening, Setting, ShownAxes, StarReading,
+};
 use nonius::time::Utc;
 use proptest::prelude::*;
 
@@ -20,8 +22,11 @@ pub fn target(name: &str) -> ListedTarget {
             epoch: 2000.0,
             pm_ra_mas: 0.0,
             pm_dec_mas: -1.5,
-            parallax_mas: 0.0,
+            parallax_mas: 0.7,
+            radial_velocity_km_s: 8.5,
         },
+        also: vec!["NGC 2099".to_owned()],
+        catalogue: Some("messier".to_owned()),
         kind: Some("open cluster".to_owned()),
         constellation: Some("Aur".to_owned()),
         magnitude: Some(5.6),
@@ -66,8 +71,12 @@ pub fn reading(star: &str, hour_angle_deg: f64, driven: bool) -> StarReading {
         side: Side::TubeWest,
         hour: "20h 56m 40s".to_owned(),
         dec: "32° 35' N".to_owned(),
-        hour_axis_deg: hour_angle_deg + 0.75,
-        dec_axis_deg: 39.5,
+        hour_candidates_deg: vec![hour_angle_deg + 0.75],
+        dec_candidates_deg: vec![39.5, -39.5],
+        taken_as: Some(ShownAxes {
+            hour_deg: hour_angle_deg + 0.75,
+            dec_deg: 39.5,
+        }),
         hour_sigma_deg: 0.25,
         dec_sigma_deg: 0.15,
         driven,
@@ -82,8 +91,10 @@ pub fn setting() -> Setting {
         hour: "20h 48m 40s".to_owned(),
         dec: "32° 35' N".to_owned(),
         side: Side::TubeEast,
-        hour_axis_deg: -47.8,
-        dec_axis_deg: 147.25,
+        axes: ShownAxes {
+            hour_deg: -47.8,
+            dec_deg: 147.25,
+        },
     }
 }
 
