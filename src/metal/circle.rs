@@ -84,3 +84,36 @@ pub struct DeclinationCircle {
     /// One look's error (1 sigma), if the mount file states it.
     pub reading_error: Option<Angle>,
 }
+
+/// Circles for tests.
+#[cfg(test)]
+pub(super) mod samples {
+    use super::*;
+
+    /// A fixed ring in hours numbered westward, 4-minute divisions, no vernier.
+    pub(in crate::metal) fn hour_circle(numbering: HourNumbering) -> HourCircle {
+        HourCircle {
+            ring: Ring::Fixed,
+            unit: Unit::Hours,
+            numbering,
+            increases: Increases::West,
+            division: Angle::from_time_seconds(240.0),
+            vernier: None,
+            second_fiducial: false,
+            reading_error: None,
+        }
+    }
+
+    /// One-degree divisions, no vernier.
+    pub(in crate::metal) fn declination_circle(
+        numbering: DeclinationNumbering,
+    ) -> DeclinationCircle {
+        DeclinationCircle {
+            numbering,
+            division: Angle::from_degrees(1.0),
+            vernier: None,
+            slips: false,
+            reading_error: None,
+        }
+    }
+}

@@ -1,48 +1,16 @@
-//! The engraved marks near a position: the picture under the index, and the next mark to wait on.
+//! The engraved marks of a scale, and the next one the sky brings: waiting on the mark.
 //!
-//! Marks stand at whole divisions from the scale's zero, on a scale that goes once round from 0° up, on the
-//! others to both sides of zero. Every so many of them is numbered (common practice, no source).
+//! Marks stand at whole divisions from the scale's zero: on a scale that goes once round from 0° up, on the
+//! others to both sides of zero.
 
 use crate::angle::{Angle, AxisAngle};
-use crate::metal::circle::{DeclinationCircle, HourCircle, Ring};
+use crate::metal::circle::{HourCircle, Ring};
 use crate::metal::scale::{Face, Reading, SAME_POSITION_RAD, Scale};
 use crate::metal::side::Side;
-use crate::sexagesimal::Unit;
 use crate::time::SiderealTime;
 
 /// A window of more marks than this is no picture and no wait.
 const MOST_MARKS: f64 = 10_000.0;
-
-/// Numbers stand at least this many divisions apart (common practice, no source).
-const LEAST_DIVISIONS_NUMBERED: f64 = 3.0;
-
-/// Round steps of numbering on a circle in hours, in seconds of time.
-const ROUND_HOURS_S: [f64; 13] = [
-    10.0, 30.0, 60.0, 300.0, 600.0, 1200.0, 1800.0, 3600.0, 7200.0, 10_800.0, 14_400.0, 21_600.0,
-    43_200.0,
-];
-
-/// Round steps of numbering on a circle in degrees, in seconds of arc.
-const ROUND_DEGREES_S: [f64; 11] = [
-    10.0, 60.0, 300.0, 600.0, 1800.0, 3600.0, 18_000.0, 36_000.0, 54_000.0, 108_000.0, 324_000.0,
-];
-
-/// An engraved mark in the picture under the index.
-#[derive(Clone, Debug, PartialEq)]
-pub struct StripMark {
-    /// Divisions from the index, positive toward growing axis angles (west, north).
-    pub offset: f64,
-    /// The number beside it (`20h40`, `3h`, `-5`, `32°30`), if it is a numbered mark.
-    pub label: Option<String>,
-}
-
-impl StripMark {
-    /// True for the longer marks that carry a number.
-    #[must_use]
-    pub const fn is_numbered(&self) -> bool {
-        self.label.is_some()
-    }
-}
 
 /// An engraved mark that will come under the index as the sky turns west.
 #[derive(Clone, Debug, PartialEq)]
@@ -58,19 +26,6 @@ pub struct MarkAhead {
 }
 
 impl HourCircle {
-    /// The marks within so many divisions of the index, in the order of growing axis angle.
-    #[must_use]
-    pub fn strip(
-        &self,
-        shown: AxisAngle,
-        sidereal: SiderealTime,
-        side: Side,
-        divisions: f64,
-    ) -> Vec<StripMark> {
-        let position = self.position(shown, sidereal, side);
-        self.scale().strip(position, self.sense(), divisions)
-    }
-
     /// The next engraved mark to come under the index, more than `least_lead` ahead of the shown hour
     /// axis angle as the sky turns west. None on a driven ring, which keeps its reading.
     #[must_use]
@@ -93,68 +48,7 @@ impl HourCircle {
     }
 }
 
-impl DeclinationCircle {
-    /// The marks within so many divisions of the index, in the order of growing axis angle.
-    #[must_use]
-    pub fn strip(&self, shown: AxisAngle, divisions: f64) -> Vec<StripMark> {
-        self.scale()
-            .strip(self.position(shown), self.sense(), divisions)
-    }
-}
-
 impl Scale {
-    /// The step of numbering: the least round one that is whole divisions and at least
-    /// [`LEAST_DIVISIONS_NUMBERED`] of them, else ten divisions.
-    #[must_use]
-    pub fn numbered_step(&self) -> Angle {
-        let steps: &[f64] = match self.unit {
-            Unit::Hours => &ROUND_HOURS_S,
-            Unit::Degrees => &ROUND_DEGREES_S,
-        };
-        steps
-            .iter()
-            .map(|seconds| self.unit.of(seconds / 3600.0))
-            .find(|step| {
-                let divisions = *step / self.division;
-                divisions > LEAST_DIVISIONS_NUMBERED - 0.5 && is_whole(divisions)
-            })
-            .unwrap_or(self.division * 10.0)
-    }
-
-    fn strip(&self, position: Angle, sense: f64, divisions: f64) -> Vec<StripMark> {
-        let window = self.division * divisions.abs();
-        let numbered = self.numbered_step();
-        let mut marks: Vec<StripMark> = self
-            .marks_between(position - window, position + window)
-            .into_iter()
-            .map(|mark| StripMark {
-                offset: (mark - position) / self.division * sense,
-                label: self.label_at(mark, numbered),
-            })
-            .collect();
-        if sense < 0.0 {
-            marks.reverse();
-        }
-        marks
-    }
-
-    /// The number beside a mark, if it is one of those that carry one.
-    fn label_at(&self, mark: Angle, numbered: Angle) -> Option<String> {
-        let reading = self.rounded(self.reading_at(mark), self.division);
-        if !is_whole(reading.value / numbered) {
-            return None;
-        }
-        let written = self.write_unlettered(reading, numbered);
-        let compact = written.replace(' ', "");
-        let bare = compact.trim_start_matches('+');
-        // the last mark of unit says nothing the circle does not, but for whole hours
-        let label = match self.unit {
-            Unit::Hours => bare.trim_end_matches(['m', 's']),
-            Unit::Degrees => bare.trim_end_matches(['°', '\'', '"']),
-        };
-        Some(label.to_owned())
-    }
-
     /// The first mark further on than `least_lead`, counted with the axis (`sense` as on the circle).
     fn next_mark(&self, position: Angle, sense: f64, least_lead: Angle) -> Option<Angle> {
         let lead = least_lead.radians().max(SAME_POSITION_RAD);
@@ -170,8 +64,8 @@ impl Scale {
         }
     }
 
-    /// The positions of all marks between two positions, in growing order.
-    fn marks_between(&self, from: Angle, to: Angle) -> Vec<Angle> {
+    /// The positions of all marks between two positions, ends included, in growing order.
+    pub(super) fn marks_between(&self, from: Angle, to: Angle) -> Vec<Angle> {
         let mut marks = Vec::new();
         let division = self.division.radians();
         let count = (to - from).radians() / division;
@@ -183,8 +77,8 @@ impl Scale {
         let turn = Angle::TURN.radians();
         let mut base = turn * (from.radians() / turn - 1.0).floor();
         while base <= to.radians() + turn {
-            let mut number = ((from.radians() - base) / division).ceil().max(first);
-            let end = ((to.radians() - base) / division).floor().min(last);
+            let mut number = whole_up((from.radians() - base) / division).max(first);
+            let end = whole_down((to.radians() - base) / division).min(last);
             while number <= end {
                 marks.push(Angle::from_radians(base + number * division));
                 number += 1.0;
@@ -196,7 +90,6 @@ impl Scale {
 
     /// The numbers of the first and the last mark, in divisions from zero.
     fn mark_numbers(&self) -> (f64, f64) {
-        let whole_down = |count: f64| (count + WHOLE_DIVISIONS).floor();
         if self.face == Face::Turn {
             let round = Angle::TURN / self.division;
             // 360° is 0° again
@@ -213,6 +106,107 @@ impl Scale {
 /// A count this near a whole number is one: rounding, not engraving.
 const WHOLE_DIVISIONS: f64 = 1e-6;
 
-fn is_whole(count: f64) -> bool {
+/// The next whole number down; itself for one that is whole but for rounding.
+fn whole_down(count: f64) -> f64 {
+    (count + WHOLE_DIVISIONS).floor()
+}
+
+/// The next whole number up; itself for one that is whole but for rounding.
+fn whole_up(count: f64) -> f64 {
+    (count - WHOLE_DIVISIONS).ceil()
+}
+
+/// True for a count that is whole but for rounding.
+pub(super) fn is_whole(count: f64) -> bool {
     (count - count.round()).abs() < WHOLE_DIVISIONS
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::metal::circle::samples::hour_circle;
+    use crate::metal::{HourNumbering, Increases};
+
+    fn minutes(minutes: f64) -> Angle {
+        Angle::from_time_seconds(minutes * 60.0)
+    }
+
+    #[test]
+    fn the_next_mark_is_the_one_the_sky_brings() {
+        let next = |circle: &HourCircle, shown: f64, lead_s: f64| {
+            let lead = Angle::from_time_seconds(lead_s);
+            let mark = circle
+                .next_mark(AxisAngle::new(minutes(shown)), Side::Single, lead)
+                .unwrap();
+            let to_it = (mark.shown.angle() - minutes(shown)).wrapped_signed();
+            assert!((to_it - mark.ahead).abs().degrees() < 1e-9);
+            (
+                mark.text,
+                (mark.ahead.time_seconds() * 1000.0).round() / 1000.0,
+            )
+        };
+        let own = |text: &str, ahead_s| (text.to_owned(), ahead_s);
+        let west = hour_circle(HourNumbering::Full);
+        let east = HourCircle {
+            increases: Increases::East,
+            ..west
+        };
+        assert_eq!(next(&west, 62.0, 0.0), own("1h 04m", 120.0));
+        assert_eq!(next(&east, 62.0, 0.0), own("22h 56m", 120.0));
+        // a mark just under the index has gone by; one nearer than the lead is let go
+        assert_eq!(next(&west, 64.0, 0.0), own("1h 08m", 240.0));
+        assert_eq!(next(&west, 63.0, 90.0), own("1h 08m", 300.0));
+        assert_eq!(next(&east, 63.0, 90.0), own("22h 52m", 300.0));
+        // over the end of the scale
+        assert_eq!(next(&west, -1.0, 0.0), own("0h 00m", 60.0));
+        assert_eq!(next(&east, -1.0, 0.0), own("0h 00m", 60.0));
+        let halves = hour_circle(HourNumbering::Halves);
+        assert_eq!(next(&halves, -62.0, 0.0), own("1h 00m E", 120.0));
+        assert_eq!(next(&halves, 719.0, 0.0), own("12h 00m", 60.0));
+        assert_eq!(next(&halves, -719.0, 0.0), own("11h 56m E", 180.0));
+        let signed = hour_circle(HourNumbering::PlusMinus);
+        assert_eq!(next(&signed, -62.0, 0.0), own("-1h 00m", 120.0));
+        // divisions that do not fit: after the last one comes zero
+        let odd = HourCircle {
+            division: minutes(7.0),
+            ..west
+        };
+        assert_eq!(next(&odd, 1436.0, 0.0), own("0h 00m", 240.0));
+    }
+
+    #[test]
+    fn the_second_mark_reads_twelve_hours_on() {
+        let circle = HourCircle {
+            second_fiducial: true,
+            ..hour_circle(HourNumbering::Full)
+        };
+        let shown = AxisAngle::new(minutes(62.0));
+        let text = |side| circle.next_mark(shown, side, Angle::ZERO).unwrap().text;
+        assert_eq!(text(Side::TubeWest), "1h 04m");
+        assert_eq!(text(Side::TubeEast), "13h 04m");
+    }
+
+    #[test]
+    fn a_driven_ring_keeps_its_reading_and_has_no_next_mark() {
+        let circle = HourCircle {
+            ring: Ring::Driven,
+            ..hour_circle(HourNumbering::Full)
+        };
+        assert_eq!(
+            circle.next_mark(AxisAngle::default(), Side::TubeWest, Angle::ZERO),
+            None
+        );
+    }
+
+    #[test]
+    fn a_division_of_nothing_has_no_marks() {
+        let circle = HourCircle {
+            division: Angle::ZERO,
+            ..hour_circle(HourNumbering::Full)
+        };
+        assert_eq!(
+            circle.next_mark(AxisAngle::default(), Side::Single, Angle::ZERO),
+            None
+        );
+    }
 }

@@ -14,6 +14,7 @@ pub mod reading;
 pub mod scale;
 pub mod side;
 pub mod side_choice;
+pub mod strip;
 pub mod typed;
 
 pub use circle::{
@@ -23,9 +24,10 @@ pub use dome::{EyepiecePlace, Slit, TubeDirections};
 pub use engraved::{Graduation, VernierLine};
 pub use errors::MountErrors;
 pub use geometry::{Axes, Slopes, TooNearPole, to_axes, to_axes_with_slopes, to_sky};
-pub use marks::{MarkAhead, StripMark};
+pub use marks::MarkAhead;
 pub use mount::{Dome, ExpectedErrors, HourAngleSpan, Kind, Limits, Mount, Optic, Tube};
 pub use scale::{Reading, Scale};
 pub use side::Side;
 pub use side_choice::{NoSuchSide, SideRequest, UnknownSide};
+pub use strip::StripMark;
 pub use typed::{read_dec, read_hour};

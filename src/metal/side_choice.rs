@@ -114,3 +114,110 @@ impl Mount {
         }
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::metal::circle::samples::{declination_circle, hour_circle};
+    use crate::metal::mount::{ExpectedErrors, HourAngleSpan, Limits};
+    use crate::metal::{DeclinationNumbering, HourNumbering};
+
+    fn mount(kind: Kind, limits: Limits) -> Mount {
+        Mount {
+            name: "test".to_owned(),
+            kind,
+            clock_drive: false,
+            hour_circle: hour_circle(HourNumbering::Full),
+            declination_circle: declination_circle(DeclinationNumbering::Signed),
+            limits,
+            expected: ExpectedErrors::default(),
+            dome: None,
+            tube: None,
+            optics: Vec::new(),
+        }
+    }
+
+    fn hours(hours: f64) -> HourAngle {
+        HourAngle::new(Angle::from_hours(hours))
+    }
+
+    #[test]
+    fn east_of_the_meridian_the_tube_is_west_and_the_reverse() {
+        for kind in [Kind::German, Kind::CrossAxis] {
+            assert_eq!(kind.usual_side(hours(-3.0), None), Side::TubeWest);
+            assert_eq!(kind.usual_side(hours(3.0), None), Side::TubeEast);
+            assert_eq!(
+                kind.usual_side(hours(-3.0), Some(Side::TubeEast)),
+                Side::TubeWest
+            );
+        }
+        for kind in [Kind::Fork, Kind::Yoke] {
+            assert_eq!(kind.usual_side(hours(-3.0), None), Side::Single);
+        }
+    }
+
+    #[test]
+    fn a_tube_is_not_turned_over_for_a_few_minutes() {
+        let usual = |minutes: f64, present| Kind::German.usual_side(hours(minutes / 60.0), present);
+        assert_eq!(usual(9.0, Some(Side::TubeWest)), Side::TubeWest);
+        assert_eq!(usual(11.0, Some(Side::TubeWest)), Side::TubeEast);
+        assert_eq!(usual(-9.0, Some(Side::TubeEast)), Side::TubeEast);
+        assert_eq!(usual(9.0, None), Side::TubeEast);
+        // past the meridian below the pole
+        assert_eq!(usual(-711.0, Some(Side::TubeEast)), Side::TubeEast);
+        assert_eq!(usual(-709.0, Some(Side::TubeEast)), Side::TubeWest);
+    }
+
+    #[test]
+    fn a_limit_sends_the_tube_to_the_other_side_only_if_that_side_reaches() {
+        let span = |from, to| {
+            Some(HourAngleSpan {
+                from: hours(from),
+                to: hours(to),
+            })
+        };
+        let limits = Limits {
+            tube_west: span(-7.0, 2.0),
+            tube_east: span(-0.5, 0.5),
+            ..Limits::default()
+        };
+        let german = mount(Kind::German, limits);
+        let choose = |h| {
+            german
+                .choose_side(SideRequest::Auto, hours(h), None)
+                .unwrap()
+        };
+        assert_eq!(choose(0.3), Side::TubeEast);
+        assert_eq!(choose(1.0), Side::TubeWest);
+        // out of reach of both: the usual one, with its caution
+        assert_eq!(choose(3.0), Side::TubeEast);
+        assert_eq!(choose(-8.0), Side::TubeWest);
+    }
+
+    #[test]
+    fn a_side_asked_for_is_given_if_the_mount_has_it() {
+        let german = mount(Kind::German, Limits::default());
+        let fork = mount(Kind::Fork, Limits::default());
+        let ask =
+            |mount: &Mount, word: &str| mount.choose_side(word.parse().unwrap(), hours(3.0), None);
+        assert_eq!(ask(&german, "tube-west"), Ok(Side::TubeWest));
+        assert_eq!(ask(&german, "auto"), Ok(Side::TubeEast));
+        assert_eq!(ask(&german, "single"), Err(NoSuchSide::TwoSides));
+        assert_eq!(ask(&fork, "single"), Ok(Side::Single));
+        assert_eq!(ask(&fork, "auto"), Ok(Side::Single));
+        assert_eq!(ask(&fork, "tube-west"), Ok(Side::Single));
+        assert_eq!(ask(&fork, "tube-east"), Err(NoSuchSide::OneSideOnly));
+    }
+
+    #[test]
+    fn a_word_that_is_no_side_is_named() {
+        let fault = "west".parse::<SideRequest>().unwrap_err();
+        assert_eq!(
+            fault.to_string(),
+            "\"west\" is no side of the pier: tube-west, tube-east, single or auto"
+        );
+        for word in ["tube-west", "tube-east", "single", "auto"] {
+            assert_eq!(word.parse::<SideRequest>().unwrap().to_string(), word);
+        }
+    }
+}

@@ -57,20 +57,20 @@ impl Scale {
         if !self.holds(written.size) {
             return Err(fault(text, self.range_in_words(), "look at it again"));
         }
-        if self.face.is_signed() {
-            let value = if backwards {
-                -written.size
-            } else {
-                written.size
-            };
-            return Ok(Reading { value, half: None });
-        }
-        // the end of a scale that goes once round is its beginning
-        let value = match self.face {
-            Face::Turn => written.size.wrapped_positive(),
-            _ => written.size,
+        let signed = if backwards && self.face.is_signed() {
+            -written.size
+        } else {
+            written.size
         };
-        let half = written.half;
+        let value = match self.face {
+            // the end of a scale that goes once round is its beginning
+            Face::Turn => signed.wrapped_positive(),
+            // ±180° is one mark
+            Face::SignedHalves => signed.wrapped_signed(),
+            _ => signed,
+        };
+        // a sign says already which half it is
+        let half = written.half.filter(|_| !self.face.is_signed());
         Ok(Reading { value, half })
     }
 
@@ -167,5 +167,221 @@ fn fault(text: &str, message: String, hint: &'static str) -> TextFault {
         at: start..end,
         message,
         hint,
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use proptest::prelude::*;
+
+    use super::*;
+    use crate::metal::circle::samples::{declination_circle, hour_circle};
+    use crate::metal::{DeclinationNumbering, HourNumbering, Increases};
+
+    /// Rounding of the change of units, in degrees.
+    const ROUNDING_DEG: f64 = 1e-9;
+
+    const HOUR_NUMBERINGS: [HourNumbering; 3] = [
+        HourNumbering::Full,
+        HourNumbering::Halves,
+        HourNumbering::PlusMinus,
+    ];
+    const DECLINATION_NUMBERINGS: [DeclinationNumbering; 5] = [
+        DeclinationNumbering::Signed,
+        DeclinationNumbering::Quarters,
+        DeclinationNumbering::PolarDistance,
+        DeclinationNumbering::SouthPolarDistance,
+        DeclinationNumbering::Full,
+    ];
+
+    fn degrees_circle(numbering: HourNumbering) -> HourCircle {
+        HourCircle {
+            unit: Unit::Degrees,
+            ..hour_circle(numbering)
+        }
+    }
+
+    fn assert_read(reading: Result<Reading, TextFault>, degrees: f64, half: Option<Half>) {
+        let reading = reading.unwrap();
+        assert!(
+            (reading.value.degrees() - degrees).abs() < ROUNDING_DEG,
+            "{reading:?}"
+        );
+        assert_eq!(reading.half, half, "{reading:?}");
+    }
+
+    #[test]
+    fn an_hour_circle_takes_its_own_notation_and_the_other_unit_where_marked() {
+        use HourNumbering::{Full, Halves, PlusMinus};
+        for (circle, text, degrees, half) in [
+            (hour_circle(Full), "20h 56m 40.5s", 314.168_75, None),
+            (hour_circle(Full), "20 56 40", 314.166_666_666_667, None),
+            (hour_circle(Full), "314.2d", 314.2, None),
+            (hour_circle(Full), "24h", 0.0, None),
+            (degrees_circle(Full), "314.2", 314.2, None),
+            (degrees_circle(Full), "20h 56m", 314.0, None),
+            (hour_circle(Halves), "3 12", 48.0, None),
+            (hour_circle(Halves), "3h 12m E", 48.0, Some(Half::East)),
+            (hour_circle(Halves), "12 W", 180.0, Some(Half::West)),
+            (hour_circle(PlusMinus), "-3h 12m", -48.0, None),
+            (hour_circle(PlusMinus), "-12h", 180.0, None),
+            (hour_circle(PlusMinus), "+3h 12m", 48.0, None),
+            (hour_circle(PlusMinus), "3 12", 48.0, None),
+            (hour_circle(PlusMinus), "3 12 E", -48.0, None),
+        ] {
+            assert_read(read_hour(&circle, text), degrees, half);
+        }
+        // a sign follows the numbers, a letter the sky
+        let eastward = HourCircle {
+            increases: Increases::East,
+            ..hour_circle(PlusMinus)
+        };
+        assert_read(read_hour(&eastward, "3 12 E"), 48.0, None);
+    }
+
+    #[test]
+    fn a_declination_circle_takes_its_own_notation() {
+        use DeclinationNumbering::{Full, PolarDistance, Quarters, Signed};
+        for (numbering, text, degrees, half) in [
+            (Quarters, "32 35 N", 32.583_333_333_333, Some(Half::North)),
+            (Quarters, "32 35 s", 32.583_333_333_333, Some(Half::South)),
+            (Quarters, "32.5", 32.5, None),
+            (Signed, "-5.4", -5.4, None),
+            (Signed, "-0 30", -0.5, None),
+            (Signed, "5.4 S", -5.4, None),
+            (PolarDistance, "157 25", 157.416_666_666_667, None),
+            (Full, "312 30 15", 312.504_166_666_667, None),
+        ] {
+            assert_read(
+                read_dec(&declination_circle(numbering), text),
+                degrees,
+                half,
+            );
+        }
+    }
+
+    #[test]
+    fn a_quarter_without_its_letter_leaves_the_choice_open() {
+        let circle = declination_circle(DeclinationNumbering::Quarters);
+        let count = |text| circle.candidates(read_dec(&circle, text).unwrap()).len();
+        assert_eq!(
+            (count("32 N"), count("32"), count("0"), count("90")),
+            (2, 4, 2, 2)
+        );
+    }
+
+    #[test]
+    fn what_is_not_on_the_circle_is_refused_and_said() {
+        use DeclinationNumbering::{PolarDistance, Quarters, Signed};
+        use HourNumbering::{Full, Halves, PlusMinus};
+        let said = |circle: &HourCircle, text: &str| read_hour(circle, text).unwrap_err();
+        for (circle, text, message) in [
+            (hour_circle(Full), "25h", "the circle goes from 0h to 24h"),
+            (
+                hour_circle(Halves),
+                "12 01",
+                "the circle goes from 0h to 12h",
+            ),
+            (
+                hour_circle(PlusMinus),
+                "-13h",
+                "the circle goes from -12h to 12h",
+            ),
+            (
+                degrees_circle(Full),
+                "361",
+                "the circle goes from 0° to 360°",
+            ),
+            (hour_circle(Full), "-3h", "this circle has no signs"),
+            (hour_circle(Full), "+3h", "this circle has no signs"),
+            (hour_circle(Full), "3h W", "this circle has no E and W"),
+            (
+                hour_circle(Halves),
+                "3h N",
+                "N and S belong to a declination circle",
+            ),
+        ] {
+            assert_eq!(said(&circle, text).message, message, "{text}");
+        }
+        let hint = said(&hour_circle(Halves), " -3h ");
+        assert_eq!(
+            (hint.at, hint.hint),
+            (1..4, "leave the sign out; E or W may follow")
+        );
+        let said = |numbering, text: &str| {
+            read_dec(&declination_circle(numbering), text)
+                .unwrap_err()
+                .message
+        };
+        assert_eq!(said(Signed, "91"), "the circle goes from -90° to 90°");
+        assert_eq!(said(Quarters, "95 N"), "the circle goes from 0° to 90°");
+        assert_eq!(
+            said(PolarDistance, "181"),
+            "the circle goes from 0° to 180°"
+        );
+        assert_eq!(said(PolarDistance, "80 N"), "this circle has no N and S");
+        assert_eq!(said(Quarters, "-5"), "this circle has no signs");
+        assert_eq!(said(Quarters, "5 W"), "E and W belong to an hour circle");
+        assert_eq!(
+            said(Signed, "5h"),
+            "a declination circle has degrees, not hours"
+        );
+    }
+
+    #[test]
+    fn it_says_how_a_reading_was_understood() {
+        let plain = hour_circle(HourNumbering::Halves);
+        let vernier = HourCircle {
+            vernier: Some(Angle::from_time_seconds(20.0)),
+            ..hour_circle(HourNumbering::Full)
+        };
+        for (circle, text, expected) in [
+            (vernier, "23 05 20", "23h 05m 20s, vernier"),
+            (vernier, "23.0733333h", "23h 04m 24s, vernier"),
+            (vernier, "23 04", "23h 04m, on a mark"),
+            (
+                plain,
+                "3 13 E",
+                "3h 13m E: a quarter of a division past 3h 12m",
+            ),
+            (
+                plain,
+                "3 13",
+                "3h 13m, E or W: a quarter of a division past 3h 12m",
+            ),
+            (plain, "0", "0h 00m: on the mark 0h 00m"),
+        ] {
+            let reading = read_hour(&circle, text).unwrap();
+            assert_eq!(circle.scale().understood(reading), expected, "{text}");
+        }
+        let quarters = declination_circle(DeclinationNumbering::Quarters);
+        let understood = quarters
+            .scale()
+            .understood(read_dec(&quarters, "32 35").unwrap());
+        assert_eq!(
+            understood,
+            "32° 35', N or S: three fifths of a division past 32°"
+        );
+    }
+
+    proptest! {
+        #[test]
+        fn nothing_typed_makes_it_stumble(text in "(\\PC{0,16})|([0-9hmsd°'\"+\\-., NSEW]{0,16})") {
+            for numbering in HOUR_NUMBERINGS {
+                for circle in [hour_circle(numbering), degrees_circle(numbering)] {
+                    if let Ok(reading) = read_hour(&circle, &text) {
+                        prop_assert!(!circle.scale().positions_of(reading).is_empty());
+                        prop_assert!(!circle.scale().understood(reading).is_empty());
+                    }
+                }
+            }
+            for numbering in DECLINATION_NUMBERINGS {
+                let circle = declination_circle(numbering);
+                match read_dec(&circle, &text) {
+                    Ok(reading) => prop_assert!(!circle.candidates(reading).is_empty()),
+                    Err(fault) => prop_assert!(text.get(fault.at).is_some()),
+                }
+            }
+        }
     }
 }

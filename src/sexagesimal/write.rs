@@ -44,6 +44,26 @@ impl Notation {
         format!("{sign}{}", self.unsigned(rounded.abs()))
     }
 
+    /// As [`Self::write`], without leading parts that are nothing: `2m 20s`, `35'`, `0s`.
+    #[must_use]
+    pub fn write_size(&self, angle: Angle) -> String {
+        let full = self.write(angle.abs());
+        let is_nothing = |c: char| c == '0' || c == ' ';
+        let mut rest = full.as_str();
+        while let Some((part, after)) = rest.split_once(' ') {
+            if part.chars().any(|c| ('1'..='9').contains(&c)) {
+                break;
+            }
+            rest = after;
+        }
+        let short = rest.trim_start_matches(is_nothing);
+        if short.starts_with(|c: char| c.is_ascii_digit()) {
+            short.to_owned()
+        } else {
+            format!("0{short}")
+        }
+    }
+
     /// True if `step` is a whole number of `seconds`.
     fn in_whole(&self, seconds: f64) -> bool {
         let steps = self.step_s / seconds;
@@ -103,6 +123,19 @@ mod tests {
             "32° 35' 30\""
         );
         assert_eq!(degrees(15.0).write(Angle::from_degrees(-0.05)), "0° 00'");
+    }
+
+    #[test]
+    fn a_size_leaves_out_what_is_nothing() {
+        let hours = |step_s: f64| Notation::new(Unit::Hours, Angle::from_time_seconds(step_s));
+        let seconds = Angle::from_time_seconds;
+        assert_eq!(hours(20.0).write_size(seconds(140.0)), "2m 20s");
+        assert_eq!(hours(20.0).write_size(seconds(20.0)), "20s");
+        assert_eq!(hours(20.0).write_size(seconds(3600.0)), "1h 00m 00s");
+        assert_eq!(hours(20.0).write_size(seconds(0.0)), "0s");
+        assert_eq!(hours(0.1).write_size(seconds(0.5)), "0.5s");
+        let minutes = Notation::new(Unit::Degrees, Angle::from_arcminutes(5.0));
+        assert_eq!(minutes.write_size(Angle::from_arcminutes(-35.0)), "35'");
     }
 
     #[test]
