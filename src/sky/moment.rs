@@ -337,8 +337,7 @@ mod tests {
 
         #[test]
         fn the_sun_is_nowhere_far_from_the_ecliptic(utc in any_utc()) {
-            let mut moment = at("2000-01-01T00:00:00Z", 0.0, 0.0);
-            moment = Moment::new(moment.observer(), utc);
+            let moment = Moment::new(at("2000-01-01T00:00:00Z", 0.0, 0.0).observer(), utc);
             let dec = moment.apparent_body(Body::Sun).declination.degrees();
             prop_assert!(dec.abs() < 23.5);
             prop_assert!((0.98..1.02).contains(&moment.distance_au(Body::Sun)));
@@ -352,8 +351,7 @@ mod tests {
             moment = moment.later(20_000.0);
         }
         let new = Moment::new(moment.observer(), moment.utc());
-        let (stepped, fresh) = (moment.sun(), new.sun());
-        assert!(stepped.separation(&fresh).arcseconds() < 0.5);
+        assert!(moment.sun().separation(&new.sun()).arcseconds() < 0.5);
         assert!(moment.season.age(moment.tt).abs() <= 1.0);
     }
 
@@ -366,6 +364,30 @@ mod tests {
         // two hours of the Sun's way at perihelion: 61' a day
         let way = last.separation(&first).arcseconds();
         assert!((way - 61.0 * 60.0 / 12.0).abs() < SHIFT_ARCSEC, "{way}");
+    }
+
+    #[test]
+    fn the_sun_bends_saturns_light_outward_as_general_relativity_says() {
+        // Source: Explanatory Supplement 1992, 3.26: 2GM/(c^2 au) = 0.00407", times cot(half the elongation);
+        // Saturn, not at infinity, has a tenth less
+        let moment = at("2027-04-07T12:00:00Z", 0.0, 0.0);
+        let (_, straight) = length_and_direction(&moment.path_to(Body::Saturn));
+        let (straight, bent) = (
+            moment.of_date(&straight),
+            moment.apparent_body(Body::Saturn),
+        );
+        let sun = moment.apparent_body(Body::Sun);
+        let elongation = sun.separation(&straight);
+        let outward = (sun.separation(&bent) - elongation).arcseconds();
+        let expected = 0.004_07 / (elongation / 2.0).tan();
+        assert!(
+            expected > 0.1,
+            "Saturn is near the Sun that day: {elongation:?}"
+        );
+        assert!(
+            (outward / expected - 0.9).abs() < 0.05,
+            "{outward} for {expected}"
+        );
     }
 
     #[test]

@@ -7,8 +7,8 @@ use nonius::time::Utc;
 use crate::observing::geocentre;
 use crate::table::{Row, rows};
 
-/// The table's own tolerance: five figures of the E-terms, and how they are put in and taken out.
-const EQUINOX_ARCSEC: f64 = 0.002;
+/// The table's own tolerance: how E-terms are taken out and put in may differ by their square, 0.000001".
+const EQUINOX_ARCSEC: f64 = 0.0001;
 
 fn equinox(row: &Row) -> Equinox {
     let text = row.text("equinox");
