@@ -1,1 +1,18 @@
-//! What is known of the mount's errors: prior, readings, fit, prediction.
+//! What is known of the mount's errors: prior, sights, fit, prediction.
+//!
+//! A [`Prior`] and the [`Sight`]s of a night make a [`Fit`]; the rest of the program carries the [`Estimate`] that
+//! follows from it, and asks it for a [`Prediction`] of any place.
+
+mod descent;
+pub mod fit;
+pub mod prediction;
+pub mod prior;
+mod resolve;
+mod search;
+pub mod sight;
+
+pub use descent::{GROSS_SIGMAS, TRUSTED_SIGMAS};
+pub use fit::{Fit, fit};
+pub use prediction::{Estimate, Prediction};
+pub use prior::{Covariance, Prior};
+pub use sight::{Residual, Sight};

@@ -4,6 +4,7 @@
 mod bodies;
 mod circles;
 mod equinoxes;
+mod fit;
 mod meeus;
 mod mount;
 mod observing;
