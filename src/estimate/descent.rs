@@ -41,6 +41,9 @@ const LOST_STEP_SIGMAS: f64 = 1e-4;
 /// Clean readings take four to eight steps, wild ones some forty.
 const MOST_STEPS: usize = 200;
 
+/// The same while gross mistakes are still held: where that takes long, it need not be finished.
+const MOST_NEAR_STEPS: usize = 30;
+
 /// Change of the cost that is rounding alone, relative to one and to the cost.
 const COST_ROUNDING: f64 = 1e-12;
 
@@ -144,12 +147,12 @@ pub(super) fn descend(
     gross: Gross,
 ) -> Option<Descent> {
     let mut here = stand(latitude, prior, prior.independent(start), sights, gross)?;
-    let enough_sigmas = match gross {
-        Gross::Held => NEAR_STEP_SIGMAS,
-        Gross::LetGo => STEP_SIGMAS,
+    let (most_steps, enough_sigmas) = match gross {
+        Gross::Held => (MOST_NEAR_STEPS, NEAR_STEP_SIGMAS),
+        Gross::LetGo => (MOST_STEPS, STEP_SIGMAS),
     };
     let mut damping = 0.0;
-    for steps in 0..MOST_STEPS {
+    for steps in 0..most_steps {
         let to_go = step(&here, 0.0)?;
         let sigmas = here.downhill.dot(&to_go).max(0.0).sqrt();
         if sigmas < enough_sigmas {
@@ -185,7 +188,7 @@ pub(super) fn descend(
     }
     Some(Descent {
         standing: here,
-        steps: MOST_STEPS,
+        steps: most_steps,
         converged: false,
     })
 }

@@ -11,7 +11,7 @@ use crate::metal::{Axes, MountErrors, to_axes};
 const MOST_ROUNDS: usize = 8;
 
 /// Up to so many sights each is left out in turn where one may be mistaken; among more, one mistake has little leverage.
-const MOST_LEFT_OUT: usize = 20;
+const MOST_LEFT_OUT: usize = 12;
 
 /// So near a pole the hour axis angle hangs on errors not yet known: such sights join after the others have been fitted.
 const NEAR_POLE: Angle = Angle::from_degrees(3.0);
