@@ -28,6 +28,16 @@ impl Side {
         }
     }
 
+    /// As an observer says it.
+    #[must_use]
+    pub const fn in_words(self) -> &'static str {
+        match self {
+            Self::TubeWest => "tube west",
+            Self::TubeEast => "tube east",
+            Self::Single => "one side",
+        }
+    }
+
     /// The word used in files and options.
     #[must_use]
     pub const fn word(self) -> &'static str {
