@@ -1,8 +1,10 @@
-//! What is known of the mount's errors: prior, sights, fit, prediction.
+//! What is known of the mount's errors: prior, sights, fit, prediction, chance.
 //!
 //! A [`Prior`] and the [`Sight`]s of a night make a [`Fit`]; the rest of the program carries the [`Estimate`] that
-//! follows from it, and asks it for a [`Prediction`] of any place.
+//! follows from it, and asks it for a [`Prediction`] of any place; [`chance()`] says how
+//! likely that place is in a field.
 
+pub mod chance;
 mod descent;
 pub mod fit;
 pub mod prediction;
@@ -11,6 +13,7 @@ mod resolve;
 mod search;
 pub mod sight;
 
+pub use chance::chance;
 pub use descent::{GROSS_SIGMAS, TRUSTED_SIGMAS};
 pub use fit::{Fit, fit};
 pub use prediction::{Estimate, Prediction};

@@ -2,6 +2,7 @@
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
 
 mod bodies;
+mod chance;
 mod circles;
 mod equinoxes;
 mod fit;
