@@ -1,0 +1,81 @@
+//! The two lines at the top: where and with what, the date, and the three clocks.
+
+use chrono::Datelike as _;
+use ratatui::buffer::Buffer;
+use ratatui::layout::Rect;
+
+use crate::angle::Angle;
+use crate::screen::light::Strength;
+use crate::screen::look::{Look, fitting};
+use crate::time::{CivilZone, SiderealTime, Utc};
+
+/// What the header says.
+pub struct Header<'h> {
+    /// The site's name.
+    pub site: &'h str,
+    /// The mount's name.
+    pub mount: &'h str,
+    /// The side of the pier, in words; empty for a mount with one.
+    pub side: &'h str,
+    /// Where civil time is taken from.
+    pub zone: CivilZone,
+    /// The instant.
+    pub utc: Utc,
+    /// Local sidereal time then.
+    pub sidereal: SiderealTime,
+    /// The clock's correction in force, in seconds, positive if the clock is slow.
+    pub correction_s: f64,
+}
+
+/// Draws the header in two rows.
+pub fn draw(look: Look, buffer: &mut Buffer, area: Rect, header: &Header<'_>) {
+    let rows: Vec<Rect> = area.rows().collect();
+    let [first, second, ..] = rows.as_slice() else {
+        return;
+    };
+    let named = [header.site, header.mount, header.side]
+        .into_iter()
+        .filter(|part| !part.is_empty())
+        .collect::<Vec<_>>()
+        .join(" · ");
+    let civil = header.zone.civil(header.utc);
+    let day = civil.day();
+    let dates = [
+        format!("{} {day} {}", civil.format("%a"), civil.format("%B %Y")),
+        format!("{} {day} {}", civil.format("%a"), civil.format("%b %Y")),
+        format!("{} {day} {}", civil.format("%a"), civil.format("%b")),
+    ];
+    let room = usize::from(area.width).saturating_sub(crate::screen::look::columns(&named) + 2);
+    let left = look.right(buffer, *first, fitting(&dates, room), Strength::Plain);
+    look.left(buffer, left, &named, Strength::Plain);
+
+    let sidereal = format!("sidereal {}", clock(header.sidereal.angle()));
+    look.left(buffer, *second, &sidereal, Strength::Strong);
+    let middle = Rect {
+        x: second.x + second.width * 2 / 5,
+        width: second.width - second.width * 2 / 5,
+        ..*second
+    };
+    let corrected = if header.correction_s.abs() > 0.0 {
+        // said all night long, so that nobody corrects twice
+        format!(" ({:+.1} s)", header.correction_s)
+    } else {
+        String::new()
+    };
+    let civil = format!("civil {}{corrected}", civil.format("%H %M %S"));
+    let utc = format!("UTC {}", header.utc.chrono().format("%H %M %S"));
+    look.left(buffer, middle, &civil, Strength::Plain);
+    look.right(buffer, *second, &utc, Strength::Plain);
+}
+
+/// Hours, minutes and seconds of the second begun, as a clock shows them.
+fn clock(time: Angle) -> String {
+    #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // 0 to 86,400
+    let seconds = time.wrapped_positive().time_seconds().floor() as u32;
+    format!(
+        "{:02} {:02} {:02}",
+        seconds / 3600,
+        seconds / 60 % 60,
+        seconds % 60
+    )
+}
