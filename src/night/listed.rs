@@ -5,6 +5,10 @@
 
 use serde::{Deserialize, Serialize};
 
+use crate::angle::{Declination, RightAscension};
+use crate::catalog::{Constellation, Kind, Origin, Target};
+use crate::sky::{Body, CataloguePlace, Source};
+
 /// An object of a list.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct ListedTarget {
@@ -69,4 +73,162 @@ pub enum ListedPlace {
     },
     /// A name no catalogue knew: kept in the list, never dialled.
     Unknown,
+}
+
+impl ListedTarget {
+    /// A name no catalogue knew.
+    #[must_use]
+    pub fn unknown(name: &str, note: &str) -> Self {
+        Self {
+            name: name.to_owned(),
+            place: ListedPlace::Unknown,
+            also: Vec::new(),
+            kind: None,
+            catalogue: None,
+            constellation: None,
+            magnitude: None,
+            size_arcmin: None,
+            note: note.to_owned(),
+        }
+    }
+
+    /// The target to dial; nothing if its place is not known, or stated in words of a newer program.
+    #[must_use]
+    pub fn target(&self) -> Option<Target> {
+        let kind = self.kind.as_deref().and_then(|kind| kind.parse().ok());
+        let constellation = self.constellation.as_deref();
+        Some(Target {
+            name: self.name.clone(),
+            also: self.also.clone(),
+            kind: kind.unwrap_or(Kind::Other),
+            source: self.place.source()?,
+            magnitude: self.magnitude,
+            size_arcmin: self.size_arcmin.map(|[length, width]| (length, width)),
+            constellation: constellation.and_then(Constellation::abbreviated),
+            catalogue: origin(self.catalogue.as_deref()),
+            note: self.note.clone(),
+        })
+    }
+}
+
+/// The catalogue of that name; a list, as the journal is one, if it is not known.
+fn origin(name: Option<&str>) -> Origin {
+    let known = [
+        Origin::Stars,
+        Origin::Messier,
+        Origin::SolarSystem,
+        Origin::Given,
+    ];
+    let named = known.into_iter().find(|origin| Some(origin.name()) == name);
+    named.unwrap_or(Origin::List)
+}
+
+impl From<&Target> for ListedTarget {
+    fn from(target: &Target) -> Self {
+        Self {
+            name: target.name.clone(),
+            place: ListedPlace::from(&target.source),
+            also: target.also.clone(),
+            kind: Some(target.kind.words().to_owned()),
+            catalogue: Some(target.catalogue.name().to_owned()),
+            constellation: target.constellation.map(|c| c.abbreviation.to_owned()),
+            magnitude: target.magnitude,
+            size_arcmin: target.size_arcmin.map(|(length, width)| [length, width]),
+            note: target.note.clone(),
+        }
+    }
+}
+
+impl ListedPlace {
+    /// Where the place comes from; nothing if it is not known.
+    #[must_use]
+    pub fn source(&self) -> Option<Source> {
+        match self {
+            Self::Fixed {
+                ra_deg,
+                dec_deg,
+                equinox,
+                epoch,
+                pm_ra_mas,
+                pm_dec_mas,
+                parallax_mas,
+                radial_velocity_km_s,
+            } => Some(Source::Catalogue(CataloguePlace {
+                right_ascension: RightAscension::from_degrees(*ra_deg),
+                declination: Declination::from_degrees(*dec_deg),
+                equinox: equinox.parse().ok()?,
+                epoch: *epoch,
+                pm_ra_mas: *pm_ra_mas,
+                pm_dec_mas: *pm_dec_mas,
+                parallax_mas: *parallax_mas,
+                radial_velocity_km_s: *radial_velocity_km_s,
+            })),
+            Self::Body { body } => Body::named(body).map(Source::Body),
+            Self::Unknown => None,
+        }
+    }
+}
+
+impl From<&Source> for ListedPlace {
+    fn from(source: &Source) -> Self {
+        match source {
+            Source::Catalogue(place) => Self::Fixed {
+                ra_deg: place.right_ascension.degrees(),
+                dec_deg: place.declination.degrees(),
+                equinox: place.equinox.to_string(),
+                epoch: place.epoch,
+                pm_ra_mas: place.pm_ra_mas,
+                pm_dec_mas: place.pm_dec_mas,
+                parallax_mas: place.parallax_mas,
+                radial_velocity_km_s: place.radial_velocity_km_s,
+            },
+            Source::Body(body) => Self::Body {
+                body: body.name().to_owned(),
+            },
+        }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use crate::catalog::Catalogue;
+
+    use super::*;
+
+    /// Radians to degrees and back, in degrees.
+    const ROUNDING_DEG: f64 = 1e-12;
+
+    #[test]
+    fn a_target_comes_back_from_the_journal_as_it_was() {
+        let catalogue = Catalogue::builtin();
+        for name in ["M 37", "Vega", "Moon", "05:52:18.3 +32:33:11 @J2026.9"] {
+            let target = catalogue.resolve(name).unwrap();
+            let listed = ListedTarget::from(&target);
+            let text = serde_json::to_string(&listed).unwrap();
+            let back: ListedTarget = serde_json::from_str(&text).unwrap();
+            let back = back.target().unwrap();
+            if let (Source::Catalogue(was), Source::Catalogue(is)) = (target.source, back.source) {
+                let off = was.right_ascension.degrees() - is.right_ascension.degrees();
+                assert!(off.abs() < ROUNDING_DEG);
+                let off = was.declination.degrees() - is.declination.degrees();
+                assert!(off.abs() < ROUNDING_DEG);
+                let (right_ascension, declination) = (was.right_ascension, was.declination);
+                let is = CataloguePlace {
+                    right_ascension,
+                    declination,
+                    ..is
+                };
+                assert_eq!(is, was, "{name}");
+                let source = target.source;
+                assert_eq!(Target { source, ..back }, target, "{name}");
+            } else {
+                assert_eq!(back, target, "{name}");
+            }
+        }
+    }
+
+    #[test]
+    fn what_no_catalogue_knew_is_never_dialled() {
+        assert_eq!(ListedTarget::unknown("M 370", "typing slip").target(), None);
+    }
 }

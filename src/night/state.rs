@@ -6,7 +6,7 @@ use std::collections::BTreeSet;
 
 use crate::metal::Side;
 use crate::night::event::Opening;
-use crate::night::listed::{ListedPlace, ListedTarget};
+use crate::night::listed::ListedTarget;
 use crate::night::reading::{ShownAxes, StarReading};
 use crate::time::Utc;
 
@@ -153,16 +153,6 @@ impl NightTarget {
 
     /// An object known by its name alone: the line that gave its place was lost.
     pub(super) fn named(name: &str) -> Self {
-        Self::new(ListedTarget {
-            name: name.to_owned(),
-            place: ListedPlace::Unknown,
-            also: Vec::new(),
-            kind: None,
-            catalogue: None,
-            constellation: None,
-            magnitude: None,
-            size_arcmin: None,
-            note: String::new(),
-        })
+        Self::new(ListedTarget::unknown(name, ""))
     }
 }

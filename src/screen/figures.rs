@@ -132,18 +132,38 @@ fn figure(c: char) -> Option<&'static [&'static str; 5]> {
 }
 
 impl Figures {
-    /// The text in the largest figures that fit, or as it is, in one row, if none does.
+    /// Texts in the largest figures of one cut in which each fits its width, or as they are, in one
+    /// row, if there is none: one that is larger than the other would seem to matter more.
     #[must_use]
-    pub fn fitting(text: &str, width: usize, height: usize, glyphs: Glyphs) -> Self {
-        CUTS.iter()
-            .flat_map(|cut| [(cut, 2), (cut, 1)])
-            .filter(|(cut, _)| cut.rows(glyphs) <= height)
-            .map(|(cut, space)| Self::cut(text, *cut, space, glyphs))
+    pub fn together<const N: usize>(
+        texts: [(&str, usize); N],
+        height: usize,
+        glyphs: Glyphs,
+    ) -> [Self; N] {
+        let cut = CUTS
+            .iter()
+            .filter(|cut| cut.rows(glyphs) <= height)
+            .find(|cut| {
+                let fits = |&(text, width): &(&str, usize)| {
+                    Self::spaced(text, **cut, width, glyphs).is_some()
+                };
+                texts.iter().all(fits)
+            });
+        texts.map(|(text, width)| {
+            cut.and_then(|cut| Self::spaced(text, *cut, width, glyphs))
+                .unwrap_or_else(|| Self {
+                    rows: vec![text.to_owned()],
+                    width: text.chars().count(),
+                })
+        })
+    }
+
+    /// The text in a cut, spaced as widely as the width allows.
+    fn spaced(text: &str, cut: Cut, width: usize, glyphs: Glyphs) -> Option<Self> {
+        [2, 1]
+            .into_iter()
+            .map(|space| Self::cut(text, cut, space, glyphs))
             .find(|figures| figures.width <= width)
-            .unwrap_or_else(|| Self {
-                rows: vec![text.to_owned()],
-                width: text.chars().count(),
-            })
     }
 
     /// The columns it takes.
@@ -268,8 +288,13 @@ impl Widget for Drawn<'_> {
 mod tests {
     use super::*;
 
+    fn alone(text: &str, width: usize, height: usize, glyphs: Glyphs) -> Figures {
+        let [figures] = Figures::together([(text, width)], height, glyphs);
+        figures
+    }
+
     fn picture(text: &str, width: usize, height: usize, glyphs: Glyphs) -> String {
-        let figures = Figures::fitting(text, width, height, glyphs);
+        let figures = alone(text, width, height, glyphs);
         assert!(figures.width() <= width && figures.height() <= height);
         figures.rows().join("\n")
     }
@@ -284,9 +309,15 @@ mod tests {
     fn more_room_makes_larger_figures() {
         insta::assert_snapshot!(picture("20h 48m 39s", 38, 5, Glyphs::Full));
         insta::assert_snapshot!(picture("167° 15' N", 60, 6, Glyphs::Full));
-        let heights =
-            [3, 5, 6, 9].map(|rows| Figures::fitting("12h", 60, rows, Glyphs::Full).height());
+        let heights = [3, 5, 6, 9].map(|rows| alone("12h", 60, rows, Glyphs::Full).height());
         assert_eq!(heights, [3, 5, 6, 9]);
+    }
+
+    #[test]
+    fn two_readings_are_cut_alike() {
+        let texts = [("20h 12m 20s", 57), ("32° 35' N", 57)];
+        let [hour, dec] = Figures::together(texts, 9, Glyphs::Full);
+        assert_eq!(hour.height(), dec.height());
     }
 
     #[test]
@@ -298,14 +329,14 @@ mod tests {
 
     #[test]
     fn with_no_room_for_figures_the_text_stands_as_it_is() {
-        let figures = Figures::fitting("20h 56m 40s", 20, 9, Glyphs::Full);
+        let figures = alone("20h 56m 40s", 20, 9, Glyphs::Full);
         assert_eq!(figures.rows(), ["20h 56m 40s"]);
     }
 
     #[test]
     fn figures_keep_their_width_as_they_count() {
         for (one, other) in [("11h 11m 11s", "08h 28m 59s"), ("12 N", "90 S")] {
-            let width = |text| Figures::fitting(text, 60, 3, Glyphs::Full).width();
+            let width = |text| alone(text, 60, 3, Glyphs::Full).width();
             assert!(width(one).abs_diff(width(other)) <= 1);
         }
     }

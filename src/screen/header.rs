@@ -6,7 +6,7 @@ use ratatui::layout::Rect;
 
 use crate::angle::Angle;
 use crate::screen::light::Strength;
-use crate::screen::look::{Look, fitting};
+use crate::screen::look::{Look, columns, fitting};
 use crate::time::{CivilZone, SiderealTime, Utc};
 
 /// What the header says.
@@ -27,17 +27,28 @@ pub struct Header<'h> {
     pub correction_s: f64,
 }
 
+/// The columns of the shortest date, `Tue 1 Dec`.
+const SHORT_DATE: usize = 10;
+
 /// Draws the header in two rows.
 pub fn draw(look: Look, buffer: &mut Buffer, area: Rect, header: &Header<'_>) {
     let rows: Vec<Rect> = area.rows().collect();
     let [first, second, ..] = rows.as_slice() else {
         return;
     };
-    let named = [header.site, header.mount, header.side]
-        .into_iter()
-        .filter(|part| !part.is_empty())
-        .collect::<Vec<_>>()
-        .join(" · ");
+    let joined = |parts: &[&str]| {
+        let parts = parts.iter().copied().filter(|part| !part.is_empty());
+        parts.collect::<Vec<_>>().join(" · ")
+    };
+    // of the names one may have to go, the side of the pier never
+    let names = [
+        joined(&[header.site, header.mount, header.side]),
+        joined(&[header.site, header.side]),
+        joined(&[header.mount, header.side]),
+        joined(&[header.side]),
+    ];
+    let width = usize::from(area.width);
+    let named = fitting(&names, width.saturating_sub(SHORT_DATE + 2)).to_owned();
     let civil = header.zone.civil(header.utc);
     let day = civil.day();
     let dates = [
@@ -45,7 +56,7 @@ pub fn draw(look: Look, buffer: &mut Buffer, area: Rect, header: &Header<'_>) {
         format!("{} {day} {}", civil.format("%a"), civil.format("%b %Y")),
         format!("{} {day} {}", civil.format("%a"), civil.format("%b")),
     ];
-    let room = usize::from(area.width).saturating_sub(crate::screen::look::columns(&named) + 2);
+    let room = width.saturating_sub(columns(&named) + 2);
     let left = look.right(buffer, *first, fitting(&dates, room), Strength::Plain);
     look.left(buffer, left, &named, Strength::Plain);
 

@@ -72,6 +72,8 @@ pub enum Act {
     Found,
     /// It is not.
     Missed,
+    /// It is, and in the middle: read the circles on it.
+    Read,
     /// Read a star.
     Star,
     /// Look for an object to add.
@@ -92,6 +94,8 @@ pub enum Act {
     Help,
     /// Leave.
     Leave,
+    /// The other line.
+    Other,
     /// One line up.
     Up,
     /// One line down.
@@ -153,14 +157,14 @@ const fn key(
     }
 }
 
-use KeyCode::{Char, Down, Enter, Esc, Left, Right, Up};
+use KeyCode::{Char, Down, Enter, Esc, Left, Right, Tab, Up};
 
 /// The table.
 const KEYS: &[Key] = &[
     key(
         &[Char(' '), Right],
         ("space", "next"),
-        "the next object of the list; so does the arrow to the right",
+        "the next object; also the arrow to the right",
         STEPPING,
         Act::Next,
         Some(2),
@@ -168,7 +172,7 @@ const KEYS: &[Key] = &[
     key(
         &[Char('b'), Left],
         ("b", "back"),
-        "the object before; so does the arrow to the left",
+        "the object before; also the arrow to the left",
         STEPPING,
         Act::Back,
         Some(6),
@@ -176,7 +180,7 @@ const KEYS: &[Key] = &[
     key(
         &[Char('f')],
         ("f", "found"),
-        "record the object as found",
+        "found: in the eyepiece",
         STEPPING,
         Act::Found,
         Some(3),
@@ -184,7 +188,7 @@ const KEYS: &[Key] = &[
     key(
         &[Char('m')],
         ("m", "missed"),
-        "record the object as not found",
+        "missed: not to be found",
         STEPPING,
         Act::Missed,
         Some(4),
@@ -192,18 +196,26 @@ const KEYS: &[Key] = &[
     key(
         &[Char('s')],
         ("s", "star"),
-        "centre a bright star and read both circles: this is how the mount becomes known",
+        "read a bright star: it tells how the mount stands",
         STEPPING,
         Act::Star,
         Some(5),
     ),
     key(
+        &[Char('r')],
+        ("r", "read"),
+        "found, in the middle now: read the circles on it",
+        STEPPING,
+        Act::Read,
+        Some(8),
+    ),
+    key(
         &[Char('t')],
         ("t", "side"),
-        "set for the other side of the pier; after both sides, each object's usual side again",
+        "the other side of the pier; again: the usual side",
         &[Mode::Stepping, Mode::Centring],
         Act::Side,
-        Some(8),
+        Some(9),
     ),
     key(
         &[Char('n')],
@@ -211,12 +223,12 @@ const KEYS: &[Key] = &[
         "write a note about the object",
         STEPPING,
         Act::Note,
-        Some(10),
+        Some(11),
     ),
     key(
         &[Char('/')],
         ("/", "search"),
-        "look up an object and add it to the list",
+        "look up an object, add it to the list",
         STEPPING,
         Act::Search,
         Some(7),
@@ -227,7 +239,7 @@ const KEYS: &[Key] = &[
         "take the last act back",
         &[Mode::Stepping, Mode::Centring],
         Act::Undo,
-        Some(9),
+        Some(10),
     ),
     key(
         &[Char('c')],
@@ -235,12 +247,12 @@ const KEYS: &[Key] = &[
         "correct the clock by a time signal",
         STEPPING,
         Act::Clock,
-        Some(11),
+        Some(12),
     ),
     key(
         &[Char('a')],
         ("a", "answer"),
-        "answer for an object near the Sun, when its settings are withheld",
+        "answer for an object near the Sun",
         STEPPING,
         Act::Sun,
         None,
@@ -251,7 +263,7 @@ const KEYS: &[Key] = &[
         "night, dim and day in turn",
         &[Mode::Stepping, Mode::Centring, Mode::Help],
         Act::Light,
-        Some(12),
+        Some(13),
     ),
     key(
         &[Char('?')],
@@ -264,7 +276,7 @@ const KEYS: &[Key] = &[
     key(
         &[Char('q')],
         ("q", "leave"),
-        "leave; everything recorded is safe, and the night goes on where it stopped",
+        "leave; all is recorded, and goes on from here",
         STEPPING,
         Act::Leave,
         Some(1),
@@ -272,10 +284,18 @@ const KEYS: &[Key] = &[
     key(&[Up], ("up", ""), "the line above", CHOOSING, Act::Up, None),
     key(
         &[Down],
-        ("up down", "choose"),
+        ("down", "choose"),
         "the line below",
         CHOOSING,
         Act::Down,
+        Some(2),
+    ),
+    key(
+        &[Tab, Up, Down],
+        ("tab", "other circle"),
+        "from one circle to the other",
+        &[Mode::Reading],
+        Act::Other,
         Some(2),
     ),
     key(
@@ -289,7 +309,7 @@ const KEYS: &[Key] = &[
     key(
         &[Enter, Char(' ')],
         ("enter", "centred"),
-        "strike it at the moment the star stands in the middle: the reading belongs to that moment",
+        "strike it as the star stands in the middle",
         &[Mode::Centring],
         Act::Accept,
         Some(1),
@@ -418,6 +438,19 @@ mod tests {
                 act(mode, KeyCode::Esc) == Some(Act::Cancel)
             };
             assert!(out, "{mode:?}");
+        }
+    }
+
+    #[test]
+    fn every_sentence_fits_the_help_view_of_the_smallest_screen() {
+        // 60 columns, 7 of them for the key
+        for key in table() {
+            assert!(key.sentence.chars().count() <= 53, "{}", key.sentence);
+            assert!(key.name.chars().count() < 7, "{}", key.name);
+        }
+        for mode in MODES {
+            let held = table().iter().filter(|key| key.modes.contains(&mode));
+            assert!(held.count() <= 15, "{mode:?}");
         }
     }
 

@@ -1,10 +1,30 @@
 //! The terminal at the eyepiece.
 
+pub mod circle;
+pub mod desk;
+pub mod entry;
 pub mod figures;
 pub mod happening;
 pub mod header;
+pub mod help;
 pub mod keys;
+pub mod known;
+pub mod layout;
 pub mod light;
+pub mod lists;
 pub mod look;
+pub mod observatory;
+pub mod outlook;
+pub mod panel;
 pub mod picture;
+pub mod reading;
+pub mod run;
+pub mod shown;
+pub mod stars;
+pub mod stopped;
+pub mod target_line;
 pub mod terminal;
+pub mod truth;
+pub mod update;
+pub mod view;
+pub mod words;

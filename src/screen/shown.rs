@@ -1,0 +1,298 @@
+//! Everything the screen shows at one instant, worked out once from the record and the clock.
+//!
+//! What the observer sees is what a key acts on: the same value goes to the view and to the update.
+
+use crate::catalog::{Filter, Target};
+use crate::dial::{self, CautionCode, Dial, NotDialled, Setup, TubePlace};
+use crate::metal::{self, Side, SideRequest};
+use crate::night::{Night, Setting, State};
+use crate::screen::keys::Mode;
+use crate::screen::known::Known;
+use crate::screen::observatory::Observatory;
+use crate::screen::outlook::{Foresight, Outlook};
+use crate::screen::panel::Panel;
+use crate::screen::reading::{Sitting, TypedReading};
+use crate::screen::stars::{self, Placed};
+use crate::sky::Moment;
+
+/// More matches than a screen has lines.
+const MATCHES: usize = 30;
+
+/// What there is to set.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Settings {
+    /// These are the settings.
+    Dialled(Box<Dial>),
+    /// Following them could hurt: the words stand in their place.
+    Stopped {
+        /// What it is about, in a word or two.
+        heading: &'static str,
+        /// The words.
+        words: String,
+        /// The observer may answer for it.
+        answerable: bool,
+    },
+    /// There is nothing to set.
+    Nothing(String),
+}
+
+/// What the screen shows at one instant.
+#[derive(Clone, Debug)]
+pub struct Shown {
+    /// The sky now.
+    pub moment: Moment,
+    /// The object or star being dialled.
+    pub target: Option<Target>,
+    /// Its settings.
+    pub settings: Settings,
+    /// Where it is going.
+    pub outlook: Option<Outlook>,
+    /// The stars to choose from.
+    pub stars: Vec<Placed>,
+    /// The objects that match what is typed.
+    pub matches: Vec<Target>,
+    /// The circles as typed.
+    pub reading: Option<TypedReading>,
+    /// On the demonstration, what the circles of the pretended mount show with the star centred.
+    pub pretended: Option<(String, String)>,
+}
+
+/// What it is worked out from.
+#[derive(Clone, Copy)]
+pub struct From<'f> {
+    /// What stays the same.
+    pub observatory: &'f Observatory,
+    /// The bright stars, the brightest first.
+    pub bright: &'f [Target],
+    /// The record.
+    pub night: &'f Night,
+    /// What is known of the mount.
+    pub known: &'f Known,
+    /// The rest.
+    pub panel: &'f Panel,
+    /// The sky now.
+    pub moment: &'f Moment,
+}
+
+impl From<'_> {
+    /// Works it out.
+    #[must_use]
+    pub fn show(&self, foresight: &mut Foresight) -> Shown {
+        let panel = self.panel;
+        let state = self.night.state();
+        let star = panel.star.as_ref().map(|centred| centred.star.clone());
+        let listed = state
+            .current_target()
+            .and_then(|entry| entry.target.target());
+        let target = star.or(listed);
+        let settings = match (&target, state.current_target()) {
+            (Some(target), _) => self.settings(target),
+            (None, Some(entry)) => {
+                Settings::Nothing(format!("no catalogue knows {}", entry.target.name))
+            }
+            (None, None) if state.targets.is_empty() => {
+                Settings::Nothing("the list is empty: press / to look up an object".to_owned())
+            }
+            (None, None) => Settings::Nothing(
+                "press s to read a star, or space for the first object of the list".to_owned(),
+            ),
+        };
+        let outlook = target.as_ref().map(|target| {
+            foresight.outlook(self.observatory, &target.name, &target.source, self.moment)
+        });
+        let typed = panel.typed.line().value();
+        Shown {
+            moment: *self.moment,
+            settings,
+            outlook,
+            stars: match panel.mode {
+                Mode::ChoosingStar => self.stars(typed),
+                _ => Vec::new(),
+            },
+            matches: match panel.mode {
+                Mode::Searching => self.matches(typed),
+                _ => Vec::new(),
+            },
+            reading: self.reading(),
+            pretended: self.pretended(),
+            target,
+        }
+    }
+
+    fn settings(&self, target: &Target) -> Settings {
+        let observatory = self.observatory;
+        let state = self.night.state();
+        let accepted =
+            observatory.sun_risk_accepted || state.sun_risk_is_acknowledged(&target.name);
+        let setup = Setup {
+            horizon: &observatory.horizon,
+            mount: &observatory.mount,
+            estimate: &self.known.estimate,
+            side: request(state),
+            tube: tube(state),
+            calibrated_at: self.known.read_at,
+            sun_risk_accepted: accepted,
+        };
+        match dial::dial(&setup, &observatory.lead(self.moment), target) {
+            Ok(dial) => {
+                stopped(&dial, accepted).unwrap_or_else(|| Settings::Dialled(Box::new(dial)))
+            }
+            Err(NotDialled::TheSun | NotDialled::SunNear { .. }) => {
+                near_the_sun("this lies near the Sun, and the Sun is up")
+            }
+            Err(other) => Settings::Stopped {
+                heading: "out of reach",
+                words: other.to_string(),
+                answerable: false,
+            },
+        }
+    }
+
+    fn stars(&self, typed: &str) -> Vec<Placed> {
+        let state = self.night.state();
+        stars::well_placed(
+            self.observatory,
+            self.bright,
+            self.moment,
+            request(state),
+            state.tube.map(|tube| tube.side),
+            typed,
+        )
+    }
+
+    fn matches(&self, typed: &str) -> Vec<Target> {
+        if typed.trim().is_empty() {
+            return Vec::new();
+        }
+        // coordinates, and names typed to the end
+        let resolved = self.observatory.catalogue.resolve(typed).ok();
+        let filter = Filter {
+            limit: MATCHES,
+            ..Filter::default()
+        };
+        let found = self.observatory.catalogue.search(typed, &filter);
+        let others = found
+            .into_iter()
+            .map(|found| found.target)
+            .filter(|target| {
+                resolved
+                    .as_ref()
+                    .is_none_or(|first| first.name != target.name)
+            });
+        resolved.clone().into_iter().chain(others).collect()
+    }
+
+    /// The side of the pier the star is read from: the one it is dialled for.
+    #[must_use]
+    pub fn reading_side(&self, moment: &Moment, target: &Target) -> Option<Side> {
+        let state = self.night.state();
+        let place = moment.observed(&moment.apparent(&target.source));
+        let present = state.tube.map(|tube| tube.side);
+        self.observatory
+            .mount
+            .choose_side(request(state), place.hour_angle, present)
+            .ok()
+    }
+
+    fn reading(&self) -> Option<TypedReading> {
+        let centred = self.panel.star.as_ref()?;
+        let moment = self.centred_moment()?;
+        let sitting = Sitting {
+            observatory: self.observatory,
+            known: self.known,
+            moment: &moment,
+            star: &centred.star.name,
+            source: &centred.star.source,
+            side: self.reading_side(&moment, &centred.star)?,
+        };
+        Some(sitting.understand(&self.panel.typed))
+    }
+
+    /// The sky as the star stood in the middle.
+    fn centred_moment(&self) -> Option<Moment> {
+        let at = self.panel.star.as_ref()?.at?;
+        Some(self.moment.later(at.seconds_since(self.moment.utc())))
+    }
+
+    fn pretended(&self) -> Option<(String, String)> {
+        let errors = self.observatory.demonstration?;
+        let star = &self.panel.star.as_ref()?.star;
+        let moment = self.centred_moment().unwrap_or(*self.moment);
+        let side = self.reading_side(&moment, star)?;
+        let place = moment.observed(&moment.apparent(&star.source));
+        let latitude = moment.observer().latitude;
+        let axes =
+            metal::to_axes(place.hour_angle, place.declination, latitude, &errors, side).ok()?;
+        let mount = &self.observatory.mount;
+        let (hour, dec) = (&mount.hour_circle, &mount.declination_circle);
+        let read = hour.reading(axes.hour, moment.apparent_sidereal(), side);
+        Some((
+            hour.scale().text(read),
+            dec.scale().text(dec.reading(axes.dec)),
+        ))
+    }
+}
+
+impl Shown {
+    /// The settings shown, for the record.
+    #[must_use]
+    pub fn setting(&self) -> Option<Setting> {
+        let Settings::Dialled(dial) = &self.settings else {
+            return None;
+        };
+        Some(Setting {
+            hour: dial.hour.text.clone(),
+            dec: dial.dec.text.clone(),
+            side: dial.side,
+            axes: dial.axes.into(),
+        })
+    }
+}
+
+/// The side of the pier asked for.
+#[must_use]
+pub fn request(state: &State) -> SideRequest {
+    state.side.map_or(SideRequest::Auto, SideRequest::Only)
+}
+
+fn tube(state: &State) -> Option<TubePlace> {
+    let shown = state.tube?;
+    Some(TubePlace {
+        axes: shown.axes.into(),
+        utc: shown.utc,
+        side: shown.side,
+    })
+}
+
+/// What stops settings that could be followed to someone's harm.
+fn stopped(dial: &Dial, sun_risk_accepted: bool) -> Option<Settings> {
+    let caution = dial.cautions.iter().find(|caution| match caution.code {
+        CautionCode::NearSun => !sun_risk_accepted,
+        CautionCode::BelowHorizon | CautionCode::BeyondLimit => true,
+        _ => false,
+    })?;
+    Some(match caution.code {
+        CautionCode::NearSun => near_the_sun(&caution.text),
+        CautionCode::BelowHorizon => Settings::Stopped {
+            heading: "not up",
+            words: caution.text.clone(),
+            answerable: false,
+        },
+        _ => Settings::Stopped {
+            heading: "out of reach",
+            words: caution.text.clone(),
+            answerable: false,
+        },
+    })
+}
+
+fn near_the_sun(why: &str) -> Settings {
+    Settings::Stopped {
+        heading: "THE SUN",
+        words: format!(
+            "{why}. Sunlight in a telescope or a finder blinds at once and sets things on fire. \
+             The settings are withheld. The rules of the house and the person in charge come first."
+        ),
+        answerable: true,
+    }
+}

@@ -1,0 +1,384 @@
+//! What follows from what happens: pure, with the record and the clock read only.
+//!
+//! A key acts on what the observer saw when striking it. What changes the record is handed to the loop
+//! as a [`Doing`]; the screen goes on only once the record is safe.
+
+use crossterm::event::KeyCode;
+
+use crate::catalog::Target;
+use crate::night::{Event, ListedTarget, Night, NightTarget};
+use crate::screen::happening::{Happening, Stroke};
+use crate::screen::keys::{self, Act, DOUBLE_STRIKE, Mode};
+use crate::screen::panel::{Centred, Doing, Panel};
+use crate::screen::shown::{From, Settings, Shown};
+use crate::time::Utc;
+
+/// What a happening is held against.
+#[derive(Clone, Copy)]
+pub struct Scene<'s> {
+    /// The record, and what stays the same.
+    pub from: From<'s>,
+    /// What was on the screen.
+    pub shown: &'s Shown,
+    /// The moment it happened.
+    pub utc: Utc,
+}
+
+/// What the observer types to answer for an object near the Sun.
+pub const SUN_WORD: &str = "sun";
+
+/// A clock further out than this is set wrong, not slow or fast, in seconds.
+const MOST_CORRECTION_S: f64 = 3600.0;
+
+/// Takes in what happened.
+pub fn update(panel: &mut Panel, scene: &Scene<'_>, happening: &Happening) -> Vec<Doing> {
+    match happening {
+        Happening::Key(stroke) => struck(panel, scene, *stroke),
+        Happening::Pasted(text) => {
+            if panel.mode.types() {
+                panel.typed.paste(text);
+                changed(panel);
+            }
+            Vec::new()
+        }
+        _ => Vec::new(),
+    }
+}
+
+fn struck(panel: &mut Panel, scene: &Scene<'_>, stroke: Stroke) -> Vec<Doing> {
+    let mode = panel.mode;
+    let doubled = panel
+        .struck_at
+        .is_some_and(|before| stroke.at.saturating_sub(before) < DOUBLE_STRIKE);
+    if mode == Mode::Stepping && doubled {
+        return Vec::new();
+    }
+    let Some(act) = keys::act(mode, stroke.key) else {
+        if mode.types() && panel.typed.edit(stroke.key) {
+            changed(panel);
+        } else if mode == Mode::Help {
+            panel.mode = panel.help_from;
+        } else if stroke.key != KeyCode::Null {
+            panel.say("no such key here: ? shows the keys");
+        }
+        return Vec::new();
+    };
+    panel.said = None;
+    let doings = match mode {
+        Mode::Stepping | Mode::Centring => acted(panel, scene, act),
+        Mode::Help => {
+            if act == Act::Light {
+                panel.light = panel.light.next();
+            } else {
+                panel.mode = panel.help_from;
+            }
+            Vec::new()
+        }
+        _ => typing(panel, scene, act),
+    };
+    if doings
+        .iter()
+        .any(|doing| matches!(doing, Doing::Record { .. }))
+    {
+        panel.struck_at = Some(stroke.at);
+    }
+    doings
+}
+
+/// What was typed has changed: nothing is chosen, and nothing questioned, any more.
+fn changed(panel: &mut Panel) {
+    panel.chosen = 0;
+    panel.said = None;
+    if let Some(star) = &mut panel.star {
+        star.questioned = false;
+    }
+}
+
+fn record(event: Event, said: impl Into<String>, then: Mode) -> Vec<Doing> {
+    vec![Doing::Record {
+        event: Box::new(event),
+        said: said.into(),
+        then,
+    }]
+}
+
+/// A key struck while stepping, or while centring a star.
+fn acted(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
+    let night = scene.from.night;
+    let mode = panel.mode;
+    let record_or_say = |panel: &mut Panel, event: Option<Event>, said: &str, why_not: &str| {
+        if let Some(event) = event {
+            record(event, said, mode)
+        } else {
+            panel.say(why_not);
+            Vec::new()
+        }
+    };
+    match act {
+        Act::Next => record_or_say(panel, night.next(), "", "this is the end of the list"),
+        Act::Back => record_or_say(panel, night.back(), "", "this is the head of the list"),
+        Act::Found => {
+            let event = night.found(scene.shown.setting(), None);
+            let said = format!("found: {}", current(night));
+            record_or_say(panel, event, &said, NO_OBJECT)
+        }
+        Act::Missed => {
+            let event = night.missed(scene.shown.setting());
+            let said = format!("missed: {}", current(night));
+            record_or_say(panel, event, &said, NO_OBJECT)
+        }
+        Act::Read => {
+            read_here(panel, scene);
+            Vec::new()
+        }
+        Act::Undo => record_or_say(panel, night.undo(), "", "there is nothing to take back"),
+        Act::Side => side(panel, scene),
+        Act::Light => {
+            panel.light = panel.light.next();
+            panel.say(format!("light: {}", panel.light.word()));
+            Vec::new()
+        }
+        Act::Help => {
+            panel.help_from = mode;
+            panel.mode = Mode::Help;
+            Vec::new()
+        }
+        Act::Leave => vec![Doing::Leave],
+        Act::Sun => {
+            if let Settings::Stopped {
+                answerable: true, ..
+            } = scene.shown.settings
+            {
+                panel.enter(Mode::SunRisk);
+            } else {
+                panel.say("nothing is withheld here");
+            }
+            Vec::new()
+        }
+        Act::Accept => {
+            centred(panel, scene.utc);
+            Vec::new()
+        }
+        Act::Cancel => {
+            panel.enter(Mode::ChoosingStar);
+            panel.star = None;
+            Vec::new()
+        }
+        Act::Star => entered(panel, Mode::ChoosingStar),
+        Act::Search => entered(panel, Mode::Searching),
+        Act::Note => entered(panel, Mode::Noting),
+        Act::Clock => entered(panel, Mode::Clock),
+        Act::Up | Act::Down | Act::Other => Vec::new(),
+    }
+}
+
+const NO_OBJECT: &str = "no object is being dialled: press space for the first";
+
+fn entered(panel: &mut Panel, mode: Mode) -> Vec<Doing> {
+    panel.enter(mode);
+    Vec::new()
+}
+
+fn current(night: &Night) -> &str {
+    let entry: Option<&NightTarget> = night.state().current_target();
+    entry.map_or("", |entry| entry.target.name.as_str())
+}
+
+fn side(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
+    let state = scene.from.night.state();
+    if !scene.from.observatory.mount.kind.has_two_sides() {
+        panel.say("this mount has one side");
+        return Vec::new();
+    }
+    let shown = scene.shown.target.as_ref();
+    let present = shown.and_then(|target| scene.from.reading_side(&scene.shown.moment, target));
+    let (side, said) = match (state.side, present) {
+        (Some(_), _) => (None, "the usual side of each object".to_owned()),
+        (None, Some(side)) => {
+            let other = side.other();
+            let words = other.map_or("", |side| side.in_words());
+            (other, format!("{words}, for every object"))
+        }
+        (None, None) => {
+            panel.say(NO_OBJECT);
+            return Vec::new();
+        }
+    };
+    record(Event::SideChanged { side }, said, panel.mode)
+}
+
+/// The star stands in the middle at this moment: what the circles show is typed next.
+fn centred(panel: &mut Panel, utc: Utc) {
+    if let Some(star) = panel.star.take() {
+        panel.enter(Mode::Reading);
+        panel.star = Some(Centred {
+            at: Some(utc),
+            ..star
+        });
+    }
+}
+
+/// The object being dialled stands in the middle at this moment.
+fn read_here(panel: &mut Panel, scene: &Scene<'_>) {
+    match &scene.shown.target {
+        Some(target) if matches!(scene.shown.settings, Settings::Dialled(_)) => {
+            panel.star = Some(Centred {
+                star: target.clone(),
+                found: true,
+                at: None,
+                questioned: false,
+            });
+            centred(panel, scene.utc);
+        }
+        _ => panel.say(NO_OBJECT),
+    }
+}
+
+/// A key that is no text, struck while typing.
+fn typing(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
+    let lines = match panel.mode {
+        Mode::ChoosingStar => scene.shown.stars.len(),
+        _ => scene.shown.matches.len(),
+    };
+    match act {
+        Act::Up => panel.chosen = panel.chosen.saturating_sub(1),
+        Act::Down => panel.chosen = (panel.chosen + 1).min(lines.saturating_sub(1)),
+        Act::Other => panel.typed.at_second = !panel.typed.at_second,
+        Act::Cancel => cancelled(panel),
+        Act::Accept => return accepted(panel, scene),
+        _ => {}
+    }
+    Vec::new()
+}
+
+fn cancelled(panel: &mut Panel) {
+    let star = panel.star.take();
+    match (panel.mode, star) {
+        // back to the star, which has moved on meanwhile: it must be centred again
+        (Mode::Reading, Some(star)) if !star.found => {
+            panel.enter(Mode::Centring);
+            panel.star = Some(Centred {
+                at: None,
+                questioned: false,
+                ..star
+            });
+        }
+        _ => panel.enter(Mode::Stepping),
+    }
+}
+
+fn accepted(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
+    let text = panel.typed.line().value().trim().to_owned();
+    match panel.mode {
+        Mode::ChoosingStar => {
+            if let Some(placed) = scene.shown.stars.get(panel.chosen) {
+                panel.enter(Mode::Centring);
+                panel.star = Some(Centred {
+                    star: placed.star.clone(),
+                    found: false,
+                    at: None,
+                    questioned: false,
+                });
+            } else {
+                panel.say("no such star is well placed now");
+            }
+            Vec::new()
+        }
+        Mode::Searching => added(panel, scene),
+        Mode::Noting if text.is_empty() => entered(panel, Mode::Stepping),
+        Mode::Noting => record(scene.from.night.note(&text), "noted", Mode::Stepping),
+        Mode::SunRisk => sun_risk(panel, scene, &text),
+        Mode::Clock => clock(panel, scene, &text),
+        Mode::Reading => read(panel, scene),
+        Mode::Stepping | Mode::Centring | Mode::Help => Vec::new(),
+    }
+}
+
+fn added(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
+    let Some(target) = scene.shown.matches.get(panel.chosen) else {
+        panel.say("nothing matches");
+        return Vec::new();
+    };
+    let targets = &scene.from.night.state().targets;
+    let listed = targets
+        .iter()
+        .position(|entry| entry.target.name == target.name);
+    let taken = listed.and_then(|index| scene.from.night.take(index));
+    if let Some(event) = taken {
+        return record(event, "it was in the list already", Mode::Stepping);
+    }
+    let said = format!("{} stands at the end of the list", target.name);
+    let event = Event::TargetAdded {
+        target: Box::new(ListedTarget::from(target)),
+    };
+    record(event, said, Mode::Stepping)
+}
+
+fn sun_risk(panel: &mut Panel, scene: &Scene<'_>, text: &str) -> Vec<Doing> {
+    let target: Option<&Target> = scene.shown.target.as_ref();
+    match target {
+        Some(target) if text.eq_ignore_ascii_case(SUN_WORD) => {
+            let event = Event::SunRiskAcknowledged {
+                target: target.name.clone(),
+            };
+            record(
+                event,
+                "you answer for it: filter first, finder capped",
+                Mode::Stepping,
+            )
+        }
+        _ => {
+            panel.say(format!("type {SUN_WORD} to answer for it, or esc"));
+            Vec::new()
+        }
+    }
+}
+
+/// What is typed is how far the clock on the screen is off, so it adds to the correction in force.
+fn clock(panel: &mut Panel, scene: &Scene<'_>, text: &str) -> Vec<Doing> {
+    match text.replace(',', ".").parse::<f64>() {
+        Ok(slow) if slow.abs() <= MOST_CORRECTION_S => {
+            let seconds = scene.from.night.state().clock_correction_s + slow;
+            record(
+                Event::ClockCorrected { seconds },
+                format!("the machine's clock is now corrected by {seconds:+.1} s"),
+                Mode::Stepping,
+            )
+        }
+        _ => {
+            panel.say("type seconds, as in 2.5 for a slow clock or -2.5 for a fast one");
+            Vec::new()
+        }
+    }
+}
+
+fn read(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
+    let typed = scene.shown.reading.as_ref();
+    let Some(whole) = typed.and_then(|typed| typed.whole.clone()) else {
+        // on to the other circle; what is wrong stands beside what was typed
+        panel.typed.at_second = !panel.typed.at_second;
+        return Vec::new();
+    };
+    if !panel.typed.at_second {
+        panel.typed.at_second = true;
+        return Vec::new();
+    }
+    let Some(star) = &mut panel.star else {
+        return Vec::new();
+    };
+    if whole.questionable && !star.questioned {
+        star.questioned = true;
+        panel.say(
+            "far from expected: look again at star, side and circles. enter once more to take it",
+        );
+        return Vec::new();
+    }
+    let said = format!("read: {}", star.star.name);
+    let event = if star.found {
+        let setting = None;
+        scene.from.night.found(setting, Some(whole.reading))
+    } else {
+        Some(Event::StarRead(Box::new(whole.reading)))
+    };
+    event.map_or_else(Vec::new, |event| record(event, said, Mode::Stepping))
+}

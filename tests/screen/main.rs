@@ -1,0 +1,6 @@
+//! The screen: keys typed at a fixed instant give a picture, and the colours it is drawn in.
+#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
+
+mod flows;
+mod light;
+mod scene;
