@@ -94,6 +94,29 @@ pub const LOWEST_ALTITUDE: Bound = Bound::new("lowest altitude", "degrees", -5.0
 pub const EQUINOX_YEAR: Bound = Bound::new("year of the equinox", "", 1750.0, 2200.0);
 /// Field of an optic.
 pub const FIELD: Bound = Bound::new("field", "degrees", 0.001, 60.0);
+/// Smallest engraved division of a circle, or the least count of its vernier.
+pub const DIVISION: Bound = Bound::new("division", "seconds of arc", 1.0, 324_000.0);
+/// Error of one look at a circle, 1 sigma.
+pub const READING_ERROR: Bound = Bound::new("reading error", "degrees", 1e-5, 15.0);
+/// How large an error of the mount is expected to be, 1 sigma; zero for none.
+pub const EXPECTED_ERROR: Bound = Bound::new("expected error", "degrees", 0.0, 30.0);
+/// Radius of a dome.
+pub const DOME_RADIUS: Bound = Bound::new("radius of the dome", "metres", 0.5, 50.0);
+/// Where the axes cross, from the centre of the dome, in each direction.
+pub const AXES_IN_DOME: Bound =
+    Bound::new("distance from the dome's centre", "metres", -50.0, 50.0);
+/// Distance of the tube from the crossing of the axes.
+pub const TUBE_OFFSET: Bound = Bound::new("offset of the tube", "metres", 0.0, 20.0);
+/// Distance of the eyepiece along the tube, negative toward the sky.
+pub const EYEPIECE: Bound = Bound::new("distance of the eyepiece", "metres", -30.0, 30.0);
+/// Height of the crossing of the axes above the floor.
+pub const AXES_ABOVE_FLOOR: Bound = Bound::new("height of the axes", "metres", 0.0, 30.0);
+/// Magnitude of a target, from the Sun's to fainter than any eyepiece shows.
+pub const MAGNITUDE: Bound = Bound::new("magnitude", "", -27.0, 40.0);
+/// Proper motion in one direction; the fastest star moves 10,400 mas a year.
+pub const PROPER_MOTION: Bound = Bound::new("proper motion", "mas a year", -20_000.0, 20_000.0);
+/// Length or width of a target.
+pub const SIZE: Bound = Bound::new("size", "minutes of arc", 0.0, 5400.0);
 
 #[cfg(test)]
 mod tests {

@@ -371,6 +371,15 @@ impl<'d> Value<'d> {
 
     /// One of the words of a table.
     pub fn word<T: Copy>(&self, words: &[(&str, T)]) -> Option<T> {
+        self.word_or(words, |_| None)
+    }
+
+    /// One of the words of a table; `otherwise` may know what is wrong with another word.
+    pub fn word_or<T: Copy>(
+        &self,
+        words: &[(&str, T)],
+        otherwise: impl Fn(&str) -> Option<String>,
+    ) -> Option<T> {
         let known: Vec<&str> = words.iter().map(|(word, _)| *word).collect();
         let DeValue::String(text) = self.value else {
             self.wrong_type(&format!("one of the words {}", known.join(", ")));
@@ -379,7 +388,7 @@ impl<'d> Value<'d> {
         let found = words.iter().find(|(word, _)| *word == text.as_ref());
         if found.is_none() {
             self.fault(
-                format!("\"{text}\" is no {}", self.key),
+                otherwise(text).unwrap_or_else(|| format!("\"{text}\" is no {}", self.key)),
                 format!("write one of {}", known.join(", ")),
             );
         }
@@ -394,11 +403,6 @@ impl<'d> Value<'d> {
             self.wrong_type(wanted);
             None
         }
-    }
-
-    /// True if it is a text.
-    pub const fn is_text(&self) -> bool {
-        matches!(self.value, DeValue::String(_))
     }
 }
 

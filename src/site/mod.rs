@@ -4,6 +4,16 @@
 //! | file | what it reads or does |
 //! |---|---|
 //! | [`fault`] | what is wrong with a file, and where |
+//! | [`mount_file`] | a mount: circles, limits, expected errors, dome, tube, optics |
+//! | [`site_file`] | a place: coordinates, air, horizon, its mount |
 
+mod circle_file;
 mod document;
 pub mod fault;
+pub mod mount_file;
+pub mod site_file;
+mod written_angle;
+
+pub use fault::{Fault, Faults, FileText, Ink};
+pub use mount_file::MountFile;
+pub use site_file::{Site, SiteFile};
