@@ -92,6 +92,8 @@ pub const MASK_ALTITUDE: Bound = Bound::new("altitude", "degrees", 0.0, 90.0);
 pub const LOWEST_ALTITUDE: Bound = Bound::new("lowest altitude", "degrees", -5.0, 90.0);
 /// Year of an equinox or of an epoch: the precession model is good far beyond.
 pub const EQUINOX_YEAR: Bound = Bound::new("year of the equinox", "", 1750.0, 2200.0);
+/// Year of the epoch of a place.
+pub const EPOCH: Bound = Bound::new("epoch", "", 1750.0, 2200.0);
 /// Field of an optic.
 pub const FIELD: Bound = Bound::new("field", "degrees", 0.001, 60.0);
 /// Smallest engraved division of a circle, or the least count of its vernier.

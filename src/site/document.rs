@@ -100,7 +100,7 @@ pub struct Value<'d> {
     key: &'static str,
     start: usize,
     end: usize,
-    value: &'d DeValue<'d>,
+    held: &'d DeValue<'d>,
     noted: &'d Noted,
 }
 
@@ -129,7 +129,7 @@ impl<'d> Section<'d> {
             key,
             start: span.start,
             end: span.end,
-            value: value.get_ref(),
+            held: value.get_ref(),
             noted: self.noted,
         })
     }
@@ -191,7 +191,7 @@ impl<'d> Section<'d> {
         let Some(value) = self.optional(key) else {
             return Vec::new();
         };
-        let DeValue::Array(array) = value.value else {
+        let DeValue::Array(array) = value.held else {
             value.wrong_type(&format!("tables, each headed [[{key}]]"));
             return Vec::new();
         };
@@ -250,13 +250,13 @@ impl<'d> Value<'d> {
         Self {
             start: span.start,
             end: span.end,
-            value: item.get_ref(),
+            held: item.get_ref(),
             ..*self
         }
     }
 
     fn section(&self) -> Option<Section<'d>> {
-        if let DeValue::Table(table) = self.value {
+        if let DeValue::Table(table) = self.held {
             Some(Section::new(self.key, self.span(), table, self.noted))
         } else {
             self.wrong_type(&format!("a table, headed [{}]", self.key));
@@ -277,7 +277,7 @@ impl<'d> Value<'d> {
         hint: impl Into<String>,
     ) {
         let written = self.end.saturating_sub(self.start);
-        let text = self.value.as_str().map_or(0, str::len);
+        let text = self.held.as_str().map_or(0, str::len);
         // one quote on each side and nothing escaped: the text stands there letter for letter
         let span = if written == text + 2 {
             let start = (self.start + 1 + part.start).min(self.end);
@@ -290,7 +290,7 @@ impl<'d> Value<'d> {
     }
 
     fn wrong_type(&self, wanted: &str) {
-        let found = match self.value {
+        let found = match self.held {
             DeValue::String(_) => "text",
             DeValue::Integer(_) | DeValue::Float(_) => "a number",
             DeValue::Boolean(_) => "true or false",
@@ -306,7 +306,7 @@ impl<'d> Value<'d> {
 
     /// A text, which has something in it and no control characters.
     pub fn text(&self, wanted: &str) -> Option<&'d str> {
-        let DeValue::String(text) = self.value else {
+        let DeValue::String(text) = self.held else {
             self.wrong_type(wanted);
             return None;
         };
@@ -326,7 +326,7 @@ impl<'d> Value<'d> {
 
     /// True or false.
     pub fn flag(&self) -> Option<bool> {
-        if let DeValue::Boolean(flag) = self.value {
+        if let DeValue::Boolean(flag) = self.held {
             Some(*flag)
         } else {
             self.wrong_type("true or false");
@@ -336,7 +336,7 @@ impl<'d> Value<'d> {
 
     /// A number, without looking at its range.
     pub fn plain_number(&self) -> Option<f64> {
-        let number = match self.value {
+        let number = match self.held {
             DeValue::Integer(integer) if integer.radix() == 10 => integer.as_str().parse().ok(),
             DeValue::Float(float) => float.as_str().parse().ok(),
             _ => None,
@@ -381,7 +381,7 @@ impl<'d> Value<'d> {
         otherwise: impl Fn(&str) -> Option<String>,
     ) -> Option<T> {
         let known: Vec<&str> = words.iter().map(|(word, _)| *word).collect();
-        let DeValue::String(text) = self.value else {
+        let DeValue::String(text) = self.held else {
             self.wrong_type(&format!("one of the words {}", known.join(", ")));
             return None;
         };
@@ -397,7 +397,7 @@ impl<'d> Value<'d> {
 
     /// The items of a list.
     pub fn items(&self, wanted: &str) -> Option<Vec<Self>> {
-        if let DeValue::Array(array) = self.value {
+        if let DeValue::Array(array) = self.held {
             Some(array.iter().map(|item| self.inside(item)).collect())
         } else {
             self.wrong_type(wanted);

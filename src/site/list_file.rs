@@ -1,0 +1,370 @@
+//! A list of targets: plain lines, or a table with the header `name,ra,dec`.
+//!
+//! On a plain line the name ends at two spaces or a tab, and what follows is the observer's note;
+//! `#` begins a comment. In a table, `ra` is sexagesimal hours or decimal degrees with a `d`, `dec`
+//! degrees, north positive; the proper motion in `pm-ra-mas` is that on the sky (cos(declination)
+//! included); `size` is minutes of arc unless it says otherwise, one length or length x width. A row
+//! without place is looked up by its name.
+
+use std::ops::Range;
+
+use crate::bounds::{Bound, EPOCH, MAGNITUDE, PROPER_MOTION, SIZE};
+use crate::catalog::list::{Entry, Written};
+use crate::catalog::{Catalogue, Unresolved, clean, given};
+use crate::sexagesimal::{self, TextFault, Unit};
+use crate::site::fault::{Fault, Faults, FileText};
+use crate::site::table::{self, Cell, Columns, Row};
+use crate::sky::{CataloguePlace, Equinox};
+
+const COLUMNS: Columns = Columns {
+    required: &["name", "ra", "dec"],
+    optional: &[
+        "equinox",
+        "epoch",
+        "pm-ra-mas",
+        "pm-dec-mas",
+        "magnitude",
+        "size",
+        "note",
+    ],
+};
+
+/// A list and the file it came from.
+#[derive(Clone, Debug, PartialEq)]
+pub struct ListFile {
+    /// The name of its file, without folder and ending.
+    pub id: String,
+    /// Its targets in order.
+    pub lines: Vec<ListLine>,
+    /// The file, untouched.
+    pub file: FileText,
+}
+
+/// One target of a list.
+#[derive(Clone, Debug, PartialEq)]
+pub struct ListLine {
+    /// What the line says, its name and note cleaned of control characters.
+    pub written: Written,
+    /// Where the name stands in the file.
+    pub name_at: Range<usize>,
+}
+
+impl ListFile {
+    /// Reads a list from the text of its file; `id` is the file's name without folder and ending.
+    pub fn read(id: &str, file: FileText) -> Result<Self, Faults> {
+        let mut faults = Vec::new();
+        let lines = if is_table(&file.text) {
+            table::read(&file.text, COLUMNS, &mut faults)
+                .iter()
+                .filter_map(|row| of_row(row, &mut faults))
+                .collect()
+        } else {
+            plain(&file.text)
+        };
+        if lines.is_empty() && faults.is_empty() {
+            faults.push(Fault::of_the_file(
+                "this list holds no target",
+                Some("write one name a line, as \"M 37\"".to_owned()),
+            ));
+        }
+        if faults.is_empty() {
+            Ok(Self {
+                id: id.to_owned(),
+                lines,
+                file,
+            })
+        } else {
+            Err(Faults::new(file, faults))
+        }
+    }
+
+    /// The targets of the list; a name no catalogue knows is a fault at its place.
+    #[must_use]
+    pub fn resolve(&self, catalogue: &Catalogue) -> Vec<Result<Entry, Fault>> {
+        self.lines
+            .iter()
+            .map(|line| {
+                catalogue
+                    .resolve_entry(&line.written)
+                    .map_err(|unresolved| unknown(line.name_at.clone(), &unresolved))
+            })
+            .collect()
+    }
+}
+
+/// A name that is no target, as a fault of the file it stands in.
+#[must_use]
+pub fn unknown(at: Range<usize>, unresolved: &Unresolved) -> Fault {
+    Fault::new(at, unresolved.to_string()).hint(unresolved.hint())
+}
+
+/// True if the first line that says anything is the header of a table.
+pub(super) fn is_table(text: &str) -> bool {
+    text.trim_start_matches('\u{feff}')
+        .lines()
+        .find(|line| !line.trim().is_empty() && !line.starts_with('#'))
+        .and_then(|line| {
+            line.split([',', ';', '\t'])
+                .next()
+                .filter(|first| first.len() < line.len())
+        })
+        .is_some_and(|first| first.trim().trim_matches('"').eq_ignore_ascii_case("name"))
+}
+
+fn plain(text: &str) -> Vec<ListLine> {
+    let mut lines = Vec::new();
+    let mut at = 0;
+    for line in text.split_inclusive('\n') {
+        let said = line.trim_start_matches(|c: char| c.is_whitespace() || c == '\u{feff}');
+        let start = at + line.len() - said.len();
+        at += line.len();
+        let ends = [said.find("  "), said.find('\t')];
+        let end = ends.into_iter().flatten().min().unwrap_or(said.len());
+        let (name, note) = said.split_at(end);
+        let (name, note) = match comment(name) {
+            Some(comment) => (name.get(..comment).unwrap_or(""), ""),
+            None => (name, note.trim()),
+        };
+        let note = if note.starts_with('#') { "" } else { note };
+        let written = Written {
+            name: clean(name),
+            note: clean(note),
+            ..Written::default()
+        };
+        if !written.name.is_empty() {
+            lines.push(ListLine {
+                written,
+                name_at: start..start + name.trim_end().len(),
+            });
+        }
+    }
+    lines
+}
+
+/// Where a comment begins: a `#` at the start of the line or after a space.
+fn comment(name: &str) -> Option<usize> {
+    name.match_indices('#').map(|(at, _)| at).find(|at| {
+        name.get(..*at)
+            .is_none_or(|before| !before.ends_with(|c: char| !c.is_whitespace()))
+    })
+}
+
+fn of_row(row: &Row, faults: &mut Vec<Fault>) -> Option<ListLine> {
+    let place = place(row, faults);
+    let magnitude = row
+        .cell("magnitude")
+        .and_then(|cell| number(cell, &MAGNITUDE, faults));
+    let size_arcmin = row
+        .cell("size")
+        .and_then(|cell| noted(cell, size(cell), faults));
+    let name = row.required("name", faults)?;
+    Some(ListLine {
+        written: Written {
+            name: clean(&name.text),
+            place,
+            magnitude,
+            size_arcmin,
+            note: row
+                .cell("note")
+                .map_or_else(String::new, |cell| clean(&cell.text)),
+        },
+        name_at: name.span.clone(),
+    })
+}
+
+fn place(row: &Row, faults: &mut Vec<Fault>) -> Option<CataloguePlace> {
+    let (ra, dec) = (row.cell("ra"), row.cell("dec"));
+    let one = match (ra, dec) {
+        (Some(ra), None) => Some((ra, "dec")),
+        (None, Some(dec)) => Some((dec, "ra")),
+        _ => None,
+    };
+    if let Some((there, missing)) = one {
+        faults.push(
+            Fault::new(
+                there.span.clone(),
+                format!("{missing} is empty beside this"),
+            )
+            .hint("give both, or neither to look the name up"),
+        );
+    }
+    let ra = ra.and_then(|cell| noted(cell, given::read_right_ascension(&cell.text), faults));
+    let dec = dec.and_then(|cell| noted(cell, given::read_declination(&cell.text), faults));
+    let equinox = row
+        .cell("equinox")
+        .and_then(|cell| noted(cell, given::read_equinox(&cell.text), faults))
+        .unwrap_or(Equinox::J2000);
+    let epoch = row.cell("epoch").and_then(|cell| epoch(cell, faults));
+    let mut motion = |column| {
+        row.cell(column)
+            .and_then(|cell| number(cell, &PROPER_MOTION, faults))
+            .unwrap_or(0.0)
+    };
+    let (pm_ra_mas, pm_dec_mas) = (motion("pm-ra-mas"), motion("pm-dec-mas"));
+    Some(CataloguePlace {
+        equinox,
+        epoch: epoch.unwrap_or_else(|| equinox.epoch()),
+        pm_ra_mas,
+        pm_dec_mas,
+        ..CataloguePlace::icrs(ra?, dec?)
+    })
+}
+
+/// What was read of a cell; its fault is noted.
+fn noted<T>(cell: &Cell, read: Result<T, TextFault>, faults: &mut Vec<Fault>) -> Option<T> {
+    read.map_err(|fault| faults.push(cell.fault(&fault))).ok()
+}
+
+/// A Julian year, with or without its `J`.
+fn epoch(cell: &Cell, faults: &mut Vec<Fault>) -> Option<f64> {
+    let year = cell.text.strip_prefix(['J', 'j']).unwrap_or(&cell.text);
+    number_of(cell, year, &EPOCH, faults)
+}
+
+fn number(cell: &Cell, bound: &Bound, faults: &mut Vec<Fault>) -> Option<f64> {
+    number_of(cell, &cell.text, bound, faults)
+}
+
+fn number_of(cell: &Cell, text: &str, bound: &Bound, faults: &mut Vec<Fault>) -> Option<f64> {
+    let message = match text.replace('−', "-").parse::<f64>() {
+        Ok(number) => match bound.check(number) {
+            Ok(number) => return Some(number),
+            Err(out) => out.to_string(),
+        },
+        Err(_) => format!("\"{}\" is not a number", cell.text),
+    };
+    let fault = Fault::new(cell.span.clone(), message);
+    faults.push(if bound.unit.is_empty() {
+        fault
+    } else {
+        fault.hint(format!("write a number of {}", bound.unit))
+    });
+    None
+}
+
+/// One length, or length x width, in minutes of arc.
+fn size(cell: &Cell) -> Result<(f64, f64), TextFault> {
+    let text = cell.text.as_str();
+    let cross = text.find(['x', 'X', '×']);
+    let sign = cross
+        .and_then(|at| text.get(at..))
+        .and_then(|rest| rest.chars().next());
+    let (length_end, width_start) = match (cross, sign) {
+        (Some(at), Some(sign)) => (at, at + sign.len_utf8()),
+        _ => (text.len(), 0),
+    };
+    let one = |from: usize, to: usize| length(text.get(from..to).unwrap_or(""), from);
+    Ok((one(0, length_end)?, one(width_start, text.len())?))
+}
+
+fn length(text: &str, from: usize) -> Result<f64, TextFault> {
+    const HINT: &str = "write minutes of arc, as 24, 24' or 24 x 12";
+    let fault = |at: Range<usize>, message: String| TextFault {
+        at: at.start + from..at.end + from,
+        message,
+        hint: HINT,
+    };
+    let whole = 0..text.len();
+    let read =
+        sexagesimal::read(text, Unit::Degrees).map_err(|wrong| fault(wrong.at, wrong.message))?;
+    if read.half.is_some() || (read.unit_was_named && read.unit == Unit::Hours) {
+        return Err(fault(whole, "a size is in minutes of arc".to_owned()));
+    }
+    let minutes = if read.unit_was_named {
+        read.signed().arcminutes()
+    } else {
+        // a bare number was taken for degrees
+        (read.signed() / 60.0).arcminutes()
+    };
+    SIZE.check(minutes)
+        .map_err(|out| fault(whole, out.to_string()))
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn read(text: &str) -> Result<ListFile, Faults> {
+        let file = FileText {
+            name: "list".to_owned(),
+            text: text.to_owned(),
+        };
+        ListFile::read("list", file)
+    }
+
+    #[test]
+    fn a_plain_line_is_a_name_and_a_note() {
+        let text = "# autumn\r\n\r\nM 37  low # power\r\n  gamma Cas\tbright\n47 Tuc # far south\nM 31  # wide\n05:52:18.3 +32:33:11@J2000\n";
+        let lines = read(text).unwrap().lines;
+        let said: Vec<_> = lines
+            .iter()
+            .map(|line| {
+                (
+                    line.written.name.as_str(),
+                    line.written.note.as_str(),
+                    &text[line.name_at.clone()],
+                )
+            })
+            .collect();
+        assert_eq!(
+            said,
+            [
+                ("M 37", "low # power", "M 37"),
+                ("gamma Cas", "bright", "gamma Cas"),
+                ("47 Tuc", "", "47 Tuc"),
+                ("M 31", "", "M 31"),
+                (
+                    "05:52:18.3 +32:33:11@J2000",
+                    "",
+                    "05:52:18.3 +32:33:11@J2000"
+                ),
+            ]
+        );
+    }
+
+    #[test]
+    fn a_table_gives_places_in_hours_or_marked_degrees() {
+        let text = "name,ra,dec,equinox,epoch,pm-ra-mas,size,magnitude\n\
+            One,05:52:18.3,+32:33:11,,,,24,5.6\n\
+            Two,88.07625d,32.5530556d,B1950,J1991.25,-12.5,1d x 30',\n\
+            M 37,,,,,,,\n";
+        let lines = read(text).unwrap().lines;
+        let place = |at: usize| lines[at].written.place.unwrap();
+        for at in [0, 1] {
+            assert!((place(at).right_ascension.degrees() - 88.076_25).abs() < 1e-9);
+            assert!((place(at).declination.degrees() - 32.553_055_6).abs() < 1e-7);
+        }
+        assert_eq!(
+            (place(0).equinox, place(1).equinox),
+            (Equinox::J2000, Equinox::B1950)
+        );
+        assert!(
+            (place(1).epoch - 1991.25).abs() < 1e-9 && (place(1).pm_ra_mas + 12.5).abs() < 1e-9
+        );
+        let (length, width) = lines[1].written.size_arcmin.unwrap();
+        assert!((length - 60.0).abs() < 1e-9 && (width - 30.0).abs() < 1e-9);
+        assert_eq!(
+            lines[0].written.size_arcmin.map(|size| size.0.round()),
+            Some(24.0)
+        );
+        assert!(lines[2].written.place.is_none());
+    }
+
+    #[test]
+    fn a_bare_decimal_right_ascension_is_not_guessed_at() {
+        let message = read("name,ra,dec\nOne,88.1,32.5\n")
+            .unwrap_err()
+            .to_string();
+        assert!(message.contains("hours or degrees"), "{message}");
+        assert!(message.contains("list:2:5\n"), "{message}");
+    }
+
+    #[test]
+    fn an_unknown_name_is_a_fault_at_its_place() {
+        let list = read("M 37\n  Xyzzy 9\n").unwrap();
+        let resolved = list.resolve(&Catalogue::builtin());
+        assert!(resolved[0].is_ok());
+        let fault = resolved[1].clone().unwrap_err();
+        assert_eq!(fault.span, Some(7..14));
+    }
+}

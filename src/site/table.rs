@@ -1,0 +1,360 @@
+//! A CSV table (RFC 4180) with a header, whose every cell knows where it stands in the text.
+//!
+//! The cells are parted by `csv-core`, which says how many bytes each one took. Beside the RFC,
+//! empty lines and lines that begin with `#` are passed over, space around a cell does not count,
+//! and a quote mark inside an unquoted cell is itself: seconds of arc are written with it.
+
+use std::ops::Range;
+
+use csv_core::{ReadFieldResult, Reader};
+
+use crate::sexagesimal::TextFault;
+use crate::site::document::did_you_mean;
+use crate::site::fault::Fault;
+
+/// One cell: its text without quotes and surrounding space, and its place.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct Cell {
+    /// The text.
+    pub text: String,
+    /// The bytes of the file it stands in.
+    pub span: Range<usize>,
+    /// True if the text stands in the file letter for letter.
+    verbatim: bool,
+}
+
+/// The columns a table may have.
+#[derive(Clone, Copy, Debug)]
+pub struct Columns {
+    /// Those it must have.
+    pub required: &'static [&'static str],
+    /// Those it may have.
+    pub optional: &'static [&'static str],
+}
+
+/// One row, its cells under their columns.
+#[derive(Clone, Debug)]
+pub struct Row {
+    cells: Vec<(&'static str, Cell)>,
+    /// The bytes of the file it stands in.
+    pub span: Range<usize>,
+}
+
+impl Cell {
+    /// The bytes of the file that hold a part of the text; the whole cell where quotes are doubled.
+    #[must_use]
+    pub fn part(&self, part: &Range<usize>) -> Range<usize> {
+        if self.verbatim {
+            let end = self.span.end;
+            (self.span.start + part.start).min(end)..(self.span.start + part.end).min(end)
+        } else {
+            self.span.clone()
+        }
+    }
+
+    /// A fault of the text as a fault of the file.
+    #[must_use]
+    pub fn fault(&self, fault: &TextFault) -> Fault {
+        Fault::new(self.part(&fault.at), fault.message.clone()).hint(fault.hint)
+    }
+}
+
+impl Row {
+    /// The cell of a column, if it has one with something in it.
+    #[must_use]
+    pub fn cell(&self, column: &str) -> Option<&Cell> {
+        self.cells
+            .iter()
+            .find(|(name, _)| *name == column)
+            .map(|(_, cell)| cell)
+            .filter(|cell| !cell.text.is_empty())
+    }
+
+    /// The cell of a column that has to have something in it; a fault is noted if it has not.
+    pub fn required(&self, column: &str, faults: &mut Vec<Fault>) -> Option<&Cell> {
+        let cell = self.cell(column);
+        // a column that is not there at all has been said at the header
+        let empty = self.cells.iter().find(|(name, _)| *name == column);
+        if let (None, Some((_, empty))) = (cell, empty) {
+            faults.push(Fault::new(empty.span.clone(), format!("{column} is empty")));
+        }
+        cell
+    }
+}
+
+/// Reads a table; its faults are noted, and the rows that could be read are given.
+pub fn read(text: &str, columns: Columns, faults: &mut Vec<Fault>) -> Vec<Row> {
+    let mut records = Records::new(text);
+    let Some(header) = records.next(faults) else {
+        faults.push(Fault::of_the_file(
+            "this table is empty",
+            Some(format!(
+                "begin with the header {}",
+                columns.required.join(",")
+            )),
+        ));
+        return Vec::new();
+    };
+    let names = header_names(&header, columns, faults);
+    let mut rows = Vec::new();
+    while let Some(cells) = records.next(faults) {
+        let (Some(first), Some(last)) = (cells.first(), cells.last()) else {
+            continue;
+        };
+        let span = first.span.start..last.span.end;
+        if cells.len() == names.len() {
+            let named = names.iter().zip(cells);
+            let cells = named.filter_map(|(name, cell)| name.map(|name| (name, cell)));
+            rows.push(Row {
+                cells: cells.collect(),
+                span,
+            });
+        } else {
+            faults.push(
+                Fault::new(
+                    span,
+                    format!(
+                        "this row has {} cells, the header {}",
+                        cells.len(),
+                        names.len()
+                    ),
+                )
+                .hint("a cell that holds a comma stands in quotes; an empty one keeps its comma"),
+            );
+        }
+    }
+    rows
+}
+
+/// The known name of each column; nothing for one that is unknown or doubled.
+fn header_names(
+    header: &[Cell],
+    columns: Columns,
+    faults: &mut Vec<Fault>,
+) -> Vec<Option<&'static str>> {
+    let known: Vec<&'static str> = [columns.required, columns.optional].concat();
+    let mut names = Vec::new();
+    for cell in header {
+        let name = known.iter().copied().find(|name| *name == cell.text);
+        let fault = if name.is_none() {
+            let parted = [';', '\t'].iter().any(|mark| cell.text.contains(*mark));
+            let hint = if parted {
+                "save the table with commas between the cells".to_owned()
+            } else {
+                did_you_mean(&cell.text, &known)
+            };
+            Some((format!("unknown column \"{}\"", cell.text), hint))
+        } else if names.contains(&name) {
+            let hint = "leave one of them out".to_owned();
+            Some((format!("the column {} stands here twice", cell.text), hint))
+        } else {
+            None
+        };
+        let fresh = fault.is_none();
+        faults
+            .extend(fault.map(|(message, hint)| Fault::new(cell.span.clone(), message).hint(hint)));
+        names.push(name.filter(|_| fresh));
+    }
+    let span = header.first().map_or(0, |cell| cell.span.start)
+        ..header.last().map_or(0, |cell| cell.span.end);
+    for column in columns.required {
+        if !names.contains(&Some(column)) {
+            faults.push(
+                Fault::new(span.clone(), format!("the column {column} is missing")).hint(format!(
+                    "a header has at least {}",
+                    columns.required.join(",")
+                )),
+            );
+        }
+    }
+    names
+}
+
+/// The records of a text, one after another.
+struct Records<'t> {
+    text: &'t str,
+    at: usize,
+    reader: Reader,
+    /// Room for the cells of the whole text.
+    room: Vec<u8>,
+}
+
+impl<'t> Records<'t> {
+    fn new(text: &'t str) -> Self {
+        let at = text.len() - text.trim_start_matches('\u{feff}').len();
+        Self {
+            text,
+            at,
+            reader: Reader::new(),
+            room: vec![0; text.len()],
+        }
+    }
+
+    fn rest(&self) -> &'t str {
+        self.text.get(self.at..).unwrap_or("")
+    }
+
+    /// The cells of the next record; none at the end.
+    fn next(&mut self, faults: &mut Vec<Fault>) -> Option<Vec<Cell>> {
+        while let Some(line) = self.rest().split_inclusive('\n').next() {
+            if !line.trim().is_empty() && !line.starts_with('#') {
+                break;
+            }
+            self.at += line.len();
+        }
+        if self.rest().is_empty() {
+            return None;
+        }
+        let mut cells = Vec::new();
+        loop {
+            let start = self.at;
+            let mut written = 0;
+            let record_end = loop {
+                let input = self.text.as_bytes().get(self.at..).unwrap_or(&[]);
+                let room = self.room.get_mut(written..).unwrap_or(&mut []);
+                let (result, read, wrote) = self.reader.read_field(input, room);
+                self.at += read;
+                written += wrote;
+                match result {
+                    ReadFieldResult::InputEmpty if read > 0 => {}
+                    ReadFieldResult::Field { record_end } => break record_end,
+                    // the room is as long as the text, so only the end is left
+                    _ => return Some(cells),
+                }
+            };
+            let raw = self.text.get(start..self.at).unwrap_or("");
+            let raw = if record_end {
+                raw.trim_end_matches(['\n', '\r'])
+            } else {
+                raw.strip_suffix(',').unwrap_or(raw)
+            };
+            let text = String::from_utf8_lossy(self.room.get(..written).unwrap_or(&[]));
+            cells.push(cell(start, raw, &text, faults));
+            if record_end {
+                return Some(cells);
+            }
+        }
+    }
+}
+
+/// A cell from its place, its raw letters and the text they stand for.
+fn cell(start: usize, raw: &str, text: &str, faults: &mut Vec<Fault>) -> Cell {
+    let end = start + raw.len();
+    let shown = text.trim();
+    if let Some(inside) = raw.strip_prefix('"') {
+        match closing_quote(inside) {
+            None => faults.push(
+                Fault::new(start..start + 1, "this quote is not closed")
+                    .hint("close it, or leave it out"),
+            ),
+            Some(closed) if closed + 1 < inside.trim_end().len() => faults.push(
+                Fault::new(
+                    start + closed + 2..end,
+                    "this stands after the closing quote",
+                )
+                .hint("a quote mark inside quotes is written twice"),
+            ),
+            Some(_) => {}
+        }
+    } else if raw.trim_start().starts_with('"') {
+        faults.push(
+            Fault::new(start..end, "a quoted cell begins right after the comma")
+                .hint("leave out the space before the quote"),
+        );
+    }
+    let inner = usize::from(raw.starts_with('"'));
+    let leading = text.len() - text.trim_start().len();
+    let from = inner + leading;
+    let verbatim = raw.get(from..from + shown.len()) == Some(shown);
+    Cell {
+        text: shown.to_owned(),
+        span: if verbatim {
+            start + from..start + from + shown.len()
+        } else {
+            start..end
+        },
+        verbatim,
+    }
+}
+
+/// Where the quote that closes a quoted cell stands in what follows the opening one.
+fn closing_quote(inside: &str) -> Option<usize> {
+    let mut quotes = inside.match_indices('"').map(|(at, _)| at).peekable();
+    while let Some(at) = quotes.next() {
+        if quotes.next_if_eq(&(at + 1)).is_none() {
+            return Some(at);
+        }
+    }
+    None
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    const COLUMNS: Columns = Columns {
+        required: &["star", "dec"],
+        optional: &["note"],
+    };
+
+    fn rows(text: &str) -> (Vec<Row>, Vec<String>) {
+        let mut faults = Vec::new();
+        let rows = read(text, COLUMNS, &mut faults);
+        let said = faults.into_iter().map(|fault| fault.message).collect();
+        (rows, said)
+    }
+
+    #[test]
+    fn every_cell_knows_where_it_stands() {
+        let text = "\u{feff}star,dec,note\r\n\r\n# a remark\r\nVega, 38 47 N ,\"low, \"\r\n\"Deneb\",45° 17' 30\",\"a \"\"b\"\"\"";
+        let (rows, said) = rows(text);
+        assert_eq!(said, Vec::<String>::new());
+        for (row, column, expected, raw) in [
+            (0, "star", "Vega", "Vega"),
+            (0, "dec", "38 47 N", "38 47 N"),
+            (0, "note", "low,", "low,"),
+            (1, "star", "Deneb", "Deneb"),
+            (1, "dec", "45° 17' 30\"", "45° 17' 30\""),
+            (1, "note", "a \"b\"", "\"a \"\"b\"\"\""),
+        ] {
+            let cell = rows[row].cell(column).unwrap();
+            assert_eq!(
+                (cell.text.as_str(), &text[cell.span.clone()]),
+                (expected, raw)
+            );
+        }
+        assert_eq!(&text[rows[0].cell("dec").unwrap().part(&(3..5))], "47");
+    }
+
+    #[test]
+    fn an_empty_last_cell_is_a_cell() {
+        let (rows, said) = rows("star,dec,note\nVega,38,");
+        assert_eq!((rows.len(), said.len()), (1, 0));
+        assert!(rows[0].cell("note").is_none());
+    }
+
+    #[test]
+    fn all_faults_come_at_once() {
+        let (_, said) = rows("star,decl,star\nVega,1\n\"open,2,3\n");
+        assert_eq!(
+            said,
+            [
+                "unknown column \"decl\"",
+                "the column star stands here twice",
+                "the column dec is missing",
+                "this row has 2 cells, the header 3",
+                "this quote is not closed",
+                "this row has 1 cells, the header 3",
+            ]
+        );
+        let (_, said) = rows("star,dec\n\"Vega\"x,1\n \"Deneb\",2\n");
+        assert_eq!(
+            said,
+            [
+                "this stands after the closing quote",
+                "a quoted cell begins right after the comma"
+            ]
+        );
+        assert_eq!(rows("").1, ["this table is empty"]);
+    }
+}
