@@ -70,25 +70,19 @@ impl FileText {
     /// Reads a file; one that is missing, too large or not UTF-8 is a fault.
     pub fn read(path: &Path) -> Result<Self, Faults> {
         let name = path.display().to_string();
-        let whole = |name: String, message: String, hint: Option<String>| {
-            let file = Self {
-                name,
-                text: String::new(),
-            };
-            Faults::new(file, vec![Fault::of_the_file(message, hint)])
-        };
-        let cannot = |error: std::io::Error| format!("this file cannot be read: {error}");
-        let details =
-            fs::metadata(path).map_err(|error| whole(name.clone(), cannot(error), None))?;
+        let whole = |message: String, hint| Faults::of_the_file(&name, message, hint);
+        let cannot =
+            |error: std::io::Error| whole(format!("this file cannot be read: {error}"), None);
+        let details = fs::metadata(path).map_err(cannot)?;
         if details.is_dir() {
             let hint = Some("name a file in it".to_owned());
-            return Err(whole(name, "this is a folder".to_owned(), hint));
+            return Err(whole("this is a folder".to_owned(), hint));
         }
         if details.len() > LARGEST_FILE_BYTES {
             let message = format!("this file is larger than {LARGEST_FILE_BYTES} bytes");
-            return Err(whole(name, message, None));
+            return Err(whole(message, None));
         }
-        let bytes = fs::read(path).map_err(|error| whole(name.clone(), cannot(error), None))?;
+        let bytes = fs::read(path).map_err(cannot)?;
         Self::from_bytes(name, bytes)
     }
 
@@ -201,7 +195,7 @@ impl Fault {
                     .path(name)
                     .annotation(caret),
             );
-        } else {
+        } else if !name.is_empty() {
             group = group.element(Origin::path(name));
         }
         if let Some(hint) = hint {
@@ -218,6 +212,16 @@ impl Faults {
         list.sort_by_key(|fault| fault.span.as_ref().map(|span| (span.start, span.end)));
         list.dedup();
         Self { file, list }
+    }
+
+    /// The one fault of a file as a whole, or of no file where the name is empty.
+    #[must_use]
+    pub fn of_the_file(name: &str, message: impl Into<String>, hint: Option<String>) -> Self {
+        let file = FileText {
+            name: name.to_owned(),
+            text: String::new(),
+        };
+        Self::new(file, vec![Fault::of_the_file(message, hint)])
     }
 
     /// The file.

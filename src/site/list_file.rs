@@ -10,11 +10,11 @@ use std::ops::Range;
 
 use crate::bounds::{Bound, EPOCH, MAGNITUDE, PROPER_MOTION, SIZE};
 use crate::catalog::list::{Entry, Written};
-use crate::catalog::{Catalogue, Unresolved, clean, given};
+use crate::catalog::{Catalogue, Kind, Origin, Target, Unresolved, clean, given};
 use crate::sexagesimal::{self, TextFault, Unit};
 use crate::site::fault::{Fault, Faults, FileText};
 use crate::site::table::{self, Cell, Columns, Row};
-use crate::sky::{CataloguePlace, Equinox};
+use crate::sky::{CataloguePlace, Equinox, Source};
 
 const COLUMNS: Columns = Columns {
     required: &["name", "ra", "dec"],
@@ -92,6 +92,43 @@ impl ListFile {
     }
 }
 
+impl ListFile {
+    /// The targets of a list that is a catalogue of the user's own: every line must have a place.
+    pub fn own_targets(&self) -> Result<Vec<Target>, Faults> {
+        let mut faults = Vec::new();
+        let targets = self.lines.iter().filter_map(|line| {
+            let written = &line.written;
+            let Some(place) = written.place else {
+                faults.push(
+                    Fault::new(
+                        line.name_at.clone(),
+                        "this target of a catalogue has no place",
+                    )
+                    .hint("write a table with the header name,ra,dec and fill in both"),
+                );
+                return None;
+            };
+            Some(Target {
+                name: written.name.clone(),
+                also: Vec::new(),
+                kind: Kind::Place,
+                source: Source::Catalogue(place),
+                magnitude: written.magnitude,
+                size_arcmin: written.size_arcmin,
+                constellation: None,
+                catalogue: Origin::List,
+                note: written.note.clone(),
+            })
+        });
+        let targets = targets.collect();
+        if faults.is_empty() {
+            Ok(targets)
+        } else {
+            Err(Faults::new(self.file.clone(), faults))
+        }
+    }
+}
+
 /// A name that is no target, as a fault of the file it stands in.
 #[must_use]
 pub fn unknown(at: Range<usize>, unresolved: &Unresolved) -> Fault {
@@ -99,7 +136,7 @@ pub fn unknown(at: Range<usize>, unresolved: &Unresolved) -> Fault {
 }
 
 /// True if the first line that says anything is the header of a table.
-pub(super) fn is_table(text: &str) -> bool {
+fn is_table(text: &str) -> bool {
     text.trim_start_matches('\u{feff}')
         .lines()
         .find(|line| !line.trim().is_empty() && !line.starts_with('#'))

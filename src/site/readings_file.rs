@@ -4,8 +4,11 @@
 //! vernier), `timed` (yes: the star was timed on a mark) and `note`. What the circles showed stays
 //! text here, since only the mount says how it is meant; each cell knows its place for that.
 
+use std::ops::Range;
+
 use crate::catalog::clean;
-use crate::metal::Side;
+use crate::metal::{Mount, Reading, Side, read_dec, read_hour};
+use crate::sexagesimal::{self, TextFault, Unit};
 use crate::site::document::did_you_mean;
 use crate::site::fault::{Fault, Faults, FileText};
 use crate::site::table::{self, Cell, Columns, Row};
@@ -42,6 +45,8 @@ pub struct RawReading {
     pub dec: Cell,
     /// The side of the pier the tube was on.
     pub side: Side,
+    /// Where the side stands in the file.
+    pub side_at: Range<usize>,
     /// What the opposite vernier of the hour circle showed.
     pub hour_b: Option<Cell>,
     /// What the opposite vernier of the declination circle showed.
@@ -50,6 +55,89 @@ pub struct RawReading {
     pub timed: bool,
     /// The observer's note, cleaned of control characters.
     pub note: String,
+}
+
+/// A reading as the circles of its mount are engraved.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct ReadOnMount {
+    /// What the hour circle showed.
+    pub hour: Reading,
+    /// What the declination circle showed.
+    pub dec: Reading,
+    /// What the opposite vernier of the hour circle showed.
+    pub hour_b: Option<Reading>,
+    /// What the opposite vernier of the declination circle showed.
+    pub dec_b: Option<Reading>,
+    /// The side of the pier, `Single` on a mount that has one.
+    pub side: Side,
+}
+
+impl RawReading {
+    /// The reading in the notation of a mount's circles, or all that is wrong with it there.
+    pub fn on_mount(&self, mount: &Mount) -> Result<ReadOnMount, Vec<Fault>> {
+        let mut faults = Vec::new();
+        let hour = |text: &str| read_hour(&mount.hour_circle, text);
+        let dec = |text: &str| read_dec(&mount.declination_circle, text);
+        let read = (
+            noted(Some(&self.hour), hour, &mut faults),
+            noted(Some(&self.dec), dec, &mut faults),
+        );
+        let hour_b = noted(self.hour_b.as_ref(), hour, &mut faults);
+        let dec_b = noted(self.dec_b.as_ref(), dec, &mut faults);
+        let side = match (mount.kind.has_two_sides(), self.side) {
+            (true, Side::Single) => Err("this mount has two sides: was the tube west or east?"),
+            (false, Side::TubeEast) => Err("this mount has one side only"),
+            (false, _) => Ok(Side::Single),
+            (true, side) => Ok(side),
+        };
+        let side = side
+            .map_err(|wrong| {
+                let hint = if mount.kind.has_two_sides() {
+                    "write tube-west or tube-east"
+                } else {
+                    "write single"
+                };
+                faults.push(Fault::new(self.side_at.clone(), wrong).hint(hint));
+            })
+            .ok();
+        match (read, side) {
+            ((Some(hour), Some(dec)), Some(side)) if faults.is_empty() => Ok(ReadOnMount {
+                hour,
+                dec,
+                hour_b,
+                dec_b,
+                side,
+            }),
+            _ => Err(faults),
+        }
+    }
+
+    /// What is wrong with the reading whatever the mount is.
+    #[must_use]
+    pub fn faults_on_any_mount(&self) -> Vec<Fault> {
+        let mut faults = Vec::new();
+        for (cell, unit) in [
+            (Some(&self.hour), Unit::Hours),
+            (self.hour_b.as_ref(), Unit::Hours),
+            (Some(&self.dec), Unit::Degrees),
+            (self.dec_b.as_ref(), Unit::Degrees),
+        ] {
+            noted(cell, |text| sexagesimal::read(text, unit), &mut faults);
+        }
+        faults
+    }
+}
+
+/// What was read of a cell, if there is one; its fault is noted.
+fn noted<T>(
+    cell: Option<&Cell>,
+    read: impl Fn(&str) -> Result<T, TextFault>,
+    faults: &mut Vec<Fault>,
+) -> Option<T> {
+    let cell = cell?;
+    read(&cell.text)
+        .map_err(|fault| faults.push(cell.fault(&fault)))
+        .ok()
 }
 
 impl ReadingsFile {
@@ -97,9 +185,8 @@ fn reading(number: usize, row: &Row, faults: &mut Vec<Fault>) -> Option<RawReadi
     let star = row.required("star", faults);
     let hour = row.required("hour", faults);
     let dec = row.required("dec", faults);
-    let side = row
-        .required("side", faults)
-        .and_then(|cell| side(cell, faults));
+    let side_cell = row.required("side", faults);
+    let side = side_cell.and_then(|cell| side(cell, faults));
     let timed = row.cell("timed").and_then(|cell| timed(cell, faults));
     Some(RawReading {
         row: number,
@@ -108,6 +195,7 @@ fn reading(number: usize, row: &Row, faults: &mut Vec<Fault>) -> Option<RawReadi
         hour: hour?.clone(),
         dec: dec?.clone(),
         side: side?,
+        side_at: side_cell?.span.clone(),
         hour_b: row.cell("hour-b").cloned(),
         dec_b: row.cell("dec-b").cloned(),
         timed: timed.unwrap_or(false),
@@ -160,7 +248,6 @@ fn timed(cell: &Cell, faults: &mut Vec<Fault>) -> Option<bool> {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::sexagesimal::TextFault;
 
     fn read(text: &str) -> Result<ReadingsFile, Faults> {
         ReadingsFile::read(FileText {
