@@ -73,7 +73,7 @@ impl Checker<'_> {
         let faults = match kind {
             FileKind::Site => SiteFile::read(&id, file).and_then(|site| self.mount_of(&site)),
             FileKind::Mount => MountFile::read(&id, file).map(|_| ()),
-            FileKind::List => ListFile::read(&id, file).and_then(|list| self.names_of(list)),
+            FileKind::List => ListFile::read(&id, file).and_then(|list| self.names_of(&list)),
             FileKind::Catalogue => {
                 ListFile::read(&id, file).and_then(|list| list.own_targets().map(|_| ()))
             }
@@ -98,7 +98,7 @@ impl Checker<'_> {
         })
     }
 
-    fn names_of(&self, list: ListFile) -> Result<(), Faults> {
+    fn names_of(&self, list: &ListFile) -> Result<(), Faults> {
         let faults = list
             .resolve(self.catalogue)
             .into_iter()

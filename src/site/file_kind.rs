@@ -45,11 +45,10 @@ impl FileKind {
         let (table, errors) = toml::de::DeTable::parse_recoverable(text);
         if is_toml || (errors.is_empty() && !table.get_ref().is_empty()) {
             let any = |keys: &[&str]| keys.iter().any(|key| table.get_ref().contains_key(*key));
-            if any(&["hour-circle", "declination-circle", "kind"]) {
-                Self::Mount
-            } else if !any(&["latitude", "longitude", "time-zone"])
-                && folder == Some(Shelf::Mounts.folder())
-            {
+            let of_a_mount = any(&["hour-circle", "declination-circle", "kind"]);
+            let of_a_site = any(&["latitude", "longitude", "time-zone"]);
+            let among_mounts = folder == Some(Shelf::Mounts.folder());
+            if of_a_mount || (among_mounts && !of_a_site) {
                 Self::Mount
             } else {
                 Self::Site
