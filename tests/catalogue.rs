@@ -4,6 +4,7 @@
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
 
 use std::collections::HashMap;
+use std::fs;
 use std::path::{Path, PathBuf};
 
 use nonius::catalog::constellation::CONSTELLATIONS;
@@ -148,6 +149,51 @@ fn every_name_of_a_messier_object_leads_to_that_object() {
 }
 
 #[test]
+fn every_name_of_the_ngc_and_ic_leads_to_that_object() {
+    let catalogue = Catalogue::builtin();
+    let mut messier = 0;
+    for row in rows("ngc.csv") {
+        let also = || row["also"].split(';').filter(|name| !name.is_empty());
+        let of_messier = also().find(|name| name.starts_with("M "));
+        let own = of_messier.unwrap_or(&row["name"]);
+        messier += usize::from(of_messier.is_some());
+        for name in std::iter::once(row["name"].as_str()).chain(also()) {
+            let target = catalogue.resolve(name).unwrap();
+            assert_eq!(target.name, own, "{name}");
+        }
+        if of_messier.is_none() {
+            let target = catalogue.resolve(own).unwrap();
+            assert_at(&target, &row);
+            assert_eq!(target.kind.words(), row["kind"], "{row:?}");
+            assert_eq!(target.constellation, constellation(&row["constellation"]));
+            assert_eq!(
+                target.size_arcmin.is_some(),
+                !row["major_arcmin"].is_empty()
+            );
+            assert_eq!(target.magnitude.is_some(), !row["magnitude"].is_empty());
+            assert_eq!(target.catalogue, Origin::Ngc);
+        }
+    }
+    assert!(
+        messier > 100,
+        "{messier} of Messier's objects have a number in the NGC"
+    );
+}
+
+#[test]
+fn the_tables_are_written_as_they_are_read() {
+    for file in ["stars.csv", "star-names.csv", "messier.csv", "ngc.csv"] {
+        let text = fs::read_to_string(folder().join(file)).unwrap();
+        let rows = text.lines().filter(|line| !line.starts_with('#'));
+        let columns = rows.clone().next().unwrap().split(',').count();
+        for row in rows {
+            assert!(!row.contains('"'), "{file}: {row}");
+            assert_eq!(row.split(',').count(), columns, "{file}: {row}");
+        }
+    }
+}
+
+#[test]
 fn every_body_of_the_solar_system_is_found_in_any_case() {
     let catalogue = Catalogue::builtin();
     for body in Body::ALL {
@@ -180,6 +226,13 @@ fn what_an_observer_writes_is_understood() {
         ("R Leo", "R Leonis"),
         ("Barnards star", "Barnard's Star"),
         ("the Moon", "Moon"),
+        ("NGC 20", "NGC 6"),
+        ("ngc0457", "NGC 457"),
+        ("ic 1396", "IC 1396"),
+        ("Rosette Nebula", "Rosette Nebula"),
+        ("Collinder 399", "Cr 399"),
+        ("coathanger", "Cr 399"),
+        ("Barnard 33", "B 33"),
         ("05:52:18.3 +32:33:11", "05:52:18.3 +32:33:11"),
     ] {
         let target = catalogue
@@ -262,5 +315,48 @@ fn a_search_finds_every_object_by_its_own_name_first() {
             Some(row["name"].as_str())
         );
         assert!(found.is_sorted_by(|a, b| a.score >= b.score));
+    }
+    let found = catalogue.search("owl clus", &Filter::default());
+    let owl = &found[0].target;
+    assert_eq!(
+        (owl.name.as_str(), owl.kind),
+        ("NGC 457", Kind::OpenCluster)
+    );
+}
+
+/// The name of a line of a list: what stands before two spaces, a tab or a `#`.
+fn listed_name(line: &str) -> &str {
+    let line = line.split('#').next().unwrap().trim_end();
+    line.split(['\t'])
+        .next()
+        .unwrap()
+        .split("  ")
+        .next()
+        .unwrap()
+        .trim()
+}
+
+#[test]
+fn every_name_of_the_built_in_lists_is_known() {
+    let catalogue = Catalogue::builtin();
+    let lists: Vec<PathBuf> = fs::read_dir(folder().join("lists"))
+        .unwrap()
+        .map(|entry| entry.unwrap().path())
+        .filter(|path| path.extension().is_some_and(|extension| extension == "txt"))
+        .collect();
+    assert!(!lists.is_empty());
+    for path in lists {
+        let text = fs::read_to_string(&path).unwrap();
+        let names: Vec<_> = text
+            .lines()
+            .map(listed_name)
+            .filter(|name| !name.is_empty())
+            .collect();
+        assert!(!names.is_empty(), "{}", path.display());
+        for name in names {
+            if let Err(wrong) = catalogue.resolve(name) {
+                panic!("{}: {wrong}", path.display());
+            }
+        }
     }
 }

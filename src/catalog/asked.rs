@@ -4,13 +4,15 @@
 //! "R Leonis". All of them are laid out once, and each catalogue name is then only compared.
 
 use crate::catalog::constellation::CONSTELLATIONS;
+use crate::catalog::deep_sky::Number;
 use crate::catalog::fold::{folded, is_same};
 use crate::catalog::stars::StarNames;
 use crate::catalog::{Constellation, Greek};
 
 /// Names of catalogues written out and as abbreviated, both folded (common practice, no source).
-const CATALOGUES: [(&str, &str); 6] = [
+const CATALOGUES: [(&str, &str); 7] = [
     ("messier", "m"),
+    ("barnard", "b"),
     ("collinder", "cr"),
     ("melotte", "mel"),
     ("struve", "stf"),
@@ -120,6 +122,22 @@ impl Asked {
         self.spellings
             .iter()
             .find_map(|spelling| spelling.strip_prefix("hip")?.parse().ok())
+    }
+
+    /// The number in the NGC or the IC, if it is one.
+    #[must_use]
+    pub fn number(&self) -> Option<Number> {
+        self.spellings.iter().find_map(|spelling| {
+            let ngc = spelling
+                .strip_prefix("ngc")
+                .and_then(|rest| rest.parse().ok());
+            let ic = || {
+                spelling
+                    .strip_prefix("ic")
+                    .and_then(|rest| rest.parse().ok())
+            };
+            ngc.map(Number::Ngc).or_else(|| ic().map(Number::Ic))
+        })
     }
 
     /// How well a designation asked for fits a star's.

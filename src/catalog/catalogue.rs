@@ -15,7 +15,8 @@ use crate::sky::{Body, CataloguePlace, Source, separation};
 #[derive(Clone, Debug)]
 pub struct Catalogue {
     pub(super) stars: Stars,
-    pub(super) deep_sky: [DeepSky; 1],
+    pub(super) messier: DeepSky,
+    pub(super) ngc: DeepSky,
     pub(super) own: Vec<Target>,
 }
 
@@ -89,15 +90,22 @@ impl Catalogue {
             include_str!("../../catalogs/stars.csv"),
             include_str!("../../catalogs/star-names.csv"),
             include_str!("../../catalogs/messier.csv"),
+            include_str!("../../catalogs/ngc.csv"),
         )
     }
 
-    /// From the texts of the tables of stars, of their names, and of the Messier objects.
+    /// From the texts of the tables of stars, of their names, of the Messier objects, and of the NGC.
     #[must_use]
-    pub fn new(stars: &'static str, names: &'static str, messier: &'static str) -> Self {
+    pub fn new(
+        stars: &'static str,
+        names: &'static str,
+        messier: &'static str,
+        ngc: &'static str,
+    ) -> Self {
         Self {
             stars: Stars::new(stars, names),
-            deep_sky: [DeepSky::new(Origin::Messier, messier)],
+            messier: DeepSky::new(Origin::Messier, messier),
+            ngc: DeepSky::new(Origin::Ngc, ngc),
             own: Vec::new(),
         }
     }
@@ -155,17 +163,28 @@ impl Catalogue {
         if let Some(body) = Body::ALL.into_iter().find(|body| asked.is(body.name())) {
             return Some(solar_system::target(body));
         }
-        let mut deep_sky = self.deep_sky.iter().flat_map(|table| table.all());
-        if let Some(object) = deep_sky.find(|object| object.names().any(|name| asked.is(name))) {
-            return object.target();
-        }
         if let Some(star) = asked.hip().and_then(|hip| self.stars.numbered(hip)) {
             return self.stars.target(star);
+        }
+        let of_name = |table: DeepSky| {
+            let mut objects = table.all().filter(|object| object.only_number().is_none());
+            objects.find(|object| object.names().any(|name| asked.is(name)))
+        };
+        if let Some(number) = asked.number()
+            && let Some(object) = of_name(self.messier).or_else(|| self.ngc.numbered(number))
+        {
+            return object.target();
         }
         let named = self.stars.named().find(|names| {
             names.proper().any(|name| asked.is(name)) || asked.fits(names) == Some(Fit::Whole)
         });
-        self.stars.target(self.star(&named?)?)
+        if let Some(star) = named.and_then(|names| self.star(&names)) {
+            return self.stars.target(star);
+        }
+        // by far the longest table last
+        of_name(self.messier)
+            .or_else(|| of_name(self.ngc))?
+            .target()
     }
 
     /// The star of a letter asked for without the number of its component.

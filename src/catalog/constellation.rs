@@ -122,14 +122,34 @@ pub static CONSTELLATIONS: [Constellation; 88] = [
     of("Vul", "Vulpecula", "Vulpeculae"),
 ];
 
+/// The abbreviations alone, close together in memory for the thousands of rows that name one.
+static ABBREVIATIONS: [[u8; 3]; 88] = {
+    let mut letters = [[0; 3]; 88];
+    let mut at = 0;
+    while at < letters.len() {
+        if let [a, b, c] = CONSTELLATIONS[at].abbreviation.as_bytes() {
+            letters[at] = [*a, *b, *c];
+        }
+        at += 1;
+    }
+    letters
+};
+
 impl Constellation {
     /// The constellation of this exact abbreviation, as data files write it.
     #[must_use]
     pub fn abbreviated(abbreviation: &str) -> Option<&'static Self> {
-        let at = CONSTELLATIONS
-            .binary_search_by(|entry| entry.abbreviation.cmp(abbreviation))
-            .ok()?;
-        CONSTELLATIONS.get(at)
+        CONSTELLATIONS.get(Self::position(abbreviation)?)
+    }
+
+    /// Where the constellation of this exact abbreviation stands among [`CONSTELLATIONS`].
+    #[must_use]
+    pub fn position(abbreviation: &str) -> Option<usize> {
+        let wanted: [u8; 3] = abbreviation.as_bytes().try_into().ok()?;
+        let number = |[a, b, c]: [u8; 3]| u32::from_be_bytes([0, a, b, c]);
+        ABBREVIATIONS
+            .binary_search_by_key(&number(wanted), |&letters| number(letters))
+            .ok()
     }
 
     /// The constellation a folded text spells whole: abbreviation, name or genitive.

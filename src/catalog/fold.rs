@@ -182,14 +182,8 @@ impl Words {
         }
     }
 
-    /// How many there are.
-    #[must_use]
-    pub fn len(&self) -> usize {
-        self.ends.len()
-    }
-
     /// The words in order; a number is without the zeros before it.
-    pub fn iter(&self) -> impl Iterator<Item = &str> {
+    pub fn iter(&self) -> impl Iterator<Item = &str> + Clone {
         let mut start = 0;
         self.ends.iter().map(move |&end| {
             let word = self.text.get(start..end).unwrap_or("");
@@ -245,7 +239,7 @@ mod tests {
         let words = Words::of("NGC0457, the Owl's (cluster)");
         let listed: Vec<_> = words.iter().collect();
         assert_eq!(listed, ["ngc", "457", "the", "owls", "cluster"]);
-        assert_eq!(Words::of(" -- ").len(), 0);
+        assert_eq!(Words::of(" -- ").iter().count(), 0);
     }
 
     proptest! {

@@ -36,6 +36,10 @@ kinds! {
     DoubleStar = "double star",
     /// A star that changes its brightness.
     VariableStar = "variable star",
+    /// A star that flared up once.
+    Nova = "nova",
+    /// Young stars loosely spread.
+    StellarAssociation = "stellar association",
     /// A loose cluster of stars.
     OpenCluster = "open cluster",
     /// A dense round cluster of stars.
@@ -60,8 +64,12 @@ kinds! {
     DarkNebula = "dark nebula",
     /// A galaxy.
     Galaxy = "galaxy",
+    /// Two galaxies close together.
+    GalaxyPair = "galaxy pair",
+    /// Three galaxies close together.
+    GalaxyTriplet = "galaxy triplet",
     /// Galaxies close together.
-    GalaxyGroup = "group of galaxies",
+    GalaxyGroup = "galaxy group",
     /// A planet of the Sun.
     Planet = "planet",
     /// The Moon.
@@ -106,7 +114,10 @@ impl Kind {
                     | Self::DarkNebula
                     | Self::ClusterWithNebula
             ),
-            Self::Galaxy => matches!(self, Self::Galaxy | Self::GalaxyGroup),
+            Self::Galaxy => matches!(
+                self,
+                Self::Galaxy | Self::GalaxyPair | Self::GalaxyTriplet | Self::GalaxyGroup
+            ),
             _ => self as u8 == asked as u8,
         }
     }
@@ -116,6 +127,10 @@ impl FromStr for Kind {
     type Err = UnknownKind;
 
     fn from_str(text: &str) -> Result<Self, UnknownKind> {
+        // the words of a catalogue's file, thousands of times over
+        if let Some(&kind) = Self::ALL.iter().find(|kind| kind.words() == text) {
+            return Ok(kind);
+        }
         let asked: String = folded(text).collect();
         Self::ALL
             .iter()

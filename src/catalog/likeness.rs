@@ -17,6 +17,9 @@ const FIRST_DIGITS: f64 = 0.6;
 const ONE_SLIP: f64 = 0.7;
 /// The shortest word in which a slip is looked for: shorter ones are too easily another.
 const SLIP_FROM_LETTERS: usize = 4;
+/// The shortest words that may tell of the thing without being of its name, right and with a slip.
+const BESIDE_FROM_LETTERS: usize = 3;
+const BESIDE_SLIP_FROM_LETTERS: usize = 5;
 /// For a word that is not of the name but tells of the thing.
 const BESIDE: f64 = 0.5;
 /// The share of the score that depends on how much of the name was typed.
@@ -25,17 +28,6 @@ const OF_THE_NAME: f64 = 0.1;
 /// What was typed.
 #[derive(Clone, Debug)]
 pub struct Typed(Vec<String>);
-
-/// A name to be held against it, filled again and again.
-#[derive(Clone, Debug, Default)]
-pub struct Name {
-    /// The words of the name.
-    pub words: Words,
-    /// Further spellings of its words, as the genitive of a constellation: they count as the name
-    /// but add nothing to its length.
-    pub spellings: Words,
-    taken: Vec<bool>,
-}
 
 impl Typed {
     /// The words of a text, Greek letters by their names, without an article.
@@ -72,62 +64,102 @@ impl Typed {
         self.0.is_empty()
     }
 
-    /// The words.
+    /// The digits typed after "HIP", if that is all.
     #[must_use]
-    pub fn words(&self) -> &[String] {
-        &self.0
+    pub fn hip_digits(&self) -> Option<&str> {
+        match self.0.as_slice() {
+            [word, number] if word == "hip" => Some(number),
+            _ => None,
+        }
     }
 
-    /// How like the name is; 0 if a word typed is nowhere in it, nor beside it.
-    pub fn likeness(&self, name: &mut Name, beside: &Words) -> f64 {
-        let mut sum = 0.0;
-        let mut of_name = 0;
-        name.taken.clear();
-        name.taken.resize(name.words.len(), false);
-        for typed in &self.0 {
-            let in_name = name
-                .words
-                .iter()
-                .enumerate()
-                .filter(|(at, _)| name.taken.get(*at) == Some(&false))
-                .map(|(at, word)| (word_likeness(typed, word), at))
-                .max_by(|a, b| a.0.total_cmp(&b.0))
-                .filter(|(likeness, _)| *likeness > 0.0);
-            let best = |words: &Words| {
-                words
-                    .iter()
-                    .map(|word| word_likeness(typed, word))
-                    .fold(0.0, f64::max)
-            };
-            let spelt = best(&name.spellings);
-            match in_name {
-                Some((likeness, at)) if likeness >= spelt => {
-                    if let Some(taken) = name.taken.get_mut(at) {
-                        *taken = true;
-                    }
-                    of_name += 1;
-                    sum += likeness;
-                }
-                _ if spelt > 0.0 => {
-                    of_name += 1;
-                    sum += spelt;
-                }
-                _ => {
-                    let beside = best(beside);
-                    if beside <= 0.0 {
-                        return 0.0;
-                    }
-                    sum += BESIDE * beside;
-                }
+    /// For every word typed, how like it is to the likest of these.
+    #[must_use]
+    pub fn each(&self, words: &Words) -> Vec<f64> {
+        self.0.iter().map(|typed| likest(typed, words)).collect()
+    }
+
+    /// The same for words that tell of a thing but are not its name: a letter or two, and a slip in
+    /// a short word, mean nothing there.
+    #[must_use]
+    pub fn beside(&self, words: &Words) -> Vec<f64> {
+        let strict = |typed: &String| {
+            let likeness = likest(typed, words);
+            let slip = likeness <= ONE_SLIP && typed.len() < BESIDE_SLIP_FROM_LETTERS;
+            if slip || typed.len() < BESIDE_FROM_LETTERS {
+                0.0
+            } else {
+                likeness
             }
-        }
+        };
+        self.0.iter().map(strict).collect()
+    }
+
+    /// True if no name such as "NGC 2099" can fit, whatever else it is; `best` says for every word
+    /// typed how like it can be to what is beside a name.
+    #[must_use]
+    pub fn need_a_name(&self, best: &[f64]) -> bool {
+        let number = |word: &str| word.starts_with(|c: char| c.is_ascii_digit());
+        let fits =
+            |word: &String| number(word) || "ngc".starts_with(word) || "ic".starts_with(word);
+        let mut words = self.0.iter().zip(best);
+        words.any(|(word, best)| *best <= 0.0 && !fits(word))
+    }
+
+    /// How like a name is; 0 if a word typed is nowhere in it, nor beside it.
+    ///
+    /// `words` are those of the name, folded. `last` says for every word typed how like it is to
+    /// the name's last word in any of its spellings, where that word (a constellation) is not among
+    /// `words`; `beside`, how like it is to what is said beside the name.
+    pub fn likeness<'w>(
+        &self,
+        words: impl Iterator<Item = &'w str> + Clone,
+        last: Option<&[f64]>,
+        beside: &[f64],
+    ) -> f64 {
         if self.0.is_empty() {
             return 0.0;
         }
-        let length = name.words.len().max(of_name).max(1) as f64;
-        let typed_share = f64::from(u32::try_from(of_name).unwrap_or(0)) / length;
-        sum / self.0.len() as f64 * (1.0 - OF_THE_NAME + OF_THE_NAME * typed_share)
+        let mut taken = 0_u64;
+        let mut sum = 0.0;
+        let mut of_name = 0_usize;
+        for (at, (typed, beside)) in self.0.iter().zip(beside).enumerate() {
+            let in_name = take_likest(typed, words.clone(), &mut taken);
+            let in_last = last.and_then(|last| last.get(at)).copied().unwrap_or(0.0);
+            let likeness = in_name.max(in_last);
+            if likeness > 0.0 {
+                of_name += 1;
+                sum += likeness;
+            } else if *beside > 0.0 {
+                sum += BESIDE * beside;
+            } else {
+                return 0.0;
+            }
+        }
+        let length = words.count() + usize::from(last.is_some());
+        let share = of_name as f64 / length.max(of_name).max(1) as f64;
+        sum / self.0.len() as f64 * (1.0 - OF_THE_NAME + OF_THE_NAME * share)
     }
+}
+
+/// How like a word typed is to the likest word not yet taken, which then is; a bit for each word,
+/// and words beyond the last bit are not looked at.
+fn take_likest<'w>(typed: &str, words: impl Iterator<Item = &'w str>, taken: &mut u64) -> f64 {
+    let mut best = (0.0, 0);
+    let bits = std::iter::successors(Some(1_u64), |bit| bit.checked_mul(2));
+    for (word, bit) in words.zip(bits) {
+        let likeness = word_likeness(typed, word);
+        if likeness > best.0 && *taken & bit == 0 {
+            best = (likeness, bit);
+        }
+    }
+    *taken |= best.1;
+    best.0
+}
+
+fn likest(typed: &str, words: &Words) -> f64 {
+    let likenesses = words.iter().map(|word| word_likeness(typed, word));
+    likenesses.fold(0.0, f64::max)
 }
 
 /// How like one word is to another, both folded.
@@ -175,9 +207,9 @@ mod tests {
     use super::*;
 
     fn likeness(typed: &str, words: &str, beside: &str) -> f64 {
-        let mut name = Name::default();
-        name.words.add(words);
-        Typed::new(typed).likeness(&mut name, &Words::of(beside))
+        let typed = Typed::new(typed);
+        let beside = typed.beside(&Words::of(beside));
+        typed.likeness(Words::of(words).iter(), None, &beside)
     }
 
     #[test]

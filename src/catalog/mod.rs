@@ -17,9 +17,11 @@ mod likeness;
 pub mod list;
 pub mod report;
 mod rows;
+mod scorer;
 pub mod search;
 mod solar_system;
 mod stars;
+mod surroundings;
 pub mod target;
 
 pub use catalogue::{Catalogue, Unresolved};

@@ -1,11 +1,13 @@
 //! The search through all catalogues: one engine for the command and for the screen.
 
+use std::cmp::Ordering;
+
 use crate::angle::Angle;
 use crate::catalog::catalogue::distance_deg;
 use crate::catalog::deep_sky::DeepSkyObject;
-use crate::catalog::fold::Words;
-use crate::catalog::likeness::{Name, Typed};
-use crate::catalog::stars::{Star, StarNames};
+use crate::catalog::likeness::Typed;
+use crate::catalog::scorer::Scorer;
+use crate::catalog::stars::Star;
 use crate::catalog::{Catalogue, Constellation, Kind, Target, solar_system};
 use crate::sky::{Body, CataloguePlace};
 
@@ -64,11 +66,11 @@ enum Entry<'a> {
     Star(Star),
 }
 
-/// The words of one entry, filled again and again.
-#[derive(Default)]
-struct Scratch {
-    name: Name,
-    beside: Words,
+/// An entry that fits.
+struct Hit<'a> {
+    entry: Entry<'a>,
+    score: f64,
+    magnitude: f64,
 }
 
 impl Catalogue {
@@ -81,29 +83,35 @@ impl Catalogue {
         let all = if words.is_empty() {
             self.everything()
         } else {
-            self.alike(&words)
+            self.alike(words)
         };
-        let mut hits: Vec<(Entry<'_>, f64, f64)> = all
+        let mut hits: Vec<Hit<'_>> = all
             .into_iter()
             .filter(|(entry, _)| filter.passes(entry))
-            .map(|(entry, score)| (entry, score, entry.magnitude().unwrap_or(f64::INFINITY)))
+            .map(|(entry, score)| Hit {
+                entry,
+                score,
+                magnitude: entry.magnitude().unwrap_or(f64::INFINITY),
+            })
             .collect();
-        hits.sort_by(|a, b| b.1.total_cmp(&a.1).then(a.2.total_cmp(&b.2)));
-        let found = hits.into_iter().filter_map(|(entry, score, _)| {
-            let target = self.target(entry)?;
-            Some(Found { target, score })
-        });
-        found.take(filter.limit).collect()
+        // of ten thousand galaxies only the first few need be in order
+        if filter.limit < hits.len() {
+            hits.select_nth_unstable_by(filter.limit, Hit::order);
+            hits.truncate(filter.limit);
+        }
+        hits.sort_by(Hit::order);
+        hits.into_iter()
+            .filter_map(|Hit { entry, score, .. }| {
+                let target = self.target(entry)?;
+                Some(Found { target, score })
+            })
+            .collect()
     }
 
     fn everything(&self) -> Vec<(Entry<'_>, f64)> {
         let own = self.own.iter().map(Entry::Own);
         let bodies = Body::ALL.into_iter().map(Entry::Body);
-        let deep_sky = self
-            .deep_sky
-            .iter()
-            .flat_map(|table| table.all())
-            .map(Entry::DeepSky);
+        let deep_sky = self.messier.all().chain(self.ngc.all()).map(Entry::DeepSky);
         let stars = self.stars.all().map(Entry::Star);
         own.chain(bodies)
             .chain(deep_sky)
@@ -113,35 +121,31 @@ impl Catalogue {
     }
 
     /// Everything with a likeness to the words above nothing.
-    fn alike(&self, typed: &Typed) -> Vec<(Entry<'_>, f64)> {
-        let mut scratch = Scratch::default();
+    fn alike(&self, typed: Typed) -> Vec<(Entry<'_>, f64)> {
+        let mut scorer = Scorer::new(typed);
         let mut alike = Vec::new();
         for own in &self.own {
-            scratch.set_beside(own.kind, own.constellation);
-            alike.push((Entry::Own(own), scratch.best(typed, own.names())));
+            alike.push((Entry::Own(own), scorer.own(own)));
         }
         for body in Body::ALL {
-            scratch.set_beside(solar_system::kind(body), None);
-            alike.push((Entry::Body(body), scratch.best(typed, [body.name()])));
+            alike.push((Entry::Body(body), scorer.body(body)));
         }
-        for object in self.deep_sky.iter().flat_map(|table| table.all()) {
-            scratch.set_beside(object.kind(), object.constellation());
-            alike.push((Entry::DeepSky(object), scratch.best(typed, object.names())));
+        for object in self.messier.all().chain(self.ngc.all()) {
+            let score = scorer.deep_sky(object);
+            if score > 0.0 {
+                alike.push((Entry::DeepSky(object), score));
+            }
         }
         for names in self.stars.named() {
-            let score = scratch.star(typed, &names);
+            let score = scorer.star(&names);
             if score > 0.0 {
                 alike.extend(self.star(&names).map(|star| (Entry::Star(star), score)));
             }
         }
-        if let [word, number] = typed.words()
-            && word == "hip"
-        {
-            scratch.beside.clear();
-            let begins = |star: &Star| star.hip_text().starts_with(number.as_str());
+        if let Some(number) = scorer.typed().hip_digits() {
+            let begins = |star: &Star| star.hip_text().starts_with(number);
             for star in self.stars.all().filter(begins) {
-                let score = scratch.likeness(typed, &["hip", star.hip_text()]);
-                alike.push((Entry::Star(star), score));
+                alike.push((Entry::Star(star), scorer.hip(star)));
             }
         }
         alike.retain(|(_, score)| *score > 0.0);
@@ -158,53 +162,12 @@ impl Catalogue {
     }
 }
 
-impl Scratch {
-    fn set_beside(&mut self, kind: Kind, constellation: Option<&Constellation>) {
-        self.beside.clear();
-        self.beside.add(kind.words());
-        for spelling in constellation.iter().flat_map(|c| c.spellings()) {
-            self.beside.add(spelling);
-        }
-    }
-
-    /// The likeness of the best of several names.
-    fn best<'n>(&mut self, typed: &Typed, names: impl IntoIterator<Item = &'n str>) -> f64 {
-        names
-            .into_iter()
-            .map(|name| self.likeness(typed, &[name]))
-            .fold(0.0, f64::max)
-    }
-
-    /// The likeness of one name written in parts.
-    fn likeness(&mut self, typed: &Typed, parts: &[&str]) -> f64 {
-        self.name.words.clear();
-        self.name.spellings.clear();
-        for part in parts {
-            self.name.words.add(part);
-        }
-        typed.likeness(&mut self.name, &self.beside)
-    }
-
-    /// The likeness of a star's best name.
-    fn star(&mut self, typed: &Typed, names: &StarNames) -> f64 {
-        let constellation = Constellation::abbreviated(names.constellation);
-        self.set_beside(Kind::Star, constellation);
-        let mut best = self.best(typed, names.proper());
-        for before in [names.bayer, names.flamsteed]
-            .into_iter()
-            .filter(|text| !text.is_empty())
-        {
-            self.name.words.clear();
-            self.name.spellings.clear();
-            self.name.words.add(before);
-            self.name.words.add(names.constellation);
-            if let Some(constellation) = constellation {
-                self.name.spellings.add(constellation.name);
-                self.name.spellings.add(constellation.genitive);
-            }
-            best = best.max(typed.likeness(&mut self.name, &self.beside));
-        }
-        best
+impl Hit<'_> {
+    /// The best first, among equals the brightest.
+    fn order(a: &Self, b: &Self) -> Ordering {
+        b.score
+            .total_cmp(&a.score)
+            .then(a.magnitude.total_cmp(&b.magnitude))
     }
 }
 
@@ -287,8 +250,12 @@ mod tests {
         M 57,planetary nebula,283.3963,33.0292,8.8,1.4,1.0,Lyr,NGC 6720;Ring Nebula\n\
         M 97,planetary nebula,168.6988,55.0190,9.9,3.4,3.3,UMa,NGC 3587;Owl Nebula\n";
 
+    const NGC: &str = "name,kind,ra_deg,dec_deg,magnitude,major_arcmin,minor_arcmin,constellation,also\n\
+        NGC 457,open cluster,19.8875,58.2908,6.4,20.0,,Cas,Owl Cluster\n\
+        NGC 2098,galaxy,80.0,-70.0,14.0,1.0,0.5,Dor,\n";
+
     fn catalogue() -> Catalogue {
-        Catalogue::new(STARS, NAMES, MESSIER)
+        Catalogue::new(STARS, NAMES, MESSIER, NGC)
     }
 
     fn names(typed: &str, filter: &Filter) -> Vec<String> {
@@ -304,6 +271,9 @@ mod tests {
     fn the_best_comes_first_whatever_way_it_is_typed() {
         for (typed, name) in [
             ("owl neb", "M 97"),
+            ("owl clus", "NGC 457"),
+            ("galaxy dor", "NGC 2098"),
+            ("ngc 2098", "NGC 2098"),
             ("nebula ring", "M 57"),
             ("m57", "M 57"),
             ("messier 57", "M 57"),

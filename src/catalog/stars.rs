@@ -112,13 +112,14 @@ impl Star {
     /// Hp.
     #[must_use]
     pub fn magnitude(self) -> Option<f64> {
-        self.row.field(6).parse().ok()
+        // the last but two: nearer from the end
+        self.row.field_from_end(2).parse().ok()
     }
 
     /// The constellation it stands in by the boundaries.
     #[must_use]
     pub fn constellation(self) -> Option<&'static Constellation> {
-        Constellation::abbreviated(self.row.field(8))
+        Constellation::abbreviated(self.row.field_from_end(0))
     }
 
     /// Its place in the ICRS at J2000.0, with its motion; radial velocity unknown, taken as zero.

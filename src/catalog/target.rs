@@ -33,6 +33,8 @@ pub enum Origin {
     Stars,
     /// The Messier objects.
     Messier,
+    /// The NGC and IC, and a few objects without such a number.
+    Ngc,
     /// Sun, Moon and planets.
     SolarSystem,
     /// A list of the observer's own, which gives the place too.
@@ -48,6 +50,7 @@ impl Origin {
         match self {
             Self::Stars => "stars",
             Self::Messier => "messier",
+            Self::Ngc => "ngc",
             Self::SolarSystem => "solar-system",
             Self::List => "list",
             Self::Given => "given",
