@@ -45,15 +45,18 @@ pub fn chance(covariance: &Matrix2<f64>, field: Angle) -> f64 {
     if !(radius > 0.0 && long.is_finite() && long >= 0.0) {
         return 0.0;
     }
-    if long <= 0.0 {
+    // everything in terms of the long sigma, so that no square of a tiny number is lost
+    let reach = radius / long.sqrt();
+    let squared = reach * reach;
+    if !squared.is_finite() {
         return 1.0;
     }
-    let squared = radius * radius;
-    let streak = ((short + squared) / (long + squared)).sqrt();
+    let narrow = short / long;
+    let streak = ((narrow + squared) / (1.0 + squared)).sqrt();
     // u is counted from the narrow axis
     let within = |u: f64| {
         let (sin, cos) = u.sin_cos();
-        -(-squared / (2.0 * (short * cos * cos + long * sin * sin))).exp_m1()
+        -(-squared / (2.0 * (narrow * cos * cos + sin * sin))).exp_m1()
     };
     let mut total = 0.0;
     let mut far = FRAC_PI_2;
@@ -123,8 +126,22 @@ mod tests {
     fn what_is_sure_is_in_any_field_and_nothing_is_in_no_field() {
         let field = Angle::from_degrees(1.0);
         assert!((chance(&Matrix2::zeros(), field) - 1.0).abs() < f64::EPSILON);
+        assert!((chance(&round(1e-200), field) - 1.0).abs() < f64::EPSILON);
         assert!(chance(&round(0.01), Angle::ZERO).abs() < f64::EPSILON);
         assert!(chance(&Matrix2::repeat(f64::NAN), field).abs() < f64::EPSILON);
+    }
+
+    #[test]
+    fn a_field_whose_square_is_lost_in_rounding_still_has_a_chance() {
+        // neither a chance of "not a number" nor a panic: both squares are below the least double
+        let streak = Matrix2::new(0.0, -1.3e-308, -1.3e-308, 0.0);
+        assert!(chance(&streak, Angle::from_degrees(1.1e-182)).abs() < PROMISED);
+        // a round distribution follows Rayleigh at any size
+        let found = chance(&round(1e-150), Angle::from_radians(2e-150));
+        assert!(
+            (found - (1.0 - (-0.5_f64).exp())).abs() < PROMISED,
+            "{found}"
+        );
     }
 
     proptest! {
