@@ -5,7 +5,7 @@
 
 use std::fmt;
 
-use crate::catalog::fold::is_same;
+use crate::catalog::fold::{folded, is_same};
 
 /// A constellation.
 #[derive(Debug, PartialEq, Eq)]
@@ -153,14 +153,19 @@ impl Constellation {
     }
 
     /// The constellation a folded text spells whole: abbreviation, name or genitive.
-    #[must_use]
-    pub fn spelt(folded_text: &str) -> Option<&'static Self> {
+    fn spelt(folded_text: &str) -> Option<&'static Self> {
         CONSTELLATIONS.iter().find(|entry| {
             entry
                 .spellings()
                 .iter()
                 .any(|spelling| is_same(spelling, folded_text))
         })
+    }
+
+    /// The constellation a text spells whole, whatever its case, gaps and accents.
+    #[must_use]
+    pub fn called(text: &str) -> Option<&'static Self> {
+        Self::spelt(&folded(text).collect::<String>())
     }
 
     /// Abbreviation, name, genitive.
@@ -207,7 +212,7 @@ mod tests {
     fn no_spelling_belongs_to_two() {
         for entry in &CONSTELLATIONS {
             for spelling in entry.spellings() {
-                let folded: String = crate::catalog::fold::folded(spelling).collect();
+                let folded: String = folded(spelling).collect();
                 assert_eq!(Constellation::spelt(&folded), Some(entry), "{spelling}");
             }
         }
