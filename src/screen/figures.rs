@@ -1,6 +1,6 @@
 //! Large figures, several rows tall, drawn from a small table of our own.
 //!
-//! Every figure is three strokes wide and five bars high in the table; a [`Cut`] says how thick the
+//! Every figure is three strokes wide and five bars high in the table; a cut says how thick the
 //! strokes and bars are and how far apart, so one table serves every size. Half blocks make a dot
 //! about as wide as it is high. The marks of hours, minutes and degrees stand small at the top, as
 //! in a printed ephemeris. Where block characters cannot be shown, `#` stands for them.

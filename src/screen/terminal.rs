@@ -11,13 +11,14 @@ use std::sync::atomic::{AtomicBool, Ordering};
 
 use crossterm::cursor::{Hide, Show};
 use crossterm::event::{DisableBracketedPaste, EnableBracketedPaste};
-use crossterm::execute;
 use crossterm::terminal::{
     EnterAlternateScreen, LeaveAlternateScreen, disable_raw_mode, enable_raw_mode,
 };
+use crossterm::{execute, queue};
 use ratatui::Frame;
 use ratatui::Terminal;
 use ratatui::backend::CrosstermBackend;
+use ratatui::layout::{Position, Rect};
 
 /// More than the largest frame of an ordinary terminal, so that it leaves in one write.
 const FRAME_BYTES: usize = 64 * 1024;
@@ -34,9 +35,10 @@ impl Hold {
     /// Takes the terminal over. Fails if there is none or it refuses.
     pub fn take() -> io::Result<Self> {
         give_back_on_panic();
-        take()?;
         let output = BufWriter::with_capacity(FRAME_BYTES, io::stdout());
-        match Terminal::new(CrosstermBackend::new(output)) {
+        let mut backend = CrosstermBackend::new(output);
+        take(&mut backend)?;
+        match Terminal::new(backend) {
             Ok(terminal) => Ok(Self { terminal }),
             Err(refused) => {
                 give_back();
@@ -70,8 +72,11 @@ impl Hold {
     pub fn retake(&mut self) -> io::Result<()> {
         // the shell may have set modes of its own meanwhile: they are what to give back later
         give_back_modes();
-        take()?;
-        self.terminal.clear()
+        take(self.terminal.backend_mut())?;
+        // everything anew; to clear would ask the terminal where its cursor is, and the answer would
+        // go to the thread that reads the keys
+        let size = self.terminal.size()?;
+        self.terminal.resize(Rect::from((Position::ORIGIN, size)))
     }
 }
 
@@ -81,15 +86,12 @@ impl Drop for Hold {
     }
 }
 
-fn take() -> io::Result<()> {
+/// What is asked of the terminal leaves with the next frame, so that no empty screen in the terminal's
+/// own colours is seen in the dark.
+fn take(output: &mut impl Write) -> io::Result<()> {
     enable_raw_mode()?;
     TAKEN.store(true, Ordering::SeqCst);
-    execute!(
-        io::stdout(),
-        EnterAlternateScreen,
-        EnableBracketedPaste,
-        Hide
-    )
+    queue!(output, EnterAlternateScreen, EnableBracketedPaste, Hide)
 }
 
 /// Gives the terminal back as it was found; does nothing if it is not ours.
