@@ -42,7 +42,7 @@ pub fn draw_matches(look: Look, buffer: &mut Buffer, area: Rect, panel: &Panel, 
             let also = target.also.first().map_or("", String::as_str);
             format!(
                 "{:<14} {:<18} {}",
-                shortened(&target.name, 14),
+                target.name,
                 shortened(also, 18),
                 description(target)
             )
