@@ -254,8 +254,9 @@ later letter of the constellation brighter by more than {LETTER_TOLERANCE}; and 
 ascension at equinox 1690. Of {len(remembered)} rows {len(rows)} are kept; their remembered places are off by {distances[len(distances) // 2]:.1f}' in the middle,
 {distances[-1]:.1f}' at most. {agreed} spellings agree with the packages.
 Columns: hip = Hipparcos number; constellation = IAU abbreviation; bayer = letter in English, with a component number
-after a space where it has one (a letter asked for without its number means the brightest of its rows); flamsteed =
-number, may be empty; names = separated by semicolons, may be empty."""
+after a space where it has one (a letter asked for without its number means the brightest of its rows if they stand
+within a quarter of a degree; else it is not settled); flamsteed = number, may be empty; names = separated by
+semicolons, may be empty."""
     out = io.StringIO()
     for text in head.splitlines():
         out.write(f"# {text}\n")

@@ -79,7 +79,7 @@ impl DeepSky {
     #[must_use]
     pub fn numbered(self, wanted: Number) -> Option<DeepSkyObject> {
         let Self { origin, table } = self;
-        let row = table.halved(|row| Some(wanted.order(row.field(0))))?;
+        let row = table.halved(|row| Some(wanted.order(row.first())))?;
         Some(DeepSkyObject { origin, row })
     }
 }
@@ -88,7 +88,7 @@ impl DeepSkyObject {
     /// The name it goes by.
     #[must_use]
     pub fn name(self) -> &'static str {
-        self.row.field(0)
+        self.row.first()
     }
 
     /// The name it goes by and all others.

@@ -100,7 +100,7 @@ impl Star {
     /// Hipparcos number as written.
     #[must_use]
     pub fn hip_text(self) -> &'static str {
-        self.row.field(0)
+        self.row.first()
     }
 
     /// Hipparcos number.
