@@ -36,6 +36,15 @@ pub fn did_you_mean(word: &str, known: &[&str]) -> String {
     )
 }
 
+/// What to say of a number outside its range.
+pub fn out_of_range_hint(bound: &Bound) -> String {
+    if bound.unit.is_empty() {
+        "look at the number again".to_owned()
+    } else {
+        format!("look at the number again, and at its unit: {}", bound.unit)
+    }
+}
+
 /// The faults found so far.
 #[derive(Default)]
 pub struct Noted {
@@ -63,7 +72,7 @@ pub fn read<T>(
         // the first fault of a line, the others are mostly its echo
         if noted.broken.len() < MOST_SYNTAX_FAULTS && !noted.broken.contains(&line) {
             noted.broken.push(line);
-            noted.note(Fault::new(span, error.message()));
+            noted.note(Fault::new(span, error.message()).hint(syntax_hint(error.message())));
         }
     }
     let mut top = Section::new("", 0..0, table.get_ref(), &noted);
@@ -81,6 +90,15 @@ pub fn read<T>(
     match value {
         Some(value) if faults.is_empty() => Ok(value),
         _ => Err(faults),
+    }
+}
+
+/// What to do about a text that is no TOML.
+fn syntax_hint(message: &str) -> &'static str {
+    if message.contains("duplicate") {
+        "leave one of them out"
+    } else {
+        "text stands in quotes, a comment after #; nonius new writes a file to start from"
     }
 }
 
@@ -138,12 +156,12 @@ impl<'d> Section<'d> {
     pub fn required(&mut self, key: &'static str) -> Option<Value<'d>> {
         let value = self.optional(key);
         if value.is_none() {
-            self.missing(key);
+            self.missing(key, format!("add a line {key} = ..."));
         }
         value
     }
 
-    fn missing(&self, key: &str) {
+    fn missing(&self, key: &str, hint: String) {
         // a line that could not be read may have held it
         if self.noted.broken.is_empty() {
             let message = if self.name.is_empty() {
@@ -151,7 +169,7 @@ impl<'d> Section<'d> {
             } else {
                 format!("{key} is missing in {}", self.name)
             };
-            self.fault(message, None);
+            self.fault(message, hint);
         }
     }
 
@@ -176,7 +194,7 @@ impl<'d> Section<'d> {
     ) -> Option<T> {
         if self.table.get(key).is_none() {
             self.asked.push(key);
-            self.missing(key);
+            self.missing(key, format!("add a table headed [{key}]"));
             return None;
         }
         self.table(key, reader)
@@ -207,12 +225,9 @@ impl<'d> Section<'d> {
     }
 
     /// Notes a fault of this table as a whole.
-    pub fn fault(&self, message: impl Into<String>, hint: Option<String>) {
-        self.noted.note(Fault {
-            span: Some(self.span.clone()),
-            message: message.into(),
-            hint,
-        });
+    pub fn fault(&self, message: impl Into<String>, hint: impl Into<String>) {
+        self.noted
+            .note(Fault::new(self.span.clone(), message).hint(hint));
     }
 
     /// Notes every key that nobody asked for.
@@ -292,16 +307,19 @@ impl<'d> Value<'d> {
     fn wrong_type(&self, wanted: &str) {
         let found = match self.held {
             DeValue::String(_) => "text",
+            DeValue::Integer(_) | DeValue::Float(_) if self.plain_number().is_none() => {
+                "no ordinary number"
+            }
             DeValue::Integer(_) | DeValue::Float(_) => "a number",
             DeValue::Boolean(_) => "true or false",
             DeValue::Datetime(_) => "a date or time",
             DeValue::Array(_) => "a list",
             DeValue::Table(_) => "a table",
         };
-        self.noted.note(Fault::new(
-            self.span(),
-            format!("{} is {found}; it takes {wanted}", self.key),
-        ));
+        self.fault(
+            format!("{} is {found}", self.key),
+            format!("write {wanted}"),
+        );
     }
 
     /// A text, which has something in it and no control characters.
@@ -363,7 +381,7 @@ impl<'d> Value<'d> {
         match bound.check(number) {
             Ok(number) => Some(number),
             Err(out) => {
-                self.noted.note(Fault::new(self.span(), out.to_string()));
+                self.fault(out.to_string(), out_of_range_hint(bound));
                 None
             }
         }
@@ -388,7 +406,7 @@ impl<'d> Value<'d> {
         let found = words.iter().find(|(word, _)| *word == text.as_ref());
         if found.is_none() {
             self.fault(
-                otherwise(text).unwrap_or_else(|| format!("\"{text}\" is no {}", self.key)),
+                otherwise(text).unwrap_or_else(|| format!("{} cannot be \"{text}\"", self.key)),
                 format!("write one of {}", known.join(", ")),
             );
         }
@@ -443,7 +461,7 @@ mod tests {
             faults("latitude = 95\nclear = \"yes\"\nlatitud = 1\n[well]\nwater = true\n"),
             [
                 "1:12 latitude 95 is outside -90 to 90 degrees",
-                "2:9 clear is text; it takes true or false",
+                "2:9 clear is text",
                 "4:1 depth is missing in well",
                 "5:1 unknown key water in well",
                 "3:1 unknown key latitud",

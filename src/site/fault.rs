@@ -13,6 +13,9 @@ use annotate_snippets::{AnnotationKind, Group, Level, Origin, Renderer, Snippet}
 /// More than any list or table of readings written by hand; a larger file is refused unread.
 const LARGEST_FILE_BYTES: u64 = 4 * 1024 * 1024;
 
+/// More faults of one file than this are counted, not shown: nobody reads on.
+const MOST_SHOWN: usize = 200;
+
 /// The text of one file, kept as it was read.
 #[derive(Clone, Debug, PartialEq, Eq)]
 pub struct FileText {
@@ -71,8 +74,12 @@ impl FileText {
     pub fn read(path: &Path) -> Result<Self, Faults> {
         let name = path.display().to_string();
         let whole = |message: String, hint| Faults::of_the_file(&name, message, hint);
-        let cannot =
-            |error: std::io::Error| whole(format!("this file cannot be read: {error}"), None);
+        let cannot = |error: std::io::Error| {
+            whole(
+                format!("this file cannot be read: {error}"),
+                Some("look at its name and folder, and whether you may read it".to_owned()),
+            )
+        };
         let details = fs::metadata(path).map_err(cannot)?;
         if details.is_dir() {
             let hint = Some("name a file in it".to_owned());
@@ -80,7 +87,8 @@ impl FileText {
         }
         if details.len() > LARGEST_FILE_BYTES {
             let message = format!("this file is larger than {LARGEST_FILE_BYTES} bytes");
-            return Err(whole(message, None));
+            let hint = Some("a list or table written for a night is far smaller".to_owned());
+            return Err(whole(message, hint));
         }
         let bytes = fs::read(path).map_err(cannot)?;
         Self::from_bytes(name, bytes)
@@ -188,7 +196,10 @@ impl Fault {
                 // something for the caret to stand under
                 shown.push(' ');
             }
-            let caret = AnnotationKind::Primary.span(start..end.max(start + 1));
+            // at least one whole character
+            let first = shown.get(start..).and_then(|rest| rest.chars().next());
+            let least = start + first.map_or(0, char::len_utf8);
+            let caret = AnnotationKind::Primary.span(start..end.max(least));
             group = group.element(
                 Snippet::source(shown)
                     .line_start(line_number)
@@ -243,11 +254,21 @@ impl Faults {
             Ink::Plain => Renderer::plain(),
             Ink::Coloured => Renderer::styled().hyperlink(false),
         };
-        let shown: Vec<String> = self
+        let mut shown: Vec<String> = self
             .list
             .iter()
+            .take(MOST_SHOWN)
             .map(|fault| fault.render(&self.file, &renderer))
             .collect();
+        if let Some(more) = self
+            .list
+            .len()
+            .checked_sub(MOST_SHOWN)
+            .filter(|more| *more > 0)
+        {
+            let name = without_control_characters(&self.file.name);
+            shown.push(format!("and {more} more in {name}"));
+        }
         shown.join("\n\n")
     }
 }
@@ -321,6 +342,18 @@ mod tests {
         let faults = FileText::from_bytes("list.txt".to_owned(), b"M 37\nM\xff 38".to_vec());
         let message = faults.unwrap_err().to_string();
         assert!(message.contains("list.txt:2:2\n"), "{message}");
+    }
+
+    #[test]
+    fn a_file_that_is_wrong_throughout_does_not_flood_the_terminal() {
+        let file = FileText {
+            name: "x".to_owned(),
+            text: "a".repeat(300),
+        };
+        let list = (0..300).map(|at| Fault::new(at..at + 1, "wrong")).collect();
+        let message = Faults::new(file, list).to_string();
+        assert_eq!(message.matches("error: wrong").count(), MOST_SHOWN);
+        assert!(message.ends_with("and 100 more in x"), "{message}");
     }
 
     #[test]

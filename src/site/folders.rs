@@ -182,10 +182,11 @@ impl Folders {
             Err(error) if error.kind() == std::io::ErrorKind::NotFound => return Ok(Vec::new()),
             Err(error) => {
                 let message = format!("this folder cannot be read: {error}");
+                let hint = Some("look whether you may read it".to_owned());
                 return Err(Faults::of_the_file(
                     &folder.display().to_string(),
                     message,
-                    None,
+                    hint,
                 ));
             }
         };

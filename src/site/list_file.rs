@@ -12,6 +12,7 @@ use crate::bounds::{Bound, EPOCH, MAGNITUDE, PROPER_MOTION, SIZE};
 use crate::catalog::list::{Entry, Written};
 use crate::catalog::{Catalogue, Kind, Origin, Target, Unresolved, clean, given};
 use crate::sexagesimal::{self, TextFault, Unit};
+use crate::site::document::out_of_range_hint;
 use crate::site::fault::{Fault, Faults, FileText};
 use crate::site::table::{self, Cell, Columns, Row};
 use crate::sky::{CataloguePlace, Equinox, Source};
@@ -62,10 +63,10 @@ impl ListFile {
             plain(&file.text)
         };
         if lines.is_empty() && faults.is_empty() {
-            faults.push(Fault::of_the_file(
-                "this list holds no target",
-                Some("write one name a line, as \"M 37\"".to_owned()),
-            ));
+            faults.push(
+                Fault::new(0..0, "this list holds no target")
+                    .hint("write one name a line, as \"M 37\""),
+            );
         }
         if faults.is_empty() {
             Ok(Self {
@@ -211,19 +212,16 @@ fn of_row(row: &Row, faults: &mut Vec<Fault>) -> Option<ListLine> {
 
 fn place(row: &Row, faults: &mut Vec<Fault>) -> Option<CataloguePlace> {
     let (ra, dec) = (row.cell("ra"), row.cell("dec"));
-    let one = match (ra, dec) {
-        (Some(ra), None) => Some((ra, "dec")),
-        (None, Some(dec)) => Some((dec, "ra")),
-        _ => None,
-    };
-    if let Some((there, missing)) = one {
-        faults.push(
-            Fault::new(
-                there.span.clone(),
-                format!("{missing} is empty beside this"),
-            )
-            .hint("give both, or neither to look the name up"),
-        );
+    for (there, missing) in [(ra, "dec"), (dec, "ra")] {
+        if let (Some(there), Some(_)) = (there, row.empty_cell(missing)) {
+            faults.push(
+                Fault::new(
+                    there.span.clone(),
+                    format!("{missing} is empty beside this"),
+                )
+                .hint("give both, or neither to look the name up"),
+            );
+        }
     }
     let ra = ra.and_then(|cell| noted(cell, given::read_right_ascension(&cell.text), faults));
     let dec = dec.and_then(|cell| noted(cell, given::read_declination(&cell.text), faults));
@@ -263,19 +261,17 @@ fn number(cell: &Cell, bound: &Bound, faults: &mut Vec<Fault>) -> Option<f64> {
 }
 
 fn number_of(cell: &Cell, text: &str, bound: &Bound, faults: &mut Vec<Fault>) -> Option<f64> {
-    let message = match text.replace('−', "-").parse::<f64>() {
+    let (message, hint) = match text.replace('−', "-").parse::<f64>() {
         Ok(number) => match bound.check(number) {
             Ok(number) => return Some(number),
-            Err(out) => out.to_string(),
+            Err(out) => (out.to_string(), out_of_range_hint(bound)),
         },
-        Err(_) => format!("\"{}\" is not a number", cell.text),
+        Err(_) => (
+            format!("\"{}\" is not a number", cell.text),
+            format!("write a number, the {}", bound.name),
+        ),
     };
-    let fault = Fault::new(cell.span.clone(), message);
-    faults.push(if bound.unit.is_empty() {
-        fault
-    } else {
-        fault.hint(format!("write a number of {}", bound.unit))
-    });
+    faults.push(Fault::new(cell.span.clone(), message).hint(hint));
     None
 }
 

@@ -190,10 +190,7 @@ fn dome(section: &mut Section<'_>, tube: Option<Tube>) -> Option<Dome> {
     if axes_m + tube.map_or(0.0, |tube| tube.offset_m) >= dome.radius_m {
         section.fault(
             "the tube does not fit into the dome",
-            Some(
-                "lengths are in metres; the crossing of the axes is measured from the sphere's centre"
-                    .to_owned(),
-            ),
+            "lengths are in metres; the crossing of the axes is measured from the sphere's centre",
         );
     }
     Some(dome)

@@ -151,7 +151,10 @@ impl ReadingsFile {
             .filter_map(|(before, row)| reading(before + 1, row, &mut faults))
             .collect();
         if rows.is_empty() && faults.is_empty() {
-            faults.push(Fault::of_the_file("this table holds no reading", None));
+            faults.push(
+                Fault::new(0..0, "this table holds no reading")
+                    .hint("write one row for each star read"),
+            );
         }
         if faults.is_empty() {
             Ok(Self { readings, file })

@@ -70,15 +70,24 @@ impl Row {
             .filter(|cell| !cell.text.is_empty())
     }
 
+    /// The cell of a column, if there is nothing in it.
+    #[must_use]
+    pub fn empty_cell(&self, column: &str) -> Option<&Cell> {
+        let cell = self.cells.iter().find(|(name, _)| *name == column);
+        cell.map(|(_, cell)| cell)
+            .filter(|cell| cell.text.is_empty())
+    }
+
     /// The cell of a column that has to have something in it; a fault is noted if it has not.
     pub fn required(&self, column: &str, faults: &mut Vec<Fault>) -> Option<&Cell> {
-        let cell = self.cell(column);
         // a column that is not there at all has been said at the header
-        let empty = self.cells.iter().find(|(name, _)| *name == column);
-        if let (None, Some((_, empty))) = (cell, empty) {
-            faults.push(Fault::new(empty.span.clone(), format!("{column} is empty")));
+        if let Some(empty) = self.empty_cell(column) {
+            faults.push(
+                Fault::new(empty.span.clone(), format!("{column} is empty"))
+                    .hint("fill it in, or leave out the row"),
+            );
         }
-        cell
+        self.cell(column)
     }
 }
 
@@ -86,13 +95,10 @@ impl Row {
 pub fn read(text: &str, columns: Columns, faults: &mut Vec<Fault>) -> Vec<Row> {
     let mut records = Records::new(text);
     let Some(header) = records.next(faults) else {
-        faults.push(Fault::of_the_file(
-            "this table is empty",
-            Some(format!(
-                "begin with the header {}",
-                columns.required.join(",")
-            )),
-        ));
+        faults.push(Fault::new(0..0, "this table is empty").hint(format!(
+            "begin with the header {}",
+            columns.required.join(",")
+        )));
         return Vec::new();
     };
     let names = header_names(&header, columns, faults);
@@ -154,6 +160,10 @@ fn header_names(
         faults
             .extend(fault.map(|(message, hint)| Fault::new(cell.span.clone(), message).hint(hint)));
         names.push(name.filter(|_| fresh));
+    }
+    if header.len() == 1 && names == [None] {
+        // cells parted in another way: that the columns are missing is an echo
+        return names;
     }
     let span = header.first().map_or(0, |cell| cell.span.start)
         ..header.last().map_or(0, |cell| cell.span.end);
