@@ -119,11 +119,18 @@ impl Catalogue {
 
     /// The target of a name, or of coordinates, forgiving of case, gaps and usual spellings.
     pub fn resolve(&self, text: &str) -> Result<Target, Unresolved> {
+        self.named(text)?.ok_or_else(|| self.unknown(text))
+    }
+
+    /// The same for one whose being unknown is nothing to explain: no search for names like it.
+    pub(super) fn named(&self, text: &str) -> Result<Option<Target>, Unresolved> {
         if given::looks_like(text) {
-            return given::read(text).map_err(|fault| Unresolved::Coordinates {
-                text: text.to_owned(),
-                fault,
-            });
+            return given::read(text)
+                .map(Some)
+                .map_err(|fault| Unresolved::Coordinates {
+                    text: text.to_owned(),
+                    fault,
+                });
         }
         let asked = Asked::new(text);
         if asked.is_empty() {
@@ -132,11 +139,10 @@ impl Catalogue {
                 nearest: Vec::new(),
             });
         }
-        if let Some(found) = self.exact(&asked) {
-            return Ok(found);
+        match self.exact(&asked) {
+            None => self.by_letter(&asked, text),
+            found => Ok(found),
         }
-        self.by_letter(&asked, text)?
-            .ok_or_else(|| self.unknown(text))
     }
 
     fn unknown(&self, text: &str) -> Unresolved {

@@ -47,13 +47,16 @@ impl Catalogue {
     pub fn resolve_entry(&self, written: &Written) -> Result<Entry, Unresolved> {
         let name = clean(&written.name);
         let note = clean(&written.note);
-        let known = self.resolve(&name);
-        let mut target = match (written.place, known) {
-            (None, known) => known?,
-            (Some(place), known) => Target {
+        let mut target = match written.place {
+            None => self.resolve(&name)?,
+            Some(place) => Target {
                 source: Source::Catalogue(place),
                 catalogue: Origin::List,
-                ..known.unwrap_or_else(|_| nameless(place))
+                ..self
+                    .named(&name)
+                    .ok()
+                    .flatten()
+                    .unwrap_or_else(|| nameless(place))
             },
         };
         if written.place.is_some() {
