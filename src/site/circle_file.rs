@@ -9,7 +9,8 @@ use crate::metal::{
     DeclinationCircle, DeclinationNumbering, HourCircle, HourNumbering, Increases, Ring,
 };
 use crate::sexagesimal::Unit;
-use crate::site::document::{Section, Value};
+use crate::site::document::Section;
+use crate::site::value::Value;
 use crate::site::written_angle;
 
 /// Rounding allowed in the number of divisions on a scale.

@@ -8,42 +8,12 @@ use std::ops::Range;
 
 use toml::de::{DeTable, DeValue};
 
-use crate::bounds::Bound;
-use crate::site::fault::{Fault, FileText, without_control_characters};
+use crate::site::fault::{Fault, FileText};
+use crate::site::likely::did_you_mean;
+use crate::site::value::Value;
 
 /// More syntax faults than this are the echo of the first ones.
 const MOST_SYNTAX_FAULTS: usize = 20;
-
-/// Below this likeness (0 to 1, Jaro-Winkler) a suggestion would puzzle rather than help.
-const MUCH_ALIKE: f64 = 0.75;
-
-/// The known word most like another, if any is much alike.
-pub fn nearest<'w>(word: &str, known: impl IntoIterator<Item = &'w str>) -> Option<&'w str> {
-    let word = word.to_lowercase();
-    known
-        .into_iter()
-        .map(|other| (strsim::jaro_winkler(&other.to_lowercase(), &word), other))
-        .filter(|(likeness, _)| *likeness > MUCH_ALIKE)
-        .max_by(|a, b| a.0.total_cmp(&b.0))
-        .map(|(_, other)| other)
-}
-
-/// What to say after an unknown word: the nearest known one, else all of them.
-pub fn did_you_mean(word: &str, known: &[&str]) -> String {
-    nearest(word, known.iter().copied()).map_or_else(
-        || format!("known are {}", known.join(", ")),
-        |nearest| format!("did you mean {nearest}?"),
-    )
-}
-
-/// What to say of a number outside its range.
-pub fn out_of_range_hint(bound: &Bound) -> String {
-    if bound.unit.is_empty() {
-        "look at the number again".to_owned()
-    } else {
-        format!("look at the number again, and at its unit: {}", bound.unit)
-    }
-}
 
 /// The faults found so far.
 #[derive(Default)]
@@ -54,7 +24,7 @@ pub struct Noted {
 }
 
 impl Noted {
-    fn note(&self, fault: Fault) {
+    pub(super) fn note(&self, fault: Fault) {
         self.list.borrow_mut().push(fault);
     }
 }
@@ -112,16 +82,6 @@ pub struct Section<'d> {
     noted: &'d Noted,
 }
 
-/// One value of the file, with its key.
-#[derive(Clone, Copy)]
-pub struct Value<'d> {
-    key: &'static str,
-    start: usize,
-    end: usize,
-    held: &'d DeValue<'d>,
-    noted: &'d Noted,
-}
-
 impl<'d> Section<'d> {
     fn new(
         name: &'static str,
@@ -135,6 +95,16 @@ impl<'d> Section<'d> {
             table,
             asked: Vec::new(),
             noted,
+        }
+    }
+
+    /// The table a value is; a value that is none is a fault.
+    fn of(value: &Value<'d>) -> Option<Self> {
+        if let DeValue::Table(table) = value.held {
+            Some(Self::new(value.key, value.span(), table, value.noted))
+        } else {
+            value.wrong_type(&format!("a table, headed [{}]", value.key));
+            None
         }
     }
 
@@ -179,7 +149,8 @@ impl<'d> Section<'d> {
         key: &'static str,
         reader: impl FnOnce(&mut Section<'d>) -> Option<T>,
     ) -> Option<T> {
-        self.optional(key)?.section().and_then(|mut section| {
+        let value = self.optional(key)?;
+        Self::of(&value).and_then(|mut section| {
             let value = reader(&mut section);
             section.finish();
             value
@@ -216,7 +187,7 @@ impl<'d> Section<'d> {
         let mut read = Vec::new();
         for item in array {
             let value = value.inside(item);
-            if let Some(mut section) = value.section() {
+            if let Some(mut section) = Self::of(&value) {
                 read.extend(reader(&mut section));
                 section.finish();
             }
@@ -245,181 +216,6 @@ impl<'d> Section<'d> {
                         .hint(did_you_mean(name, &self.asked)),
                 );
             }
-        }
-    }
-}
-
-impl<'d> Value<'d> {
-    /// Where it stands.
-    pub const fn span(&self) -> Range<usize> {
-        self.start..self.end
-    }
-
-    /// Its key.
-    pub const fn key(&self) -> &'static str {
-        self.key
-    }
-
-    fn inside(&self, item: &'d toml::Spanned<DeValue<'d>>) -> Self {
-        let span = item.span();
-        Self {
-            start: span.start,
-            end: span.end,
-            held: item.get_ref(),
-            ..*self
-        }
-    }
-
-    fn section(&self) -> Option<Section<'d>> {
-        if let DeValue::Table(table) = self.held {
-            Some(Section::new(self.key, self.span(), table, self.noted))
-        } else {
-            self.wrong_type(&format!("a table, headed [{}]", self.key));
-            None
-        }
-    }
-
-    /// Notes a fault of this value.
-    pub fn fault(&self, message: impl Into<String>, hint: impl Into<String>) {
-        self.noted.note(Fault::new(self.span(), message).hint(hint));
-    }
-
-    /// Notes a fault of a part of this value's text, where the text stands in the file as it is.
-    pub fn fault_at(
-        &self,
-        part: &Range<usize>,
-        message: impl Into<String>,
-        hint: impl Into<String>,
-    ) {
-        let written = self.end.saturating_sub(self.start);
-        let text = self.held.as_str().map_or(0, str::len);
-        // one quote on each side and nothing escaped: the text stands there letter for letter
-        let span = if written == text + 2 {
-            let start = (self.start + 1 + part.start).min(self.end);
-            let end = (self.start + 1 + part.end).min(self.end);
-            start..end
-        } else {
-            self.span()
-        };
-        self.noted.note(Fault::new(span, message).hint(hint));
-    }
-
-    fn wrong_type(&self, wanted: &str) {
-        let found = match self.held {
-            DeValue::String(_) => "text",
-            DeValue::Integer(_) | DeValue::Float(_) if self.plain_number().is_none() => {
-                "no ordinary number"
-            }
-            DeValue::Integer(_) | DeValue::Float(_) => "a number",
-            DeValue::Boolean(_) => "true or false",
-            DeValue::Datetime(_) => "a date or time",
-            DeValue::Array(_) => "a list",
-            DeValue::Table(_) => "a table",
-        };
-        self.fault(
-            format!("{} is {found}", self.key),
-            format!("write {wanted}"),
-        );
-    }
-
-    /// A text, which has something in it and no control characters.
-    pub fn text(&self, wanted: &str) -> Option<&'d str> {
-        let DeValue::String(text) = self.held else {
-            self.wrong_type(wanted);
-            return None;
-        };
-        if text.trim().is_empty() {
-            self.fault(format!("{} is empty", self.key), format!("write {wanted}"));
-            return None;
-        }
-        if without_control_characters(text) != text.as_ref() {
-            self.fault(
-                format!("{} holds characters that cannot be shown", self.key),
-                "write it with letters, digits and spaces",
-            );
-            return None;
-        }
-        Some(text)
-    }
-
-    /// True or false.
-    pub fn flag(&self) -> Option<bool> {
-        if let DeValue::Boolean(flag) = self.held {
-            Some(*flag)
-        } else {
-            self.wrong_type("true or false");
-            None
-        }
-    }
-
-    /// A number, without looking at its range.
-    pub fn plain_number(&self) -> Option<f64> {
-        let number = match self.held {
-            DeValue::Integer(integer) if integer.radix() == 10 => integer.as_str().parse().ok(),
-            DeValue::Float(float) => float.as_str().parse().ok(),
-            _ => None,
-        };
-        number.filter(|number: &f64| number.is_finite())
-    }
-
-    /// A number within a range.
-    pub fn number(&self, bound: &Bound) -> Option<f64> {
-        let Some(number) = self.plain_number() else {
-            let unit = if bound.unit.is_empty() {
-                String::new()
-            } else {
-                format!(" of {}", bound.unit)
-            };
-            self.wrong_type(&format!("a number{unit}"));
-            return None;
-        };
-        self.within(bound, number)
-    }
-
-    /// A number already read, if it is within its range.
-    pub fn within(&self, bound: &Bound, number: f64) -> Option<f64> {
-        match bound.check(number) {
-            Ok(number) => Some(number),
-            Err(out) => {
-                self.fault(out.to_string(), out_of_range_hint(bound));
-                None
-            }
-        }
-    }
-
-    /// One of the words of a table.
-    pub fn word<T: Copy>(&self, words: &[(&str, T)]) -> Option<T> {
-        self.word_or(words, |_| None)
-    }
-
-    /// One of the words of a table; `otherwise` may know what is wrong with another word.
-    pub fn word_or<T: Copy>(
-        &self,
-        words: &[(&str, T)],
-        otherwise: impl Fn(&str) -> Option<String>,
-    ) -> Option<T> {
-        let known: Vec<&str> = words.iter().map(|(word, _)| *word).collect();
-        let DeValue::String(text) = self.held else {
-            self.wrong_type(&format!("one of the words {}", known.join(", ")));
-            return None;
-        };
-        let found = words.iter().find(|(word, _)| *word == text.as_ref());
-        if found.is_none() {
-            self.fault(
-                otherwise(text).unwrap_or_else(|| format!("{} cannot be \"{text}\"", self.key)),
-                format!("write one of {}", known.join(", ")),
-            );
-        }
-        found.map(|(_, value)| *value)
-    }
-
-    /// The items of a list.
-    pub fn items(&self, wanted: &str) -> Option<Vec<Self>> {
-        if let DeValue::Array(array) = self.held {
-            Some(array.iter().map(|item| self.inside(item)).collect())
-        } else {
-            self.wrong_type(wanted);
-            None
         }
     }
 }
@@ -474,18 +270,5 @@ mod tests {
         assert_eq!(faults("latitude = = 5\nclear = 1\n").len(), 2);
         assert_eq!(faults("latitude = 5\nlatitude = 6\n").len(), 1);
         assert_eq!(faults("latitude = nan\n").len(), 1);
-    }
-
-    #[test]
-    fn a_slip_of_the_hand_brings_the_nearest_word() {
-        assert_eq!(
-            nearest("elevaton-m", ["name", "elevation-m"]),
-            Some("elevation-m")
-        );
-        assert_eq!(
-            nearest("elevation_m", ["name", "elevation-m"]),
-            Some("elevation-m")
-        );
-        assert_eq!(nearest("xyz", ["name", "elevation-m"]), None);
     }
 }

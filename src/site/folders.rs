@@ -11,8 +11,8 @@ use etcetera::BaseStrategy;
 
 use crate::catalog::Target;
 use crate::site::builtin;
-use crate::site::document::nearest;
 use crate::site::fault::{Fault, Faults, FileText};
+use crate::site::likely::nearest;
 use crate::site::list_file::ListFile;
 use crate::site::mount_file::MountFile;
 use crate::site::readings_file::ReadingsFile;

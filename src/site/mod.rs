@@ -22,12 +22,15 @@ mod document;
 pub mod fault;
 pub mod file_kind;
 pub mod folders;
+mod likely;
 pub mod list_file;
+mod list_row;
 pub mod mount_file;
 pub mod new;
 pub mod readings_file;
 pub mod site_file;
 pub mod table;
+mod value;
 mod written_angle;
 
 pub use check::{Checked, Checker};

@@ -9,8 +9,9 @@ use crate::bounds::{
 use crate::metal::{Dome, ExpectedErrors, HourAngleSpan, Kind, Limits, Mount, Optic, Ring, Tube};
 use crate::sexagesimal::Unit;
 use crate::site::circle_file;
-use crate::site::document::{self, Section, Value};
+use crate::site::document::{self, Section};
 use crate::site::fault::{Faults, FileText};
+use crate::site::value::Value;
 use crate::site::written_angle;
 
 const KINDS: [(&str, Kind); 4] = [

@@ -9,8 +9,8 @@ use std::ops::Range;
 use crate::catalog::clean;
 use crate::metal::{Mount, Reading, Side, read_dec, read_hour};
 use crate::sexagesimal::{self, TextFault, Unit};
-use crate::site::document::did_you_mean;
 use crate::site::fault::{Fault, Faults, FileText};
+use crate::site::likely::did_you_mean;
 use crate::site::table::{self, Cell, Columns, Row};
 use crate::time::Utc;
 

@@ -10,8 +10,9 @@ use crate::bounds::{
     AZIMUTH, DUT1, ELEVATION, LATITUDE, LONGITUDE, MASK_ALTITUDE, PRESSURE, TEMPERATURE,
 };
 use crate::sexagesimal::Half;
-use crate::site::document::{self, Section, Value};
+use crate::site::document::{self, Section};
 use crate::site::fault::{Faults, FileText};
+use crate::site::value::Value;
 use crate::site::written_angle;
 use crate::sky::{Air, HorizonMask, Observer};
 use crate::time::{CivilZone, Dut1};

@@ -9,8 +9,8 @@ use std::ops::Range;
 use csv_core::{ReadFieldResult, Reader};
 
 use crate::sexagesimal::TextFault;
-use crate::site::document::did_you_mean;
 use crate::site::fault::Fault;
+use crate::site::likely::did_you_mean;
 
 /// One cell: its text without quotes and surrounding space, and its place.
 #[derive(Clone, Debug, PartialEq, Eq)]

@@ -3,7 +3,7 @@
 use crate::angle::Angle;
 use crate::bounds::Bound;
 use crate::sexagesimal::{self, Half, Unit, Written};
-use crate::site::document::Value;
+use crate::site::value::Value;
 
 /// What a person would write for an angle in a unit.
 const fn example(unit: Unit) -> &'static str {
