@@ -1,3 +1,4 @@
 //! The commands, one file each.
 
 pub mod find;
+pub mod log;

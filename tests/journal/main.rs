@@ -2,6 +2,7 @@
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
 
 mod hurt;
+mod log;
 mod sample;
 mod session;
 mod undo;
