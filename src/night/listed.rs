@@ -116,6 +116,7 @@ fn origin(name: Option<&str>) -> Origin {
     let known = [
         Origin::Stars,
         Origin::Messier,
+        Origin::Ngc,
         Origin::SolarSystem,
         Origin::Given,
     ];
@@ -201,7 +202,13 @@ mod tests {
     #[test]
     fn a_target_comes_back_from_the_journal_as_it_was() {
         let catalogue = Catalogue::builtin();
-        for name in ["M 37", "Vega", "Moon", "05:52:18.3 +32:33:11 @J2026.9"] {
+        for name in [
+            "M 37",
+            "Vega",
+            "NGC 457",
+            "Moon",
+            "05:52:18.3 +32:33:11 @J2026.9",
+        ] {
             let target = catalogue.resolve(name).unwrap();
             let listed = ListedTarget::from(&target);
             let text = serde_json::to_string(&listed).unwrap();

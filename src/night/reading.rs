@@ -5,7 +5,8 @@
 
 use serde::{Deserialize, Serialize};
 
-use crate::angle::AxisAngle;
+use crate::angle::{Angle, AxisAngle, Declination, HourAngle};
+use crate::estimate::Sight;
 use crate::metal::{Axes, Side};
 
 /// The two shown axis angles.
@@ -86,6 +87,25 @@ impl StarReading {
             _ => None,
         }
     }
+
+    /// What it tells the estimate: with everything the circles can mean by it, so that what was
+    /// ambiguous then is settled by all the stars together.
+    #[must_use]
+    pub fn sight(&self) -> Sight {
+        let axes = |degrees: &[f64]| {
+            let degrees = degrees.iter().copied();
+            degrees.map(AxisAngle::from_degrees).collect()
+        };
+        Sight {
+            hour_angle: HourAngle::from_degrees(self.hour_angle_deg),
+            declination: Declination::from_degrees(self.declination_deg),
+            side: self.side,
+            hour: axes(&self.hour_candidates_deg),
+            dec: axes(&self.dec_candidates_deg),
+            sigma_hour: Angle::from_degrees(self.hour_sigma_deg),
+            sigma_dec: Angle::from_degrees(self.dec_sigma_deg),
+        }
+    }
 }
 
 impl From<Axes> for ShownAxes {
@@ -109,4 +129,60 @@ impl From<ShownAxes> for Axes {
 /// A reading is used unless it says otherwise.
 const fn used() -> bool {
     true
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// Degrees to radians and back, in degrees.
+    const ROUNDING_DEG: f64 = 1e-12;
+
+    fn unsigned() -> StarReading {
+        StarReading {
+            star: "Vega".to_owned(),
+            hour_angle_deg: 61.5,
+            declination_deg: 38.8,
+            sidereal_deg: 301.25,
+            side: Side::TubeEast,
+            hour: "4h 06m W".to_owned(),
+            dec: "38 45".to_owned(),
+            hour_candidates_deg: vec![61.5],
+            dec_candidates_deg: vec![38.75, -38.75, 141.25, -141.25],
+            taken_as: None,
+            hour_sigma_deg: 0.25,
+            dec_sigma_deg: 0.15,
+            driven: false,
+            timed: false,
+            off_arcmin: None,
+            used: true,
+        }
+    }
+
+    #[test]
+    fn the_estimate_is_given_all_that_a_reading_can_mean() {
+        let sight = unsigned().sight();
+        assert_eq!((sight.hour.len(), sight.dec.len()), (1, 4));
+        assert!((sight.dec[2].degrees() - 141.25).abs() < ROUNDING_DEG);
+        assert!((sight.hour_angle.degrees() - 61.5).abs() < ROUNDING_DEG);
+        assert!((sight.sigma_dec.degrees() - 0.15).abs() < ROUNDING_DEG);
+        assert_eq!(sight.side, Side::TubeEast);
+    }
+
+    #[test]
+    fn where_the_tube_was_is_not_guessed_from_an_ambiguous_reading() {
+        assert_eq!(unsigned().shown(), None);
+        let (hour_deg, dec_deg) = (61.5, 141.25);
+        let taken_as = Some(ShownAxes { hour_deg, dec_deg });
+        let taken = StarReading {
+            taken_as,
+            ..unsigned()
+        };
+        assert_eq!(taken.shown(), taken_as);
+        let plain = StarReading {
+            dec_candidates_deg: vec![dec_deg],
+            ..unsigned()
+        };
+        assert_eq!(plain.shown(), taken_as);
+    }
 }

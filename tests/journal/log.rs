@@ -89,7 +89,7 @@ fn csv_has_a_header_and_a_row_an_entry() {
     let rows: Vec<_> = reader.records().map(Result::unwrap).collect();
     let stands = every_kind().len() - 2;
     assert_eq!(rows.len(), stands);
-    assert_eq!(&rows[4][8], "three bright onesin a row");
+    assert_eq!(&rows[4][8], "three bright ones in a row");
 }
 
 #[test]

@@ -7,6 +7,7 @@
 use serde::{Deserialize, Serialize};
 use serde_json::Value;
 
+use crate::catalog;
 use crate::night::event::{Event, Stamped};
 use crate::time::Utc;
 
@@ -94,12 +95,10 @@ pub(super) fn read(bytes: &[u8]) -> Option<Line> {
     })
 }
 
-/// Takes control characters out of every text, so that none ever reaches a terminal.
+/// Cleans every text, so that no control character ever reaches a terminal.
 fn clean(value: &mut Value) {
     match value {
-        Value::String(text) if text.chars().any(char::is_control) => {
-            text.retain(|c| !c.is_control());
-        }
+        Value::String(text) => *text = catalog::clean(text),
         Value::Array(values) => values.iter_mut().for_each(clean),
         Value::Object(members) => members.values_mut().for_each(clean),
         _ => {}
@@ -139,7 +138,7 @@ mod tests {
         assert_eq!(line.matches("{\"n\":").count(), 1);
         assert_eq!(
             stamped.event,
-            note("{\"n\":1,\"crc\":\"00000000\"}[31m"),
+            note("{\"n\":1,\"crc\":\"00000000\"} [31m"),
             "control characters are gone"
         );
         assert_eq!(read(line.trim_end().as_bytes()), Some(Line::Event(stamped)));
