@@ -1,8 +1,7 @@
 //! What is known of the mount as the night stands: the estimate from every star in use.
 
-use crate::angle::{Angle, AxisAngle, Declination, HourAngle};
 use crate::estimate::{Estimate, Fit, Sight, fit};
-use crate::night::{NightReading, StarReading, State};
+use crate::night::{NightReading, State};
 use crate::screen::observatory::Observatory;
 use crate::time::Utc;
 
@@ -29,7 +28,7 @@ impl Known {
             &[]
         };
         let mut sights = earlier.to_vec();
-        sights.extend(state.readings_in_use().map(|read| sight(&read.reading)));
+        sights.extend(state.readings_in_use().map(|read| read.reading.sight()));
         let last: Option<&NightReading> = state.readings_in_use().last();
         let fit = fit(observatory.observer.latitude, &observatory.prior, &sights);
         Self {
@@ -41,26 +40,5 @@ impl Known {
                 None
             }),
         }
-    }
-}
-
-/// A recorded reading as the estimate takes it: with everything the circles can mean by it, so that
-/// what was ambiguous then is settled by all the stars together.
-fn sight(reading: &StarReading) -> Sight {
-    let axes = |degrees: &[f64]| {
-        degrees
-            .iter()
-            .copied()
-            .map(AxisAngle::from_degrees)
-            .collect()
-    };
-    Sight {
-        hour_angle: HourAngle::from_degrees(reading.hour_angle_deg),
-        declination: Declination::from_degrees(reading.declination_deg),
-        side: reading.side,
-        hour: axes(&reading.hour_candidates_deg),
-        dec: axes(&reading.dec_candidates_deg),
-        sigma_hour: Angle::from_degrees(reading.hour_sigma_deg),
-        sigma_dec: Angle::from_degrees(reading.dec_sigma_deg),
     }
 }
