@@ -9,10 +9,7 @@ use crate::screen::look::Look;
 
 /// Draws the keys of a mode.
 pub fn draw(look: Look, buffer: &mut Buffer, area: Rect, mode: Mode) {
-    let held: Vec<_> = keys::table()
-        .iter()
-        .filter(|key| key.modes.contains(&mode))
-        .collect();
+    let held: Vec<_> = keys::held(mode).collect();
     let mut rows = area.rows();
     // the keys need the room more than the heading does
     if usize::from(area.height) > held.len()

@@ -33,6 +33,8 @@ pub enum Mode {
     SunRisk,
     /// Correcting the clock.
     Clock,
+    /// Saying which circle has another zero.
+    Ring,
     /// Looking at the keys.
     Help,
 }
@@ -56,6 +58,7 @@ impl Mode {
             Self::Noting => "writing a note",
             Self::SunRisk => "an object near the Sun",
             Self::Clock => "correcting the clock",
+            Self::Ring => "forgetting a zero",
             Self::Help => "these keys",
         }
     }
@@ -86,6 +89,8 @@ pub enum Act {
     Undo,
     /// Correct the clock.
     Clock,
+    /// A ring was knocked or set.
+    Ring,
     /// Answer for an object near the Sun.
     Sun,
     /// The next light.
@@ -135,6 +140,7 @@ const AWAY: &[Mode] = &[
     Mode::Noting,
     Mode::SunRisk,
     Mode::Clock,
+    Mode::Ring,
     Mode::Help,
 ];
 
@@ -250,6 +256,14 @@ const KEYS: &[Key] = &[
         Some(12),
     ),
     key(
+        &[Char('z')],
+        ("z", "zero"),
+        "a circle slipped, or was set by hand",
+        STEPPING,
+        Act::Ring,
+        None,
+    ),
+    key(
         &[Char('a')],
         ("a", "answer"),
         "answer for an object near the Sun",
@@ -324,6 +338,7 @@ const KEYS: &[Key] = &[
             Mode::Noting,
             Mode::SunRisk,
             Mode::Clock,
+            Mode::Ring,
         ],
         Act::Accept,
         Some(1),
@@ -342,6 +357,12 @@ const KEYS: &[Key] = &[
 #[must_use]
 pub const fn table() -> &'static [Key] {
     KEYS
+}
+
+/// The keys of a mode, but for the one that lists them.
+pub fn held(mode: Mode) -> impl Iterator<Item = &'static Key> {
+    let held = move |key: &&Key| key.modes.contains(&mode) && key.act != Act::Help;
+    KEYS.iter().filter(held)
 }
 
 /// What a key does in a mode, if anything.
@@ -379,7 +400,7 @@ pub fn hints(mode: Mode, width: usize) -> String {
 mod tests {
     use super::*;
 
-    const MODES: [Mode; 9] = [
+    const MODES: [Mode; 10] = [
         Mode::Stepping,
         Mode::ChoosingStar,
         Mode::Centring,
@@ -388,6 +409,7 @@ mod tests {
         Mode::Noting,
         Mode::SunRisk,
         Mode::Clock,
+        Mode::Ring,
         Mode::Help,
     ];
 
@@ -449,8 +471,7 @@ mod tests {
             assert!(key.name.chars().count() < 7, "{}", key.name);
         }
         for mode in MODES {
-            let held = table().iter().filter(|key| key.modes.contains(&mode));
-            assert!(held.count() <= 15, "{mode:?}");
+            assert!(held(mode).count() <= 15, "{mode:?}");
         }
     }
 

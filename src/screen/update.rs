@@ -6,7 +6,7 @@
 use crossterm::event::KeyCode;
 
 use crate::catalog::Target;
-use crate::night::{Event, ListedTarget, Night, NightTarget};
+use crate::night::{Circle, Event, ListedTarget, Night, NightTarget};
 use crate::screen::happening::{Happening, Stroke};
 use crate::screen::keys::{self, Act, DOUBLE_STRIKE, Mode};
 use crate::screen::panel::{Centred, Doing, Panel};
@@ -168,6 +168,7 @@ fn acted(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
         Act::Search => entered(panel, Mode::Searching),
         Act::Note => entered(panel, Mode::Noting),
         Act::Clock => entered(panel, Mode::Clock),
+        Act::Ring => entered(panel, Mode::Ring),
         Act::Up | Act::Down | Act::Other => Vec::new(),
     }
 }
@@ -289,6 +290,7 @@ fn accepted(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
         Mode::Noting => record(scene.from.night.note(&text), "noted", Mode::Stepping),
         Mode::SunRisk => sun_risk(panel, scene, &text),
         Mode::Clock => clock(panel, scene, &text),
+        Mode::Ring => ring(panel, &text),
         Mode::Reading => read(panel, scene),
         Mode::Stepping | Mode::Centring | Mode::Help => Vec::new(),
     }
@@ -350,6 +352,22 @@ fn clock(panel: &mut Panel, scene: &Scene<'_>, text: &str) -> Vec<Doing> {
             Vec::new()
         }
     }
+}
+
+fn ring(panel: &mut Panel, text: &str) -> Vec<Doing> {
+    let (circle, said) = match text {
+        "h" | "hour" => (Circle::Hour, "hour circle: read a star for its new zero"),
+        "d" | "declination" => (
+            Circle::Declination,
+            "declination circle: read a star for its new zero",
+        ),
+        _ => {
+            panel.say("type h or d");
+            return Vec::new();
+        }
+    };
+    let reading = None;
+    record(Event::RingSet { circle, reading }, said, Mode::Stepping)
 }
 
 fn read(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {

@@ -83,6 +83,11 @@ fn draw_body(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown
                          listen to a time signal, and type as in 2.5; -2.5 if it is fast";
             draw_line(look, buffer, body, from, (words, "seconds slow"));
         }
+        Mode::Ring => {
+            let words = "a circle that slipped, was knocked or was set by hand has another zero. \
+                         which one? type h for the hour circle, d for the declination circle";
+            draw_line(look, buffer, body, from, (words, "circle"));
+        }
         Mode::SunRisk => {
             let words = format!(
                 "sunlight in a telescope or a finder blinds at once. only with a filter over the \
