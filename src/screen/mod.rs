@@ -1,4 +1,9 @@
 //! The terminal at the eyepiece.
+//!
+//! What happens comes in one queue ([`happening`]); [`update`] says what follows, without doing it; the
+//! [`desk`] makes the record safe and only then shows an act done; [`shown`] works out once what there
+//! is to see at an instant, and [`view`] draws it. [`run`] alone holds the clock and the terminal.
+//! [`keys`] is the one table of keys, for the dispatch, the hints, the help and the manual.
 
 pub mod circle;
 pub mod desk;
@@ -25,6 +30,7 @@ pub mod stopped;
 pub mod target_line;
 pub mod terminal;
 pub mod truth;
+mod typing;
 pub mod update;
 pub mod view;
 pub mod words;

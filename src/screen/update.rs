@@ -5,12 +5,12 @@
 
 use crossterm::event::KeyCode;
 
-use crate::catalog::Target;
-use crate::night::{Circle, Event, ListedTarget, Night, NightTarget};
+use crate::night::{Event, Night, NightTarget};
 use crate::screen::happening::{Happening, Stroke};
 use crate::screen::keys::{self, Act, DOUBLE_STRIKE, Mode};
 use crate::screen::panel::{Centred, Doing, Panel};
 use crate::screen::shown::{From, Settings, Shown};
+use crate::screen::typing;
 use crate::time::Utc;
 
 /// What a happening is held against.
@@ -26,9 +26,6 @@ pub struct Scene<'s> {
 
 /// What the observer types to answer for an object near the Sun.
 pub const SUN_WORD: &str = "sun";
-
-/// A clock further out than this is set wrong, not slow or fast, in seconds.
-const MOST_CORRECTION_S: f64 = 3600.0;
 
 /// Takes in what happened.
 pub fn update(panel: &mut Panel, scene: &Scene<'_>, happening: &Happening) -> Vec<Doing> {
@@ -74,7 +71,7 @@ fn struck(panel: &mut Panel, scene: &Scene<'_>, stroke: Stroke) -> Vec<Doing> {
             }
             Vec::new()
         }
-        _ => typing(panel, scene, act),
+        _ => typing::typing(panel, scene, act),
     };
     if doings
         .iter()
@@ -94,7 +91,7 @@ fn changed(panel: &mut Panel) {
     }
 }
 
-fn record(event: Event, said: impl Into<String>, then: Mode) -> Vec<Doing> {
+pub(super) fn record(event: Event, said: impl Into<String>, then: Mode) -> Vec<Doing> {
     vec![Doing::Record {
         event: Box::new(event),
         said: said.into(),
@@ -175,7 +172,7 @@ fn acted(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
 
 const NO_OBJECT: &str = "no object is being dialled: press space for the first";
 
-fn entered(panel: &mut Panel, mode: Mode) -> Vec<Doing> {
+pub(super) fn entered(panel: &mut Panel, mode: Mode) -> Vec<Doing> {
     panel.enter(mode);
     Vec::new()
 }
@@ -233,170 +230,4 @@ fn read_here(panel: &mut Panel, scene: &Scene<'_>) {
         }
         _ => panel.say(NO_OBJECT),
     }
-}
-
-/// A key that is no text, struck while typing.
-fn typing(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
-    let lines = match panel.mode {
-        Mode::ChoosingStar => scene.shown.stars.len(),
-        _ => scene.shown.matches.len(),
-    };
-    match act {
-        Act::Up => panel.chosen = panel.chosen.saturating_sub(1),
-        Act::Down => panel.chosen = (panel.chosen + 1).min(lines.saturating_sub(1)),
-        Act::Other => panel.typed.at_second = !panel.typed.at_second,
-        Act::Cancel => cancelled(panel),
-        Act::Accept => return accepted(panel, scene),
-        _ => {}
-    }
-    Vec::new()
-}
-
-fn cancelled(panel: &mut Panel) {
-    let star = panel.star.take();
-    match (panel.mode, star) {
-        // back to the star, which has moved on meanwhile: it must be centred again
-        (Mode::Reading, Some(star)) if !star.found => {
-            panel.enter(Mode::Centring);
-            panel.star = Some(Centred {
-                at: None,
-                questioned: false,
-                ..star
-            });
-        }
-        _ => panel.enter(Mode::Stepping),
-    }
-}
-
-fn accepted(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
-    let text = panel.typed.line().value().trim().to_owned();
-    match panel.mode {
-        Mode::ChoosingStar => {
-            if let Some(placed) = scene.shown.stars.get(panel.chosen) {
-                panel.enter(Mode::Centring);
-                panel.star = Some(Centred {
-                    star: placed.star.clone(),
-                    found: false,
-                    at: None,
-                    questioned: false,
-                });
-            } else {
-                panel.say("no such star is well placed now");
-            }
-            Vec::new()
-        }
-        Mode::Searching => added(panel, scene),
-        Mode::Noting if text.is_empty() => entered(panel, Mode::Stepping),
-        Mode::Noting => record(scene.from.night.note(&text), "noted", Mode::Stepping),
-        Mode::SunRisk => sun_risk(panel, scene, &text),
-        Mode::Clock => clock(panel, scene, &text),
-        Mode::Ring => ring(panel, &text),
-        Mode::Reading => read(panel, scene),
-        Mode::Stepping | Mode::Centring | Mode::Help => Vec::new(),
-    }
-}
-
-fn added(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
-    let Some(target) = scene.shown.matches.get(panel.chosen) else {
-        panel.say("nothing matches");
-        return Vec::new();
-    };
-    let targets = &scene.from.night.state().targets;
-    let listed = targets
-        .iter()
-        .position(|entry| entry.target.name == target.name);
-    let taken = listed.and_then(|index| scene.from.night.take(index));
-    if let Some(event) = taken {
-        return record(event, "it was in the list already", Mode::Stepping);
-    }
-    let said = format!("{} stands at the end of the list", target.name);
-    let event = Event::TargetAdded {
-        target: Box::new(ListedTarget::from(target)),
-    };
-    record(event, said, Mode::Stepping)
-}
-
-fn sun_risk(panel: &mut Panel, scene: &Scene<'_>, text: &str) -> Vec<Doing> {
-    let target: Option<&Target> = scene.shown.target.as_ref();
-    match target {
-        Some(target) if text.eq_ignore_ascii_case(SUN_WORD) => {
-            let event = Event::SunRiskAcknowledged {
-                target: target.name.clone(),
-            };
-            record(
-                event,
-                "you answer for it: filter first, finder capped",
-                Mode::Stepping,
-            )
-        }
-        _ => {
-            panel.say(format!("type {SUN_WORD} to answer for it, or esc"));
-            Vec::new()
-        }
-    }
-}
-
-/// What is typed is how far the clock on the screen is off, so it adds to the correction in force.
-fn clock(panel: &mut Panel, scene: &Scene<'_>, text: &str) -> Vec<Doing> {
-    match text.replace(',', ".").parse::<f64>() {
-        Ok(slow) if slow.abs() <= MOST_CORRECTION_S => {
-            let seconds = scene.from.night.state().clock_correction_s + slow;
-            record(
-                Event::ClockCorrected { seconds },
-                format!("the machine's clock is now corrected by {seconds:+.1} s"),
-                Mode::Stepping,
-            )
-        }
-        _ => {
-            panel.say("type seconds, as in 2.5 for a slow clock or -2.5 for a fast one");
-            Vec::new()
-        }
-    }
-}
-
-fn ring(panel: &mut Panel, text: &str) -> Vec<Doing> {
-    let (circle, said) = match text {
-        "h" | "hour" => (Circle::Hour, "hour circle: read a star for its new zero"),
-        "d" | "declination" => (
-            Circle::Declination,
-            "declination circle: read a star for its new zero",
-        ),
-        _ => {
-            panel.say("type h or d");
-            return Vec::new();
-        }
-    };
-    let reading = None;
-    record(Event::RingSet { circle, reading }, said, Mode::Stepping)
-}
-
-fn read(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
-    let typed = scene.shown.reading.as_ref();
-    let Some(whole) = typed.and_then(|typed| typed.whole.clone()) else {
-        // on to the other circle; what is wrong stands beside what was typed
-        panel.typed.at_second = !panel.typed.at_second;
-        return Vec::new();
-    };
-    if !panel.typed.at_second {
-        panel.typed.at_second = true;
-        return Vec::new();
-    }
-    let Some(star) = &mut panel.star else {
-        return Vec::new();
-    };
-    if whole.questionable && !star.questioned {
-        star.questioned = true;
-        panel.say(
-            "far from expected: look again at star, side and circles. enter once more to take it",
-        );
-        return Vec::new();
-    }
-    let said = format!("read: {}", star.star.name);
-    let event = if star.found {
-        let setting = None;
-        scene.from.night.found(setting, Some(whole.reading))
-    } else {
-        Some(Event::StarRead(Box::new(whole.reading)))
-    };
-    event.map_or_else(Vec::new, |event| record(event, said, Mode::Stepping))
 }
