@@ -1,2 +1,7 @@
-//! nonius
-fn main() {}
+//! The program: parse, run, exit.
+
+use std::process::ExitCode;
+
+fn main() -> ExitCode {
+    nonius::command::main()
+}

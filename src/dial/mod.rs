@@ -7,9 +7,10 @@
 use crate::angle::Angle;
 use crate::angle::AxisAngle;
 use crate::catalog::Target;
+use crate::estimate::{Prediction, chance};
 use crate::metal::{
-    Axes, EyepiecePlace, Mount, NoSuchSide, Reading, Side, Slit, TooNearPole, TubeDirections,
-    to_axes,
+    Axes, EyepiecePlace, Mount, NoSuchSide, Optic, Reading, Side, Slit, TooNearPole,
+    TubeDirections, to_axes,
 };
 use crate::sky::{Apparent, Body, Moment, Observed, Source};
 
@@ -181,7 +182,7 @@ pub fn dial(setup: &Setup<'_>, moment: &Moment, target: &Target) -> Result<Dial,
             hour: prediction.hour_sigma(),
             dec: prediction.dec_sigma(),
         },
-        chances: Vec::new(),
+        chances: chances(mount, &prediction),
         swing: tube_now.map(|from| Swing::between(from, axes)),
         slit: mount
             .dome
@@ -228,6 +229,19 @@ fn dec_setting(mount: &Mount, shown: AxisAngle) -> DeclinationSetting {
         reading,
         text: circle.scale().text(reading),
     }
+}
+
+/// The chance for each optic, the setting of both circles included.
+fn chances(mount: &Mount, prediction: &Prediction) -> Vec<Chance> {
+    let hour = mount.hour_circle.look_error();
+    let dec = mount.declination_circle.look_error();
+    let covariance = prediction.sky_with_setting(hour, dec);
+    let of = |optic: &Optic| Chance {
+        optic: optic.name.clone(),
+        field: optic.field,
+        probability: chance(&covariance, optic.field),
+    };
+    mount.optics.iter().map(of).collect()
 }
 
 /// The mark, and the moment at which the target itself, in the full model, stands where the circle

@@ -18,6 +18,9 @@ use crate::site::mount_file::MountFile;
 use crate::site::readings_file::ReadingsFile;
 use crate::site::site_file::SiteFile;
 
+/// How the names of files begin that are compiled into the program.
+const BUILT_IN: &str = "built-in/";
+
 /// The name of the program's folder among the user's.
 const PROGRAM: &str = "nonius";
 
@@ -244,11 +247,17 @@ impl Folders {
 }
 
 impl FileText {
+    /// True if it is compiled into the program.
+    #[must_use]
+    pub fn is_built_in(&self) -> bool {
+        self.name.starts_with(BUILT_IN)
+    }
+
     /// The text of a built-in file.
     #[must_use]
     pub fn built_in(shelf: Shelf, file: &builtin::BuiltIn) -> Self {
         Self {
-            name: format!("built-in/{}/{}.{}", shelf.folder(), file.id, file.ending),
+            name: format!("{BUILT_IN}{}/{}.{}", shelf.folder(), file.id, file.ending),
             text: file.text.to_owned(),
         }
     }

@@ -1,0 +1,180 @@
+//! The station: site, mount, estimate, catalogue and clock of a run, opened from the options.
+
+use std::path::Path;
+
+use crate::angle::HourAngle;
+use crate::catalog::Catalogue;
+use crate::command::exit::Refused;
+use crate::command::options::Common;
+use crate::command::readings;
+use crate::dial::{Setup, TubePlace};
+use crate::estimate::{Estimate, Prior, Sight};
+use crate::metal::{Mount, SideRequest};
+use crate::night::ListedTarget;
+use crate::site::builtin;
+use crate::site::{Faults, Folders, Shelf, Site, SiteFile};
+use crate::sky::Moment;
+use crate::time::{Clock, InstantFault, Utc};
+
+/// Everything a run works with.
+#[derive(Debug)]
+pub struct Station {
+    /// The user's folders.
+    pub folders: Folders,
+    /// The site.
+    pub site: Site,
+    /// The mount, by the name of its file.
+    pub mount_id: String,
+    /// The mount.
+    pub mount: Mount,
+    /// The catalogues.
+    pub catalogue: Catalogue,
+    /// What is known of the mount's errors.
+    pub estimate: Estimate,
+    /// What was known before any reading.
+    pub prior: Prior,
+    /// The stars of the file of readings.
+    pub sights: Vec<Sight>,
+    /// Where the tube was at the last of them.
+    pub tube: Option<TubePlace>,
+    /// When the last of them was read.
+    pub calibrated_at: Option<Utc>,
+    /// No site was asked for and the user has none: the demonstration night.
+    pub unconfigured: bool,
+    /// The site is one of the program's own, which do not exist.
+    pub built_in: bool,
+    /// The side of the pier asked for.
+    pub side: SideRequest,
+    sun_risk_accepted: bool,
+    clock: Clock,
+    lead_s: f64,
+}
+
+impl Station {
+    /// Opens the site, the mount and the file of readings the options name.
+    pub fn open(common: &Common) -> anyhow::Result<Self> {
+        let folders = Folders::of_the_user()?;
+        let (site, unconfigured) = site_of(&folders, common.site.as_deref())?;
+        let mount = match &common.mount {
+            Some(name) => folders.mount(name)?,
+            None => folders.mount_of(&site)?,
+        };
+        let prior = Prior::from_expected(&mount.mount.expected);
+        let mut station = Self {
+            catalogue: Catalogue::builtin().with_own(folders.own_targets()?),
+            estimate: Estimate::from_prior(&prior),
+            prior,
+            side: side_request(common, &mount.mount)?,
+            built_in: site.file.is_built_in(),
+            site: site.site,
+            mount_id: mount.id,
+            mount: mount.mount,
+            sights: Vec::new(),
+            tube: None,
+            calibrated_at: None,
+            unconfigured,
+            sun_risk_accepted: common.accept_sun_risk,
+            clock: common
+                .at
+                .map_or_else(Clock::of_the_machine, Clock::starting_at),
+            lead_s: common.lead.unwrap_or(0.0),
+            folders,
+        };
+        if let Some(file) = &common.readings {
+            station.calibrate(file)?;
+        }
+        Ok(station)
+    }
+
+    fn calibrate(&mut self, file: &Path) -> anyhow::Result<()> {
+        let readings = readings::load(file, self)?;
+        let fit = readings.fit(self);
+        self.estimate = Estimate::from(&fit);
+        self.tube = readings.tube(&fit);
+        self.calibrated_at = readings.latest();
+        self.sights = readings.rows.into_iter().map(|row| row.sight).collect();
+        Ok(())
+    }
+
+    /// The list and its targets: the one asked for; else the one named like the site; else the user's
+    /// only one; else none. A name no catalogue knows is a fault of the list's file.
+    pub fn list(&self, common: &Common) -> Result<(Option<String>, Vec<ListedTarget>), Faults> {
+        let name = match &common.list {
+            Some(name) => Some(name.clone()),
+            None if self.folders.names(Shelf::Lists)?.contains(&self.site.id) => {
+                Some(self.site.id.clone())
+            }
+            None => match self.folders.paths(Shelf::Lists)?.as_slice() {
+                [only] => Some(only.to_string_lossy().into_owned()),
+                _ => None,
+            },
+        };
+        let Some(name) = name else {
+            return Ok((None, Vec::new()));
+        };
+        let list = self.folders.list(&name)?;
+        let (mut targets, mut faults) = (Vec::new(), Vec::new());
+        for entry in list.resolve(&self.catalogue) {
+            match entry {
+                Ok(entry) => targets.push(ListedTarget::from(&entry.target)),
+                Err(fault) => faults.push(fault),
+            }
+        }
+        if faults.is_empty() {
+            Ok((Some(list.id), targets))
+        } else {
+            Err(Faults::new(list.file, faults))
+        }
+    }
+
+    /// The sky at the clock's instant, later by the lead asked for.
+    pub fn moment(&self) -> Result<Moment, InstantFault> {
+        let instant = self.clock.now()?.plus_seconds(self.lead_s);
+        Ok(Moment::new(&self.site.observer(), instant))
+    }
+
+    /// What settings are worked out from.
+    #[must_use]
+    pub fn setup(&self) -> Setup<'_> {
+        Setup {
+            horizon: &self.site.horizon,
+            mount: &self.mount,
+            estimate: &self.estimate,
+            side: self.side,
+            tube: self.tube,
+            calibrated_at: self.calibrated_at,
+            sun_risk_accepted: self.sun_risk_accepted,
+        }
+    }
+}
+
+/// The site asked for; else the user's only one; else the demonstration's, which is then said.
+fn site_of(folders: &Folders, asked: Option<&str>) -> anyhow::Result<(SiteFile, bool)> {
+    if let Some(name) = asked {
+        return Ok((folders.site(name)?, false));
+    }
+    let own = folders.paths(Shelf::Sites)?;
+    match own.as_slice() {
+        [] => Ok((folders.site(builtin::DEMONSTRATION_SITE)?, true)),
+        [only] => Ok((folders.site(&only.to_string_lossy())?, false)),
+        several => {
+            let names: Vec<String> = several
+                .iter()
+                .filter_map(|path| Some(path.file_stem()?.to_string_lossy().into_owned()))
+                .collect();
+            let message = format!("you have {} sites: {}", several.len(), names.join(", "));
+            Err(Refused::new(message, "name one with --site").into())
+        }
+    }
+}
+
+/// The side asked for, held against the mount before anything is worked out.
+fn side_request(common: &Common, mount: &Mount) -> Result<SideRequest, Refused> {
+    match mount.choose_side(common.side, HourAngle::default(), None) {
+        Ok(_) => Ok(common.side),
+        Err(why) => Err(Refused {
+            message: format!("--side: {why}"),
+            hint: None,
+        }),
+    }
+}
