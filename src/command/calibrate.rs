@@ -119,6 +119,16 @@ fn terms(fit: &Fit) -> impl Iterator<Item = (&'static str, Angle, Angle)> + '_ {
         })
 }
 
+/// Minutes of arc with their sign, and nothing without one.
+fn minutes(off: Angle) -> String {
+    let tenths = (off.arcminutes() * 10.0).round();
+    if tenths == 0.0 {
+        "0.0'".to_owned()
+    } else {
+        format!("{:+.1}'", tenths / 10.0)
+    }
+}
+
 /// With its sign, also where it is positive.
 fn signed(notation: Notation, value: Angle) -> String {
     let written = notation.write(value);
@@ -168,11 +178,11 @@ fn table(
         match residual {
             Some(off) => writeln!(
                 out,
-                "{:>3}  {:<22}{:>9.1}'{:>9.1}'{:>9.2}",
+                "{:>3}  {:<22}{:>10}{:>10}{:>9.2}",
                 index + 1,
                 row.star,
-                off.hour.arcminutes(),
-                off.dec.arcminutes(),
+                minutes(off.hour),
+                minutes(off.dec),
                 off.weight()
             )?,
             None => writeln!(

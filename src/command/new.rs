@@ -37,6 +37,9 @@ pub fn run(args: &NewArgs, out: &mut dyn Write) -> anyhow::Result<()> {
     };
     let path = create(&Folders::of_the_user()?, shelf, &args.name).map_err(refused)?;
     writeln!(out, "written: {}", path.display())?;
+    if args.what == What::Site {
+        writeln!(out, "its coordinates are 0°, 0° until you write your own")?;
+    }
     Ok(writeln!(
         out,
         "edit it, then see: nonius check {}",

@@ -1,5 +1,6 @@
 //! The station: site, mount, estimate, catalogue and clock of a run, opened from the options.
 
+use std::io::{self, Write as _};
 use std::path::Path;
 
 use crate::angle::HourAngle;
@@ -80,6 +81,14 @@ impl Station {
             lead_s: common.lead.unwrap_or(0.0),
             folders,
         };
+        if station.site.latitude.degrees() == 0.0 && station.site.longitude.degrees() == 0.0 {
+            // a starting file not yet made one's own: every reading would be wrong
+            let _ = writeln!(
+                io::stderr(),
+                "warning: the site {} stands at 0°, 0°, as its starting file has it",
+                station.site.id
+            );
+        }
         if let Some(file) = &common.readings {
             station.calibrate(file)?;
         }

@@ -33,7 +33,12 @@ pub enum Settings {
         answerable: bool,
     },
     /// There is nothing to set.
-    Nothing(String),
+    Nothing {
+        /// Why.
+        words: String,
+        /// What else is worth knowing; may be empty.
+        after: &'static str,
+    },
 }
 
 /// What the screen shows at one instant.
@@ -74,6 +79,10 @@ pub struct From<'f> {
     pub moment: &'f Moment,
 }
 
+/// Said where there is nothing to set yet, at a site of the program's own.
+const DEMONSTRATION: &str = "This is the demonstration: neither the station nor its mount exists, so with a star centred the \
+     screen also says what the circles show. For your own: nonius new mount NAME, then nonius new site NAME.";
+
 impl From<'_> {
     /// Works it out.
     #[must_use]
@@ -85,17 +94,22 @@ impl From<'_> {
             .current_target()
             .and_then(|entry| entry.target.target());
         let target = star.or(listed);
+        let nothing = |words: &str| Settings::Nothing {
+            words: words.to_owned(),
+            after: match self.observatory.demonstration {
+                Some(_) => DEMONSTRATION,
+                None => "",
+            },
+        };
         let settings = match (&target, state.current_target()) {
             (Some(target), _) => self.settings(target),
-            (None, Some(entry)) => {
-                Settings::Nothing(format!("no catalogue knows {}", entry.target.name))
-            }
+            (None, Some(entry)) => nothing(&format!("no catalogue knows {}", entry.target.name)),
             (None, None) if state.targets.is_empty() => {
-                Settings::Nothing("the list is empty: press / to look up an object".to_owned())
+                nothing("the list is empty: press / to look up an object")
             }
-            (None, None) => Settings::Nothing(
-                "press s to read a star, or space for the first object of the list".to_owned(),
-            ),
+            (None, None) => {
+                nothing("press s to read a star, or space for the first object of the list")
+            }
         };
         let outlook = target.as_ref().map(|target| {
             foresight.outlook(self.observatory, &target.name, &target.source, self.moment)

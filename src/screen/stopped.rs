@@ -11,7 +11,7 @@ use crate::screen::shown::Settings;
 pub fn draw(look: Look, buffer: &mut Buffer, area: Rect, settings: &Settings) {
     let (heading, words, after) = match settings {
         Settings::Dialled(_) => return,
-        Settings::Nothing(words) => ("", words.as_str(), ""),
+        Settings::Nothing { words, after } => ("", words.as_str(), *after),
         Settings::Stopped {
             heading,
             words,
@@ -42,7 +42,9 @@ pub fn draw(look: Look, buffer: &mut Buffer, area: Rect, settings: &Settings) {
         }
     }
     rows.next();
-    if let Some(row) = rows.next() {
-        look.left(buffer, row, after, Strength::Plain);
+    for line in wrapped(after, width) {
+        if let Some(row) = rows.next() {
+            look.left(buffer, row, &line, Strength::Plain);
+        }
     }
 }

@@ -56,23 +56,22 @@ pub fn run(args: &DialArgs, common: &Common, out: &mut dyn Write) -> anyhow::Res
         .collect();
     let nothing_known = asked.iter().all(|asked| asked.target.is_err());
     let mut lines = Lines::default();
+    if nothing_known && !(common.json && args.every.is_none()) {
+        return Err(refusal(&asked).into());
+    }
     let Some(every) = args.every else {
         let moment = station.moment()?;
         let answers = answers(&station, &moment, &asked);
-        if common.json {
-            json(&station, &moment, &answers, out)?;
-        } else {
-            page::print(&station, &moment, &answers, out)?;
+        if !common.json {
+            return Ok(page::print(&station, &moment, &answers, out)?);
         }
+        json(&station, &moment, &answers, out)?;
         return if nothing_known {
             Err(refusal(&asked).into())
         } else {
             Ok(())
         };
     };
-    if nothing_known {
-        return Err(refusal(&asked).into());
-    }
     let interrupts = interrupt::listen()?;
     loop {
         let moment = station.moment()?;
