@@ -2,7 +2,7 @@
 
 use crate::angle::{Angle, AxisAngle};
 use crate::dial::tube::TubePlace;
-use crate::estimate::{Estimate, Sight};
+use crate::estimate::{Estimate, Sight, nearest};
 use crate::metal::{Axes, Mount, Reading, Side, TooNearPole};
 use crate::sky::{Moment, Observed, Source};
 
@@ -90,13 +90,16 @@ impl Sighting {
         let expected = estimate
             .predict(sight.hour_angle, sight.declination, latitude, self.side)?
             .axes;
-        let (hour, hour_off) = nearest(&sight.hour, expected.hour);
-        let (dec, dec_off) = nearest(&sight.dec, expected.dec);
+        // a circle that was read has at least one candidate
+        let meant =
+            |candidates: &[AxisAngle], expected| nearest(candidates, expected).unwrap_or(expected);
+        let hour = meant(&sight.hour, expected.hour);
+        let dec = meant(&sight.dec, expected.dec);
         Ok(Understood {
             sight,
             shown: Axes { hour, dec },
-            hour_off,
-            dec_off,
+            hour_off: (hour.angle() - expected.hour.angle()).wrapped_signed(),
+            dec_off: (dec.angle() - expected.dec.angle()).wrapped_signed(),
         })
     }
 }
@@ -128,7 +131,8 @@ fn with_opposite(
             .iter()
             .map(|other| AxisAngle::new(other.angle() + Angle::HALF_TURN))
             .collect();
-        let (_, off) = nearest(&across, shown);
+        let other = nearest(&across, shown).unwrap_or(shown);
+        let off = (other.angle() - shown.angle()).wrapped_signed();
         AxisAngle::new(shown.angle() + off / 2.0)
     };
     (
@@ -137,11 +141,53 @@ fn with_opposite(
     )
 }
 
-/// The candidate nearest to what was expected, and how far it is off.
-fn nearest(candidates: &[AxisAngle], expected: AxisAngle) -> (AxisAngle, Angle) {
-    candidates
-        .iter()
-        .map(|&shown| (shown, (shown.angle() - expected.angle()).wrapped_signed()))
-        .min_by(|a, b| a.1.abs().radians().total_cmp(&b.1.abs().radians()))
-        .unwrap_or((expected, Angle::ZERO))
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::dial::trial::{Trial, moment, target};
+    use crate::dial::{Setup, dial};
+    use crate::metal::SideRequest;
+
+    #[test]
+    fn two_opposite_verniers_are_free_of_eccentricity() {
+        let trial = Trial::new();
+        let (now, vega) = (moment("2026-12-01T21:30:00Z"), target("Vega"));
+        let setup = Setup {
+            side: SideRequest::Only(Side::TubeEast),
+            ..trial.setup()
+        };
+        let circles = dial(&setup, &now, &vega).unwrap();
+        // an eccentric circle adds to one vernier what it takes from the other
+        let eccentric = Angle::from_arcminutes(20.0);
+        let moved = |by: Angle| Reading {
+            value: (circles.hour.reading.value + by).wrapped_positive(),
+            half: None,
+        };
+        let sighting = Sighting {
+            side: Side::TubeEast,
+            hour: moved(eccentric),
+            dec: circles.dec.reading,
+            hour_opposite: Some(moved(Angle::HALF_TURN - eccentric)),
+            dec_opposite: None,
+            timed: false,
+        };
+        let understood = sighting
+            .understand(&trial.mount, &now, &vega.source, &trial.estimate)
+            .unwrap();
+        assert!(
+            understood.hour_off.abs().arcseconds() < 1e-6,
+            "{understood:?}"
+        );
+        let one_look = trial.mount.hour_circle.look_error();
+        let two_looks = understood.sight.sigma_hour;
+        assert!((one_look / two_looks - std::f64::consts::SQRT_2).abs() < 1e-9);
+        let alone = Sighting {
+            hour_opposite: None,
+            ..sighting
+        };
+        let understood = alone
+            .understand(&trial.mount, &now, &vega.source, &trial.estimate)
+            .unwrap();
+        assert!((understood.hour_off.arcminutes() - 20.0).abs() < 1e-6);
+    }
 }

@@ -18,4 +18,4 @@ pub use descent::{GROSS_SIGMAS, TRUSTED_SIGMAS};
 pub use fit::{Fit, fit};
 pub use prediction::{Estimate, Prediction};
 pub use prior::{Covariance, Prior};
-pub use sight::{Residual, Sight};
+pub use sight::{Residual, Sight, nearest};

@@ -49,8 +49,9 @@ impl Residual {
     }
 }
 
-/// The candidate nearest to a predicted axis angle, the shorter way round.
-pub(super) fn nearest(candidates: &[AxisAngle], predicted: AxisAngle) -> Option<AxisAngle> {
+/// The candidate nearest to a predicted axis angle, the shorter way round; none among none.
+#[must_use]
+pub fn nearest(candidates: &[AxisAngle], predicted: AxisAngle) -> Option<AxisAngle> {
     candidates
         .iter()
         .copied()

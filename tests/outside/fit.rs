@@ -6,7 +6,7 @@ use nonius::estimate::{Estimate, Fit, Prior, Sight, fit};
 use nonius::metal::ExpectedErrors;
 
 use crate::mount::{errors, off_deg, place, side};
-use crate::table::{Row, rows};
+use crate::table::{Row, number_of, rows};
 
 /// The fits are converged to some 1e-6'; the head of the file says the same.
 const ERROR_TOLERANCE_ARCMIN: f64 = 0.001;
@@ -176,13 +176,7 @@ fn a_published_pair_of_readings_gives_its_index_and_polar_error() {
     /// Two printed values, each rounded to a second, and a prior that holds 0.1" against sigmas of 1".
     const TOLERANCE_ARCSEC: f64 = 2.0;
     let table = rows("mount_two_sides.csv");
-    let value = |quantity: &str| {
-        let row = table
-            .iter()
-            .find(|row| row.text("quantity") == quantity)
-            .unwrap();
-        Angle::from_degrees(row.number("value_deg"))
-    };
+    let value = |quantity: &str| Angle::from_degrees(number_of(&table, quantity));
     // a polar axis set by eye, and nothing else wrong, as the book takes it
     let prior = Prior::from_expected(&ExpectedErrors {
         polar_high: Angle::from_degrees(2.0),

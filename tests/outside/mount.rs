@@ -3,7 +3,7 @@
 use nonius::angle::{Angle, AxisAngle, Declination, HourAngle, Latitude};
 use nonius::metal::{Axes, MountErrors, Side, to_axes};
 
-use crate::table::{Row, rows};
+use crate::table::{Row, number_of, rows};
 
 /// The names of the errors in the columns, in the order of `MountErrors::to_array`.
 const ERRORS: [&str; 7] = [
@@ -97,13 +97,7 @@ fn a_published_pair_of_readings_comes_out_of_its_index_and_polar_error() {
     /// Each printed value is rounded to a second, and two of them enter.
     const TOLERANCE_ARCSEC: f64 = 1.0;
     let table = rows("mount_two_sides.csv");
-    let value = |quantity: &str| {
-        let row = table
-            .iter()
-            .find(|row| row.text("quantity") == quantity)
-            .unwrap();
-        Angle::from_degrees(row.number("value_deg"))
-    };
+    let value = |quantity: &str| Angle::from_degrees(number_of(&table, quantity));
     let errors = MountErrors {
         dec_index: value("index error"),
         polar_high: -value("pole of the instrument too low by"),

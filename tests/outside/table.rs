@@ -36,3 +36,10 @@ pub fn rows(file: &str) -> Vec<Row> {
     assert!(!rows.is_empty(), "{file} holds no rows");
     rows
 }
+
+/// The number in degrees of a quantity, in a table that holds one a row.
+pub fn number_of(table: &[Row], quantity: &str) -> f64 {
+    let row = table.iter().find(|row| row.text("quantity") == quantity);
+    row.unwrap_or_else(|| panic!("there is no {quantity}"))
+        .number("value_deg")
+}
