@@ -29,7 +29,7 @@ pub fn run(common: &Common) -> anyhow::Result<()> {
         .into());
     }
     let station = Station::open(common)?;
-    let (list, targets) = station.list(common)?;
+    let (list, targets) = station.targets()?;
     let (path, clock) = journal_and_clock(&station, common)?;
     let opening = opening(&station, list, targets);
     let (mut session, begun) = Session::begin(&path, clock.now()?, opening)?;

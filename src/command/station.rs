@@ -4,7 +4,7 @@ use std::io::{self, Write as _};
 use std::path::Path;
 
 use crate::angle::HourAngle;
-use crate::catalog::Catalogue;
+use crate::catalog::{Catalogue, Target};
 use crate::command::exit::Refused;
 use crate::command::options::Common;
 use crate::command::readings;
@@ -13,7 +13,7 @@ use crate::estimate::{Estimate, Prior, Sight};
 use crate::metal::{Mount, SideRequest};
 use crate::night::ListedTarget;
 use crate::site::builtin;
-use crate::site::{Faults, Folders, Shelf, Site, SiteFile};
+use crate::site::{Faults, Folders, Ink, ListFile, Shelf, Site, SiteFile};
 use crate::sky::Moment;
 use crate::time::{Clock, InstantFault, Utc};
 
@@ -30,6 +30,9 @@ pub struct Station {
     pub mount: Mount,
     /// The catalogues.
     pub catalogue: Catalogue,
+    /// The list of targets: the one asked for; else the one named like the site; else the user's only
+    /// one; else none.
+    list: Result<Option<ListFile>, Faults>,
     /// What is known of the mount's errors.
     pub estimate: Estimate,
     /// What was known before any reading.
@@ -60,9 +63,17 @@ impl Station {
             Some(name) => folders.mount(name)?,
             None => folders.mount_of(&site)?,
         };
+        let list = list_of(&folders, &site.site.id, common.list.as_deref());
+        if let (Some(_), Err(faults)) = (&common.list, &list) {
+            return Err(faults.clone().into());
+        }
+        let catalogue = Catalogue::builtin();
+        let mut own = placed(&list, &catalogue);
+        own.extend(folders.own_targets()?);
         let prior = Prior::from_expected(&mount.mount.expected);
         let mut station = Self {
-            catalogue: Catalogue::builtin().with_own(folders.own_targets()?),
+            catalogue: catalogue.with_own(own),
+            list,
             estimate: Estimate::from_prior(&prior),
             prior,
             side: side_request(common, &mount.mount)?,
@@ -105,35 +116,28 @@ impl Station {
         Ok(())
     }
 
-    /// The list and its targets: the one asked for; else the one named like the site; else the user's
-    /// only one; else none. A name no catalogue knows is a fault of the list's file.
-    pub fn list(&self, common: &Common) -> Result<(Option<String>, Vec<ListedTarget>), Faults> {
-        let name = match &common.list {
-            Some(name) => Some(name.clone()),
-            None if self.folders.names(Shelf::Lists)?.contains(&self.site.id) => {
-                Some(self.site.id.clone())
-            }
-            None => match self.folders.paths(Shelf::Lists)?.as_slice() {
-                [only] => Some(only.to_string_lossy().into_owned()),
-                _ => None,
-            },
-        };
-        let Some(name) = name else {
+    /// The name of the list and its targets. A name no catalogue knows is kept, to be seen among the
+    /// others, and said.
+    pub fn targets(&self) -> Result<(Option<String>, Vec<ListedTarget>), Faults> {
+        let Some(list) = self.list.as_ref().map_err(Clone::clone)? else {
             return Ok((None, Vec::new()));
         };
-        let list = self.folders.list(&name)?;
-        let (mut targets, mut faults) = (Vec::new(), Vec::new());
-        for entry in list.resolve(&self.catalogue) {
+        let (mut targets, mut unknown) = (Vec::new(), Vec::new());
+        for (line, entry) in list.lines.iter().zip(list.resolve(&self.catalogue)) {
             match entry {
                 Ok(entry) => targets.push(ListedTarget::from(&entry.target)),
-                Err(fault) => faults.push(fault),
+                Err(fault) => {
+                    let written = &line.written;
+                    targets.push(ListedTarget::unknown(&written.name, &written.note));
+                    unknown.push(fault);
+                }
             }
         }
-        if faults.is_empty() {
-            Ok((Some(list.id), targets))
-        } else {
-            Err(Faults::new(list.file, faults))
+        if !unknown.is_empty() {
+            let faults = Faults::new(list.file.clone(), unknown);
+            let _ = writeln!(io::stderr(), "{}", faults.render(Ink::Plain).trim_end());
         }
+        Ok((Some(list.id.clone()), targets))
     }
 
     /// The sky at the clock's instant, later by the lead asked for.
@@ -175,6 +179,33 @@ fn site_of(folders: &Folders, asked: Option<&str>) -> anyhow::Result<(SiteFile, 
             Err(Refused::new(message, "name one with --site").into())
         }
     }
+}
+
+/// The list of targets that applies.
+fn list_of(folders: &Folders, site: &str, asked: Option<&str>) -> Result<Option<ListFile>, Faults> {
+    let name = match asked {
+        Some(name) => name.to_owned(),
+        None if folders.names(Shelf::Lists)?.iter().any(|name| name == site) => site.to_owned(),
+        None => match folders.paths(Shelf::Lists)?.as_slice() {
+            [only] => only.to_string_lossy().into_owned(),
+            _ => return Ok(None),
+        },
+    };
+    folders.list(&name).map(Some)
+}
+
+/// The targets of the list that have a place of their own, and so a name to dial by.
+fn placed(list: &Result<Option<ListFile>, Faults>, catalogue: &Catalogue) -> Vec<Target> {
+    let Ok(Some(list)) = list else {
+        return Vec::new();
+    };
+    let placed = list
+        .lines
+        .iter()
+        .filter(|line| line.written.place.is_some());
+    placed
+        .filter_map(|line| Some(catalogue.resolve_entry(&line.written).ok()?.target))
+        .collect()
 }
 
 /// The side asked for, held against the mount before anything is worked out.

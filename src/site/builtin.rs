@@ -35,7 +35,10 @@ const MOUNTS: &[BuiltIn] = &[
 ];
 
 const LISTS: &[BuiltIn] = &[
-    list("saltpan", include_str!("../../catalogs/lists/saltpan.txt")),
+    list(
+        "saltpan-ridge",
+        include_str!("../../catalogs/lists/saltpan-ridge.txt"),
+    ),
     list(
         "tarn-hollow",
         include_str!("../../catalogs/lists/tarn-hollow.txt"),
