@@ -50,6 +50,7 @@ pub struct Station {
     /// The side of the pier asked for.
     pub side: SideRequest,
     sun_risk_accepted: bool,
+    at: Option<Utc>,
     clock: Clock,
     lead_s: f64,
 }
@@ -86,6 +87,7 @@ impl Station {
             calibrated_at: None,
             unconfigured,
             sun_risk_accepted: common.accept_sun_risk,
+            at: common.at,
             clock: common
                 .at
                 .map_or_else(Clock::of_the_machine, Clock::starting_at),
@@ -140,10 +142,18 @@ impl Station {
         Ok((Some(list.id.clone()), targets))
     }
 
-    /// The sky at the clock's instant, later by the lead asked for.
+    /// The sky at the instant asked for to the nanosecond, or else by the clock; later by the lead.
+    pub fn first_moment(&self) -> Result<Moment, InstantFault> {
+        Ok(self.sky_at(self.at.map_or_else(|| self.clock.now(), Ok)?))
+    }
+
+    /// The sky by the clock, which runs on from the instant asked for; later by the lead.
     pub fn moment(&self) -> Result<Moment, InstantFault> {
-        let instant = self.clock.now()?.plus_seconds(self.lead_s);
-        Ok(Moment::new(&self.site.observer(), instant))
+        Ok(self.sky_at(self.clock.now()?))
+    }
+
+    fn sky_at(&self, instant: Utc) -> Moment {
+        Moment::new(&self.site.observer(), instant.plus_seconds(self.lead_s))
     }
 
     /// What settings are worked out from.

@@ -60,7 +60,7 @@ pub fn run(args: &DialArgs, common: &Common, out: &mut dyn Write) -> anyhow::Res
         return Err(refusal(&asked).into());
     }
     let Some(every) = args.every else {
-        let moment = station.moment()?;
+        let moment = station.first_moment()?;
         let answers = answers(&station, &moment, &asked);
         if !common.json {
             return Ok(page::print(&station, &moment, &answers, out)?);
