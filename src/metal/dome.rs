@@ -7,7 +7,8 @@
 
 use crate::angle::{Altitude, Angle, Azimuth, Declination, HourAngle, Latitude};
 use crate::metal::errors::MountErrors;
-use crate::metal::geometry::{Axes, direction, to_horizon, to_sky};
+use crate::metal::frames::{direction, to_horizon};
+use crate::metal::geometry::{Axes, to_sky};
 use crate::metal::mount::{Dome, Tube};
 
 /// The line of sight and the declination axis, as directions in the horizon frame.

@@ -12,6 +12,7 @@ use crate::angle::{Angle, AxisAngle, Declination, HourAngle, Latitude};
 use crate::metal::Side;
 use crate::metal::dual::{Dual, Scalar};
 use crate::metal::errors::{COUNT, MountErrors};
+use crate::metal::frames::{direction, from_horizon, hemisphere, to_horizon};
 
 /// The undoing of the sag halves its error, or better, at every step while the sag is below half a radian; Newton's
 /// rule needs four for any sag a tube could have, the rest is for numbers no tube could have.
@@ -196,41 +197,11 @@ fn axes_without_index<S: Scalar>(
     Ok((hour, dec))
 }
 
-/// The unit vector of a place in the equatorial frame.
-pub(super) fn direction(hour_angle: HourAngle, declination: Declination) -> [f64; 3] {
-    let (sin_h, cos_h) = hour_angle.angle().radians().sin_cos();
-    let (sin_d, cos_d) = declination.angle().radians().sin_cos();
-    [cos_d * cos_h, cos_d * sin_h, sin_d]
-}
-
 fn shown(hour: f64, dec: f64, errors: &MountErrors) -> Axes {
     Axes {
         hour: AxisAngle::new(Angle::from_radians(hour) + errors.hour_index),
         dec: AxisAngle::new(Angle::from_radians(dec) + errors.dec_index),
     }
-}
-
-/// +1 where the north end of the polar axis is the raised one, -1 where the south end is.
-fn hemisphere(latitude: Latitude) -> f64 {
-    if latitude.angle() >= Angle::ZERO {
-        1.0
-    } else {
-        -1.0
-    }
-}
-
-/// East, north and up of a direction of the equatorial frame.
-pub(super) fn to_horizon<S: Scalar>([x, y, z]: [S; 3], latitude: Latitude) -> [S; 3] {
-    let (sin, cos) = latitude.angle().radians().sin_cos();
-    let (sin, cos) = (S::from(sin), S::from(cos));
-    [-y, z * cos - x * sin, x * cos + z * sin]
-}
-
-/// The direction of the equatorial frame that lies east, north and up by these.
-fn from_horizon<S: Scalar>([east, north, up]: [S; 3], latitude: Latitude) -> [S; 3] {
-    let (sin, cos) = latitude.angle().radians().sin_cos();
-    let (sin, cos) = (S::from(sin), S::from(cos));
-    [up * cos - north * sin, -east, north * cos + up * sin]
 }
 
 /// Where the tube looks when its axes point in this direction of the horizon frame.

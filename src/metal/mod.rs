@@ -5,6 +5,7 @@ pub mod dome;
 mod dual;
 pub mod engraved;
 pub mod errors;
+mod frames;
 pub mod geometry;
 pub mod limits;
 pub mod look;
