@@ -12,10 +12,11 @@ use crate::time;
 #[derive(Args, Clone, Debug, Default)]
 pub struct LogArgs {
     /// The civil date of the night's evening, or a journal's file; otherwise the last night.
-    #[arg(value_name = "NIGHT")]
+    // not "night": that is the shared option --night, and one identifier serves one argument
+    #[arg(id = "which_night", value_name = "NIGHT")]
     pub night: Option<String>,
     /// List the nights there are.
-    #[arg(long, conflicts_with = "night")]
+    #[arg(long, conflicts_with = "which_night")]
     pub all: bool,
     /// How to print it.
     #[arg(long, value_name = "FORMAT", default_value = "text")]
