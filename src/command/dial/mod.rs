@@ -73,8 +73,8 @@ pub fn run(args: &DialArgs, common: &Common, out: &mut dyn Write) -> anyhow::Res
         };
     };
     let interrupts = interrupt::listen()?;
+    let mut moment = station.first_moment()?;
     loop {
-        let moment = station.moment()?;
         let answers = answers(&station, &moment, &asked);
         if common.json {
             json(&station, &moment, &answers, out)?;
@@ -83,7 +83,7 @@ pub fn run(args: &DialArgs, common: &Common, out: &mut dyn Write) -> anyhow::Res
         }
         out.flush()?;
         match interrupts.recv_timeout(Duration::from_secs_f64(every)) {
-            Err(RecvTimeoutError::Timeout) => {}
+            Err(RecvTimeoutError::Timeout) => moment = station.moment()?,
             Ok(()) | Err(RecvTimeoutError::Disconnected) => return Err(Signalled::INTERRUPT.into()),
         }
     }
