@@ -1,0 +1,19 @@
+//! The program as it is run: words in; results, messages and an exit status out.
+//!
+//! Every run has a home of its own, empty at first, and nothing of the user's or the machine's.
+#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
+
+mod calibrate;
+mod circles;
+mod coordinates;
+mod dial;
+mod faults;
+mod mark;
+mod page;
+mod pretended;
+mod program;
+mod records;
+mod repeat;
+mod shape;
+mod sun;
+mod written;
