@@ -79,11 +79,23 @@ pub fn report(error: &anyhow::Error, color: bool) -> ExitCode {
     } else {
         let wrong = error.is::<NoSuchLog>() || error.is::<FaultsFound>();
         let status = if wrong { REQUEST_WRONG } else { WORK_FAILED };
-        (format!("error: {error:#}"), status)
+        (format!("error: {}", told(error)), status)
     };
     // with standard error gone there is nobody left to tell
     let _ = writeln!(io::stderr(), "{}", text.trim_end());
     ExitCode::from(status)
+}
+
+/// The message and its causes, each said once: many a message says its cause itself.
+fn told(error: &anyhow::Error) -> String {
+    let mut text = error.to_string();
+    for cause in error.chain().skip(1).map(ToString::to_string) {
+        if !text.contains(&cause) {
+            text += ": ";
+            text += &cause;
+        }
+    }
+    text
 }
 
 fn is_closed_pipe(error: &anyhow::Error) -> bool {
