@@ -13,7 +13,7 @@ use crate::pretended::{
 use crate::program::{Home, cautions, number, text, wrapped};
 use crate::shape::assert_shape;
 
-fn calibrated(home: &Home, station: &Station, mount: &str, file: &str) -> Value {
+pub fn calibrated(home: &Home, station: &Station, mount: &str, file: &str) -> Value {
     let report = home.json(&["calibrate", file, "--site", station.site, "--mount", mount]);
     for (term, name) in report["errors"].as_array().unwrap().iter().zip(NAMES) {
         assert_eq!(term["name"], name);
@@ -22,7 +22,7 @@ fn calibrated(home: &Home, station: &Station, mount: &str, file: &str) -> Value 
 }
 
 /// Value and sigma of each error, in arcminutes.
-fn errors(report: &Value) -> Vec<(f64, f64)> {
+pub fn errors(report: &Value) -> Vec<(f64, f64)> {
     let terms = report["errors"].as_array().unwrap();
     assert_eq!(terms.len(), 7);
     terms

@@ -349,3 +349,25 @@ fn nothing_known_at_all_is_a_wrong_request() {
     assert_eq!(sheet["dials"], json!([]));
     assert_eq!(sheet["not_dialled"][0]["target"], "Nonesuch");
 }
+
+#[test]
+fn every_way_of_naming_a_target_leads_to_its_place() {
+    let home = Home::new();
+    for names in [
+        &["M 37", "m37", "NGC 2099", "ngc2099"][..],
+        &["Vega", "alpha Lyrae", "HIP 91262", "vega"],
+    ] {
+        let sheet = home.json(&[&["dial", "--at", AT][..], names].concat());
+        let dials = sheet["dials"].as_array().unwrap();
+        assert_eq!(dials.len(), names.len(), "{sheet}");
+        assert!(dials.iter().all(|dial| dial == &dials[0]), "{sheet}");
+    }
+}
+
+#[test]
+fn an_instant_may_be_given_in_any_zone() {
+    let home = Home::new();
+    let utc = home.json(&["dial", "Vega", "--at", AT]);
+    let cape = home.json(&["dial", "Vega", "--at", "2026-12-01T23:30:00+02:00"]);
+    assert_eq!(utc, cape);
+}

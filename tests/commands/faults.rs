@@ -174,6 +174,12 @@ fn work_that_fails_ends_with_1() {
     let ran = Home::new().run(&["log", "missing.jsonl"]);
     assert_eq!((ran.status, ran.out.as_str()), (1, ""), "{}", ran.err);
     assert!(ran.err.contains("missing.jsonl"), "{}", ran.err);
+    assert_eq!(
+        ran.err.matches("(os error 2)").count(),
+        1,
+        "said twice: {}",
+        ran.err
+    );
 }
 
 #[test]
@@ -236,4 +242,52 @@ fn colour_is_there_when_asked_for_and_says_the_same() {
     let coloured = home.run(&[&words[..], &["always"]].concat());
     assert!(coloured.err.contains('\u{1b}') && !plain.err.contains('\u{1b}'));
     assert_eq!((plain.status, coloured.status), (2, 2));
+}
+
+#[test]
+fn every_command_takes_the_shared_options() {
+    let home = Home::new();
+    let readings = home.write("night.csv", &format!("{HEADER}{SOUND}"));
+    let shared = [
+        "--site",
+        "tarn-hollow",
+        "--mount",
+        "six-inch",
+        "--list",
+        "tarn-hollow",
+        "--at",
+        "2026-12-01T22:30:00Z",
+        "--side",
+        "tube-west",
+        "--readings",
+        &readings,
+        "--lead",
+        "5s",
+        "--accept-sun-risk",
+        "--json",
+        "--color",
+        "never",
+        "--night",
+        "night.jsonl",
+    ];
+    for words in [
+        &["dial", "Vega"][..],
+        &["calibrate", &readings],
+        &["find", "Vega"],
+        &["check", &readings],
+        &["new", "list", "tonight"],
+        &["log", "--all"],
+        &["completions", "bash"],
+        &["manual"],
+    ] {
+        // before the command and after it
+        for line in [[&shared[..], words].concat(), [words, &shared[..]].concat()] {
+            let ran = home.run(&line);
+            let again = words[0] == "new" && ran.err.contains("is there already");
+            assert!(
+                (ran.status == 0 && ran.err.is_empty()) || again,
+                "{line:?}: {ran:?}"
+            );
+        }
+    }
 }

@@ -4,11 +4,13 @@
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
 
 mod calibrate;
+mod cautions;
 mod circles;
 mod coordinates;
 mod dial;
 mod faults;
 mod mark;
+mod misread;
 mod page;
 mod pretended;
 mod program;
