@@ -5,6 +5,7 @@
 //! 0h 00m. "Past" a mark is the way the numbers grow there, so away from zero on a scale that has two sides.
 
 use crate::angle::Angle;
+use crate::metal::graduation::{Graduation, VernierLine};
 use crate::metal::scale::{Face, Reading, SAME_POSITION_RAD, Scale};
 use crate::sexagesimal::Notation;
 
@@ -28,30 +29,6 @@ const PARTS: [(f64, &str); 11] = [
     (0.8, "four fifths of a division"),
     (0.9, "nine tenths of a division"),
 ];
-
-/// Where a reading lies among the marks.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Graduation {
-    /// The mark passed last as the numbers grow.
-    pub mark: Reading,
-    /// That mark as numbered, without a letter.
-    pub mark_text: String,
-    /// How far past it, in divisions, from 0 to below 1.
-    pub past: f64,
-    /// The same in words: "two fifths of a division past 3h 12m", "on the mark 3h 12m".
-    pub words: String,
-    /// The vernier line that meets a mark, where there is a vernier.
-    pub vernier: Option<VernierLine>,
-}
-
-/// A line of a vernier.
-#[derive(Clone, Debug, PartialEq, Eq)]
-pub struct VernierLine {
-    /// Its number; 0 is the index line itself.
-    pub number: u32,
-    /// What it adds to the mark passed last.
-    pub text: String,
-}
 
 impl Scale {
     /// The smallest step the eye can set.

@@ -7,6 +7,7 @@ pub mod engraved;
 pub mod errors;
 mod frames;
 pub mod geometry;
+pub mod graduation;
 pub mod limits;
 pub mod look;
 pub mod marks;
@@ -22,9 +23,9 @@ pub use circle::{
     DeclinationCircle, DeclinationNumbering, HourCircle, HourNumbering, Increases, Ring,
 };
 pub use dome::{EyepiecePlace, Slit, TubeDirections};
-pub use engraved::{Graduation, VernierLine};
 pub use errors::MountErrors;
 pub use geometry::{Axes, Slopes, TooNearPole, to_axes, to_axes_with_slopes, to_sky};
+pub use graduation::{Graduation, VernierLine};
 pub use marks::MarkAhead;
 pub use mount::{Dome, ExpectedErrors, HourAngleSpan, Kind, Limits, Mount, Optic, Tube};
 pub use scale::{Reading, Scale};

@@ -182,21 +182,14 @@ fn columns(picture: Rect, divisions_numbered: f64) -> u16 {
 
 /// Where a reading lies, in longer and shorter words.
 fn lies(graduation: &Graduation) -> Vec<String> {
-    let mark = &graduation.mark_text;
-    match &graduation.vernier {
-        Some(line) if line.number > 0 => vec![
-            format!("vernier line {} past {mark}", line.number),
-            format!("line {} past {mark}", line.number),
-        ],
-        Some(_) => vec![format!("on the mark {mark}")],
-        None => {
-            let words = graduation.words.clone();
-            let short = words
-                .replace(" of a division", "")
-                .replace("half a division", "half");
-            vec![words, short]
-        }
-    }
+    let words = graduation.by_eye();
+    let short = match &graduation.vernier {
+        Some(_) => words.replace("vernier line", "line"),
+        None => words
+            .replace(" of a division", "")
+            .replace("half a division", "half"),
+    };
+    vec![words, short]
 }
 
 fn draw_words(look: Look, buffer: &mut Buffer, at: &Circle, pane: &Pane<'_>) {

@@ -54,13 +54,13 @@ fn setting(station: &Station, target: &Target, dial: &Dial, out: &mut dyn Write)
         .hour_circle
         .scale()
         .graduation(dial.hour.reading)
-        .words;
+        .by_eye();
     row("hour circle", &format!("{:<16}{hour_lies}", dial.hour.text))?;
     let dec_lies = mount
         .declination_circle
         .scale()
         .graduation(dial.dec.reading)
-        .words;
+        .by_eye();
     row(
         "declination circle",
         &format!("{:<16}{dec_lies}", dial.dec.text),
