@@ -165,6 +165,7 @@ impl Station {
             estimate: &self.estimate,
             side: self.side,
             tube: self.tube,
+            lead_s: self.lead_s,
             calibrated_at: self.calibrated_at,
             sun_risk_accepted: self.sun_risk_accepted,
         }

@@ -90,7 +90,7 @@ fn withhold_near_sun(
     source: &Source,
     observed: &Observed,
 ) -> Result<(), NotDialled> {
-    match sun::near(moment, observed) {
+    match sun::near_while_set(moment, source, observed, setup.lead_s) {
         Some(_) if setup.sun_risk_accepted => Ok(()),
         Some(_) if *source == Source::Body(Body::Sun) => Err(NotDialled::TheSun),
         Some(apart) => Err(NotDialled::SunNear { apart }),
@@ -232,6 +232,25 @@ mod tests {
         assert!(dial(&trial.setup(), &noon, &target("Vega")).is_ok());
         let midnight = moment("2026-06-21T00:00:00Z");
         assert!(dial(&trial.setup(), &midnight, &target("M 35")).is_ok());
+    }
+
+    #[test]
+    fn a_setting_for_after_sunset_is_withheld_before_it() {
+        let trial = Trial::new();
+        // at 22:00 at midsummer the Sun has set; two hours and a half before it was up
+        let night = moment("2026-06-21T22:00:00Z");
+        let with_lead = |hours: f64| {
+            let setup = Setup {
+                lead_s: hours * 3600.0,
+                ..trial.setup()
+            };
+            dial(&setup, &night, &target("M 35"))
+        };
+        assert!(with_lead(0.0).is_ok());
+        assert!(with_lead(0.5).is_ok());
+        for hours in [2.5, 23.0] {
+            assert!(matches!(with_lead(hours), Err(NotDialled::SunNear { .. })));
+        }
     }
 
     #[test]

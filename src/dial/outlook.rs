@@ -39,7 +39,7 @@ pub(super) fn cautions(
     way: &Way,
 ) -> Vec<Caution> {
     let mut found = Vec::new();
-    found.extend(sun_cautions(setup, moment, observed, way));
+    found.extend(sun_cautions(setup, moment, source, observed, way));
     found.extend(horizon_caution(setup, observed));
     found.extend(limit_cautions(setup, observed, side));
     found.extend(moon_caution(moment, source, observed));
@@ -51,10 +51,11 @@ pub(super) fn cautions(
 fn sun_cautions(
     setup: &Setup<'_>,
     moment: &Moment,
+    source: &Source,
     observed: &Observed,
     way: &Way,
 ) -> Option<Caution> {
-    if let Some(apart) = sun::near(moment, observed) {
+    if let Some(apart) = sun::near_while_set(moment, source, observed, setup.lead_s) {
         let text = format!(
             "the Sun is {:.0}° away: sunlight in the tube blinds at once and burns; only with a full-aperture filter, finder capped, under the rules of the house",
             apart.degrees()
@@ -62,9 +63,11 @@ fn sun_cautions(
         return Some(Caution::new(CautionCode::NearSun, text));
     }
     let errors = setup.estimate.errors();
-    let passed = way
-        .from
-        .and_then(|from| sun::near_on_the_way(moment, from, way.to, &errors));
+    let passed = way.from.and_then(|from| {
+        sun::while_set(moment, setup.lead_s)
+            .filter_map(|then| sun::near_on_the_way(&then, from, way.to, &errors))
+            .reduce(|a, b| if b < a { b } else { a })
+    });
     if let Some(apart) = passed {
         let text = format!(
             "the way there can pass {:.0}° from the Sun: cap tube and finder before swinging",
@@ -72,7 +75,8 @@ fn sun_cautions(
         );
         return Some(Caution::new(CautionCode::NearSun, text));
     }
-    moment.sun_is_up().then(|| {
+    let is_up = sun::while_set(moment, setup.lead_s).any(|then| then.sun_is_up());
+    is_up.then(|| {
         Caution::new(
             CautionCode::SunUp,
             "the Sun is up: keep tube and finder capped while swinging",

@@ -19,6 +19,9 @@ pub struct Setup<'a> {
     pub side: SideRequest,
     /// Where the tube was last known to be.
     pub tube: Option<TubePlace>,
+    /// The moment dialled for is so many seconds after the observer asks: the Sun rule holds from the
+    /// asking on.
+    pub lead_s: f64,
     /// When the last star was read.
     pub calibrated_at: Option<Utc>,
     /// The observer has taken the risk of this target near the Sun on themselves.

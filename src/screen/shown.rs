@@ -144,6 +144,7 @@ impl From<'_> {
             estimate: &self.known.estimate,
             side: request(state),
             tube: tube(state),
+            lead_s: observatory.lead_s,
             calibrated_at: self.known.read_at,
             sun_risk_accepted: accepted,
         };
