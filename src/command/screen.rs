@@ -11,7 +11,7 @@ use crate::command::exit::{Refused, Signalled};
 use crate::command::options::{ColorOption, Common};
 use crate::command::station::Station;
 use crate::metal::SideRequest;
-use crate::night::{ListedTarget, Opening, Session, journal};
+use crate::night::{EarlierNight, Known, ListedTarget, Opening, Session, journal, last_before};
 use crate::screen::figures::Glyphs;
 use crate::screen::light::{Depth, Light};
 use crate::screen::observatory::Observatory;
@@ -33,7 +33,8 @@ pub fn run(common: &Common) -> anyhow::Result<()> {
     let (path, clock) = journal_and_clock(&station, common)?;
     let opening = opening(&station, list, targets);
     let (mut session, begun) = Session::begin(&path, clock.now()?, opening)?;
-    let observatory = observatory(station, common);
+    let earlier_night = earlier_night(&station, clock.now()?);
+    let observatory = observatory(station, common, earlier_night);
     let ending = open(
         &observatory,
         &mut session,
@@ -103,8 +104,22 @@ fn opening(station: &Station, list: Option<String>, targets: Vec<ListedTarget>) 
     }
 }
 
-fn observatory(station: Station, common: &Common) -> Observatory {
+/// What the last night before this one taught of the mount, if one is recorded in the user's folder.
+fn earlier_night(station: &Station, now: Utc) -> Option<EarlierNight> {
+    let evening = station.site.zone.night(now).to_string();
+    let whose = (station.site.id.as_str(), station.mount_id.as_str());
+    let (date, night) = last_before(&station.folders.nights(), &evening, whose)?;
+    let known = Known::of(&station.grounds(), night.state());
+    Some(EarlierNight::of(&date, &known.estimate))
+}
+
+fn observatory(
+    station: Station,
+    common: &Common,
+    earlier_night: Option<EarlierNight>,
+) -> Observatory {
     Observatory {
+        earlier_night,
         observer: station.site.observer(),
         zone: station.site.zone,
         horizon: station.site.horizon,

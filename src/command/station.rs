@@ -11,7 +11,7 @@ use crate::command::readings;
 use crate::dial::{Setup, TubePlace};
 use crate::estimate::{Estimate, Prior, Sight};
 use crate::metal::{Mount, SideRequest};
-use crate::night::ListedTarget;
+use crate::night::{Grounds, Known, ListedTarget, Night, journal, whose};
 use crate::site::builtin;
 use crate::site::{Faults, Folders, Ink, ListFile, Shelf, Site, SiteFile};
 use crate::sky::Moment;
@@ -115,6 +115,41 @@ impl Station {
         self.tube = readings.tube(&fit);
         self.calibrated_at = readings.latest();
         self.sights = readings.rows.into_iter().map(|row| row.sight).collect();
+        Ok(())
+    }
+
+    /// What is believed of the mount before any star: the mount file alone.
+    #[must_use]
+    pub fn grounds(&self) -> Grounds<'_> {
+        Grounds {
+            latitude: self.site.latitude,
+            expected: &self.mount.expected,
+            prior: &self.prior,
+            sights: &[],
+            read_at: None,
+        }
+    }
+
+    /// Goes by what a night's journal knows of the mount, on top of the file of readings.
+    pub fn follow(&mut self, journal: &Path) -> anyhow::Result<()> {
+        let night = Night::replay(journal::read(journal)?.events);
+        if let Some(opening) = &night.state().opening {
+            whose(opening, (&self.site.id, &self.mount_id))?;
+        }
+        let grounds = Grounds {
+            sights: &self.sights,
+            read_at: self.calibrated_at,
+            ..self.grounds()
+        };
+        let known = Known::of(&grounds, night.state());
+        self.estimate = known.estimate;
+        self.calibrated_at = known.read_at;
+        let shown = night.state().tube.map(|tube| TubePlace {
+            axes: tube.axes.into(),
+            utc: tube.utc,
+            side: tube.side,
+        });
+        self.tube = shown.or(self.tube);
         Ok(())
     }
 

@@ -9,6 +9,9 @@ use crate::estimate::fit::Fit;
 use crate::estimate::prior::{Covariance, Prior};
 use crate::metal::{Axes, MountErrors, Side, TooNearPole, to_axes_with_slopes};
 
+/// An index this well known is no longer free, whose sigma is 60°.
+const KNOWN_INDEX: Angle = Angle::from_degrees(10.0);
+
 /// What is known of the mount's errors: this the rest of the program carries.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Estimate {
@@ -21,9 +24,15 @@ impl Estimate {
     /// Before any sight.
     #[must_use]
     pub fn from_prior(prior: &Prior) -> Self {
+        Self::new(prior.mean(), *prior.covariance())
+    }
+
+    /// Of these errors with that covariance (square radians), from no sight of one's own.
+    #[must_use]
+    pub const fn new(errors: MountErrors, covariance: Covariance) -> Self {
         Self {
-            errors: prior.mean(),
-            covariance: *prior.covariance(),
+            errors,
+            covariance,
             sights_used: 0,
         }
     }
@@ -46,10 +55,11 @@ impl Estimate {
         self.sights_used
     }
 
-    /// True once a sight has told where the circles' zeros are.
+    /// True once it is known where the circles' zeros are: from a sight, or from an earlier night.
     #[must_use]
-    pub const fn is_calibrated(&self) -> bool {
-        self.sights_used > 0
+    pub fn is_calibrated(&self) -> bool {
+        let known = |place| self.covariance[(place, place)].sqrt() < KNOWN_INDEX.radians();
+        self.sights_used > 0 || (known(0) && known(1))
     }
 
     /// What the axes must show to look at an observed place (refraction included), and how sure that is.

@@ -26,11 +26,17 @@ pub struct MarkAhead {
 }
 
 impl HourCircle {
+    /// True for a ring that stands still while the sky turns under it: marks come and go by themselves.
+    #[must_use]
+    pub const fn stands_still(&self) -> bool {
+        !matches!(self.ring, Ring::Driven)
+    }
+
     /// The next engraved mark to come under the index, more than `least_lead` ahead of the shown hour
     /// axis angle as the sky turns west. None on a driven ring, which keeps its reading.
     #[must_use]
     pub fn next_mark(&self, shown: AxisAngle, side: Side, least_lead: Angle) -> Option<MarkAhead> {
-        if self.ring == Ring::Driven {
+        if !self.stands_still() {
             return None;
         }
         // a ring that stands still does not ask for the time
@@ -49,6 +55,12 @@ impl HourCircle {
 }
 
 impl Scale {
+    /// True for the number of an engraved mark.
+    #[must_use]
+    pub fn is_on_a_mark(&self, reading: Reading) -> bool {
+        is_whole(reading.value / self.division)
+    }
+
     /// The first mark further on than `least_lead`, counted with the axis (`sense` as on the circle).
     fn next_mark(&self, position: Angle, sense: f64, least_lead: Angle) -> Option<Angle> {
         let lead = least_lead.radians().max(SAME_POSITION_RAD);
@@ -129,6 +141,18 @@ mod tests {
 
     fn minutes(minutes: f64) -> Angle {
         Angle::from_time_seconds(minutes * 60.0)
+    }
+
+    #[test]
+    fn a_reading_between_the_marks_is_told_from_one_on_a_mark() {
+        let scale = hour_circle(HourNumbering::Full).scale();
+        let at = |value| Reading {
+            value: minutes(value),
+            half: None,
+        };
+        for (value, on) in [(0.0, true), (948.0, true), (949.0, false), (947.99, false)] {
+            assert_eq!(scale.is_on_a_mark(at(value)), on, "{value}");
+        }
     }
 
     #[test]

@@ -61,6 +61,12 @@ impl State {
                     self.read(line, utc, reading);
                 }
             }
+            Event::AxisAdjusted => {
+                self.zeros.axis += 1;
+                // the tube has gone with the axis
+                self.tube = None;
+            }
+            Event::StartedFrom { earlier } => self.started_from = earlier.as_deref().cloned(),
             Event::ClockCorrected { seconds } => self.correct_clock(*seconds),
             Event::ClockJumped { .. } => {
                 self.clock_jumps += 1;

@@ -83,7 +83,8 @@ pub(super) fn of(
     taken_back: Option<&Stamped>,
 ) -> Vec<Effect> {
     let mut effects = Vec::new();
-    if before.readings != after.readings || before.zeros != after.zeros {
+    let grounds_changed = before.started_from != after.started_from;
+    if before.readings != after.readings || before.zeros != after.zeros || grounds_changed {
         effects.push(Effect::Refit);
     }
     let resumed = stamped.event == Event::SessionResumed;

@@ -10,6 +10,7 @@
 use serde::{Deserialize, Serialize};
 
 use crate::metal::Side;
+use crate::night::earlier::StartedFrom;
 use crate::night::listed::ListedTarget;
 use crate::night::reading::{Setting, StarReading};
 use crate::time::Utc;
@@ -85,6 +86,13 @@ pub enum Event {
         circle: Circle,
         /// The star it was set on, with what both circles show since.
         reading: Option<Box<StarReading>>,
+    },
+    /// The polar axis turned by its adjusters: where it points is unsure again.
+    AxisAdjusted,
+    /// What an earlier night taught is where this one starts; or no longer.
+    StartedFrom {
+        /// The night, and how it is taken; nothing to start from the mount file alone.
+        earlier: Option<Box<StartedFrom>>,
     },
     /// The clock compared with a time signal.
     ClockCorrected {
@@ -222,6 +230,8 @@ impl Event {
             Self::Missed { .. } => "missed",
             Self::Note { .. } => "note",
             Self::RingSet { .. } => "ring set",
+            Self::AxisAdjusted => "axis adjusted",
+            Self::StartedFrom { .. } => "started from",
             Self::ClockCorrected { .. } => "clock corrected",
             Self::ClockJumped { .. } => "clock jumped",
             Self::SideChanged { .. } => "side",

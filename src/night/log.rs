@@ -143,6 +143,10 @@ fn note(event: &Event) -> String {
             format!("{seconds:+.1} s")
         }
         Event::RingSet { circle, .. } => format!("{} circle", circle.word()),
+        Event::StartedFrom {
+            earlier: Some(started),
+        } => format!("{}, {}", started.earlier.night, started.words()),
+        Event::StartedFrom { earlier: None } => "the mount file alone".to_owned(),
         Event::ReadingUsed { line, .. } => format!("the reading of line {line}"),
         Event::StarRead(reading) if !reading.used => "not used in the estimate".to_owned(),
         Event::StarRead(reading) if reading.timed => "timed".to_owned(),

@@ -75,6 +75,33 @@ impl Nights {
     }
 }
 
+/// The last night before that of `evening` (a civil date) in which a star was read with this mount at
+/// this site, with its own date. Journals that cannot be read are passed over.
+#[must_use]
+pub fn last_before(
+    folder: &Path,
+    evening: &str,
+    (site, mount): (&str, &str),
+) -> Option<(String, Night)> {
+    let mut names: Vec<(String, PathBuf)> = fs::read_dir(folder)
+        .ok()?
+        .filter_map(|entry| {
+            let path = entry.ok()?.path();
+            let (stem, extension) = (path.file_stem()?, path.extension()?);
+            let date: String = stem.to_str()?.chars().take(evening.len()).collect();
+            (extension == EXTENSION && date.as_str() < evening).then_some((date, path))
+        })
+        .collect();
+    // as journals are named for their night, the last is found without reading them all
+    names.sort();
+    names.into_iter().rev().find_map(|(date, path)| {
+        let night = Night::replay(journal::read(&path).ok()?.events);
+        let opening = night.state().opening.as_ref()?;
+        let same = opening.site == site && opening.mount == mount;
+        (same && night.state().readings_in_use().next().is_some()).then_some((date, night))
+    })
+}
+
 fn summary(file: PathBuf) -> Option<NightSummary> {
     let night = Night::replay(journal::read(&file).ok()?.events);
     let first = night.history().first()?;

@@ -66,8 +66,7 @@ impl Session {
             begun.effects = session.act(utc, &Event::NightOpened(Box::new(opening)))?;
             return Ok((session, begun));
         };
-        same("the site", &recorded.site, &opening.site)?;
-        same("the mount", &recorded.mount, &opening.mount)?;
+        whose(recorded, (&opening.site, &opening.mount))?;
         begun.resumed = true;
         begun.effects = session.act(utc, &Event::SessionResumed)?;
         for target in opening.targets {
@@ -97,6 +96,12 @@ impl Session {
     pub fn path(&self) -> &Path {
         self.journal.path()
     }
+}
+
+/// Refuses the journal of another site or mount, each by the name of its file.
+pub fn whose(recorded: &Opening, (site, mount): (&str, &str)) -> Result<(), SessionFault> {
+    same("the site", &recorded.site, site)?;
+    same("the mount", &recorded.mount, mount)
 }
 
 fn same(what: &'static str, recorded: &str, given: &str) -> Result<(), SessionFault> {

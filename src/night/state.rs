@@ -5,6 +5,7 @@
 use std::collections::BTreeSet;
 
 use crate::metal::Side;
+use crate::night::earlier::StartedFrom;
 use crate::night::event::Opening;
 use crate::night::listed::ListedTarget;
 use crate::night::reading::{ShownAxes, StarReading};
@@ -23,7 +24,9 @@ pub struct State {
     pub side: Option<Side>,
     /// Every reading of the night, in order.
     pub readings: Vec<NightReading>,
-    /// How often each circle has been given a new zero.
+    /// The earlier night this one starts from.
+    pub started_from: Option<StartedFrom>,
+    /// How often each circle has been given a new zero, and the axis another place.
     pub zeros: Zeros,
     /// Where the tube was last known to be.
     pub tube: Option<TubeShown>,
@@ -59,13 +62,16 @@ pub enum Outcome {
     Missed(Utc),
 }
 
-/// How often each circle has been given a new zero: readings compare only under the same zeros.
+/// How often each circle has been given a new zero, and the axis another place: readings compare only
+/// under the same zeros.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
 pub struct Zeros {
     /// The hour circle.
     pub hour: u32,
     /// The declination circle.
     pub dec: u32,
+    /// The polar axis, turned by its adjusters.
+    pub axis: u32,
 }
 
 /// A reading with where it stands in the night.

@@ -2,10 +2,9 @@
 //! handed what happens and when, and holds neither clock nor terminal.
 
 use crate::catalog::Target;
-use crate::night::{Begun, Effect, Event, Session};
+use crate::night::{Begun, Effect, Event, Known, Session};
 use crate::screen::happening::Happening;
 use crate::screen::keys::Mode;
-use crate::screen::known::Known;
 use crate::screen::light::Light;
 use crate::screen::look::Look;
 use crate::screen::observatory::Observatory;
@@ -43,7 +42,7 @@ impl<'d> Desk<'d> {
         utc: Utc,
     ) -> Self {
         let state = session.night().state();
-        let known = Known::of(observatory, state);
+        let known = Known::of(&observatory.grounds(), state);
         let bright = observatory.catalogue.bright_stars(FAINTEST_HP);
         let mut panel = Panel::new(light);
         let resumed = begun.resumed.then(|| {
@@ -176,7 +175,7 @@ impl<'d> Desk<'d> {
     fn follow(&mut self, effect: &Effect) {
         match effect {
             Effect::Refit => {
-                self.known = Known::of(self.observatory, self.session.night().state());
+                self.known = Known::of(&self.observatory.grounds(), self.session.night().state());
             }
             Effect::Say(words) => self.panel.say(words.to_string()),
             // the loop asks for the correction, and ends by itself

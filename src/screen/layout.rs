@@ -110,6 +110,14 @@ fn take_below(area: &mut Rect, rows: u16) -> Rect {
     }
 }
 
+/// Some rows of an area, from so many below its top.
+#[must_use]
+pub fn rows_of(area: Rect, from: u16, rows: u16) -> Rect {
+    let mut rest = area;
+    take(&mut rest, from);
+    take(&mut rest, rows)
+}
+
 /// The regions of a screen, with a column of margin on either side; none if it is too small.
 #[must_use]
 pub fn regions(screen: Rect) -> Option<Regions> {

@@ -5,6 +5,8 @@
 //! is to see at an instant, and [`view`] draws it. [`run`] alone holds the clock and the terminal.
 //! [`keys`] is the one table of keys, for the dispatch, the hints, the help and the manual.
 
+mod calibrating;
+pub mod calibration;
 pub mod circle;
 pub mod desk;
 pub mod entry;
@@ -12,8 +14,8 @@ pub mod figures;
 pub mod happening;
 pub mod header;
 pub mod help;
+pub mod insight;
 pub mod keys;
-pub mod known;
 pub mod layout;
 pub mod light;
 pub mod lists;

@@ -4,6 +4,7 @@
 use crate::catalog::Catalogue;
 use crate::estimate::{Prior, Sight};
 use crate::metal::{Mount, MountErrors};
+use crate::night::{EarlierNight, Grounds};
 use crate::sky::{HorizonMask, Moment, Observer};
 use crate::time::{CivilZone, Utc};
 
@@ -22,6 +23,8 @@ pub struct Observatory {
     pub mount: Mount,
     /// The catalogues.
     pub catalogue: Catalogue,
+    /// What an earlier night taught of this mount, if one is recorded.
+    pub earlier_night: Option<EarlierNight>,
     /// What is believed of the mount's errors before any star of the night.
     pub prior: Prior,
     /// Stars read before the night, from a file of readings.
@@ -37,6 +40,18 @@ pub struct Observatory {
 }
 
 impl Observatory {
+    /// What was believed before any star of the night.
+    #[must_use]
+    pub fn grounds(&self) -> Grounds<'_> {
+        Grounds {
+            latitude: self.observer.latitude,
+            expected: &self.mount.expected,
+            prior: &self.prior,
+            sights: &self.earlier_sights,
+            read_at: self.earlier_read_at,
+        }
+    }
+
     /// The sky as it will stand when the hand has set the circles.
     #[must_use]
     pub fn lead(&self, moment: &Moment) -> Moment {

@@ -25,8 +25,12 @@ pub struct Panel {
     pub chosen: usize,
     /// The star being centred or read, and from which side.
     pub star: Option<Centred>,
+    /// In the calibration view, the picture of what is left of the stars stands in place of their list.
+    pub picture: bool,
     /// The mode the keys were looked up from.
     pub help_from: Mode,
+    /// How often the keys were turned over.
+    pub help_page: usize,
     /// The last words to the observer.
     pub said: Option<String>,
     /// When a key last changed the record.
@@ -42,6 +46,8 @@ pub struct Centred {
     pub found: bool,
     /// When it stood in the middle.
     pub at: Option<Utc>,
+    /// It was timed across the middle, with the hour circle set on a mark.
+    pub timed: bool,
     /// The reading is far from what was expected, and the observer has been told so.
     pub questioned: bool,
 }
@@ -134,7 +140,9 @@ impl Panel {
             typed: Typed::default(),
             chosen: 0,
             star: None,
+            picture: false,
             help_from: Mode::Stepping,
+            help_page: 0,
             said: None,
             struck_at: None,
         }

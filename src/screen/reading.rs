@@ -7,8 +7,7 @@ use crate::angle::{Angle, AxisAngle};
 use crate::dial::{Sighting, sighting::Understood};
 use crate::metal::typed::{read_dec, read_hour};
 use crate::metal::{Reading, Ring, Scale, Side};
-use crate::night::StarReading;
-use crate::screen::known::Known;
+use crate::night::{Known, StarReading};
 use crate::screen::observatory::Observatory;
 use crate::screen::panel::Typed;
 use crate::screen::words::rough;
@@ -66,6 +65,8 @@ pub struct Sitting<'s> {
     pub source: &'s Source,
     /// The side of the pier the tube is on.
     pub side: Side,
+    /// The star was timed across the middle, with the hour circle set on a mark.
+    pub timed: bool,
 }
 
 impl Sitting<'_> {
@@ -74,7 +75,7 @@ impl Sitting<'_> {
     pub fn understand(&self, typed: &Typed) -> TypedReading {
         let mount = &self.observatory.mount;
         let (hour_text, dec_text) = (typed.first.value(), typed.second.value());
-        let hour = some(hour_text, |text| read_hour(&mount.hour_circle, text));
+        let hour = some(hour_text, |text| self.hour(text));
         let dec = some(dec_text, |text| read_dec(&mount.declination_circle, text));
         let good = |typed: &Option<Result<Reading, TextFault>>| match typed {
             Some(Ok(reading)) => Some(*reading),
@@ -99,6 +100,24 @@ impl Sitting<'_> {
             ),
             whole,
         }
+    }
+
+    /// What is typed for the hour circle. A star is timed with the circle set on a mark.
+    fn hour(&self, text: &str) -> Result<Reading, TextFault> {
+        let circle = &self.observatory.mount.hour_circle;
+        let reading = read_hour(circle, text)?;
+        let scale = circle.scale();
+        if self.timed && !scale.is_on_a_mark(reading) {
+            return Err(TextFault {
+                message: format!(
+                    "a timed star is read on a mark, and {} is none",
+                    scale.text(reading)
+                ),
+                hint: "type the mark the circle was set on; else esc, and strike enter with it centred",
+                at: 0..text.len(),
+            });
+        }
+        Ok(reading)
     }
 
     /// Held against the estimate; a circle not read yet is taken to show what is expected of it.
@@ -126,7 +145,7 @@ impl Sitting<'_> {
             dec: dec.unwrap_or_else(|| mount.declination_circle.reading(expected.dec)),
             hour_opposite: None,
             dec_opposite: None,
-            timed: false,
+            timed: self.timed,
         };
         sighting
             .understand(mount, self.moment, self.source, estimate)
@@ -192,7 +211,7 @@ impl Sitting<'_> {
             hour_sigma_deg: sight.sigma_hour.degrees(),
             dec_sigma_deg: sight.sigma_dec.degrees(),
             driven: self.observatory.mount.hour_circle.ring == Ring::Driven,
-            timed: false,
+            timed: self.timed,
             off_arcmin: self
                 .known
                 .estimate

@@ -5,9 +5,9 @@
 use crate::catalog::{Filter, Target};
 use crate::dial::{self, CautionCode, Dial, NotDialled, Setup, TubePlace};
 use crate::metal::{self, Side, SideRequest};
-use crate::night::{Night, Setting, State};
+use crate::night::{Known, Night, Setting, State};
+use crate::screen::insight::Insight;
 use crate::screen::keys::Mode;
-use crate::screen::known::Known;
 use crate::screen::observatory::Observatory;
 use crate::screen::outlook::{Foresight, Outlook};
 use crate::screen::panel::Panel;
@@ -52,6 +52,8 @@ pub struct Shown {
     pub settings: Settings,
     /// Where it is going.
     pub outlook: Option<Outlook>,
+    /// What follows from what is known of the mount, while the observer looks at that.
+    pub insight: Option<Insight>,
     /// The stars to choose from.
     pub stars: Vec<Placed>,
     /// The objects that match what is typed.
@@ -119,6 +121,8 @@ impl From<'_> {
             moment: *self.moment,
             settings,
             outlook,
+            insight: (panel.mode == Mode::Calibration)
+                .then(|| Insight::of(self.observatory, self.known, self.moment)),
             stars: match panel.mode {
                 Mode::ChoosingStar => self.stars(typed),
                 _ => Vec::new(),
@@ -219,6 +223,7 @@ impl From<'_> {
             star: &centred.star.name,
             source: &centred.star.source,
             side: self.reading_side(&moment, &centred.star)?,
+            timed: centred.timed,
         };
         Some(sitting.understand(&self.panel.typed))
     }

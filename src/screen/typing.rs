@@ -34,6 +34,7 @@ fn cancelled(panel: &mut Panel) {
             panel.enter(Mode::Centring);
             panel.star = Some(Centred {
                 at: None,
+                timed: false,
                 questioned: false,
                 ..star
             });
@@ -52,6 +53,7 @@ fn accepted(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
                     star: placed.star.clone(),
                     found: false,
                     at: None,
+                    timed: false,
                     questioned: false,
                 });
             } else {
@@ -66,7 +68,7 @@ fn accepted(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
         Mode::Clock => clock(panel, scene, &text),
         Mode::Ring => ring(panel, &text),
         Mode::Reading => read(panel, scene),
-        Mode::Stepping | Mode::Centring | Mode::Help => Vec::new(),
+        _ => Vec::new(),
     }
 }
 

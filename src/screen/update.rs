@@ -6,6 +6,7 @@
 use crossterm::event::KeyCode;
 
 use crate::night::{Event, Night, NightTarget};
+use crate::screen::calibrating::calibrating;
 use crate::screen::happening::{Happening, Stroke};
 use crate::screen::keys::{self, Act, DOUBLE_STRIKE, Mode};
 use crate::screen::panel::{Centred, Doing, Panel};
@@ -64,13 +65,14 @@ fn struck(panel: &mut Panel, scene: &Scene<'_>, stroke: Stroke) -> Vec<Doing> {
     let doings = match mode {
         Mode::Stepping | Mode::Centring => acted(panel, scene, act),
         Mode::Help => {
-            if act == Act::Light {
-                panel.light = panel.light.next();
-            } else {
-                panel.mode = panel.help_from;
+            match act {
+                Act::Light => panel.light = panel.light.next(),
+                Act::Next => panel.help_page += 1,
+                _ => panel.mode = panel.help_from,
             }
             Vec::new()
         }
+        Mode::Calibration => calibrating(panel, scene, act),
         _ => typing::typing(panel, scene, act),
     };
     if doings
@@ -125,7 +127,7 @@ fn acted(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
             record_or_say(panel, event, &said, NO_OBJECT)
         }
         Act::Read => {
-            read_here(panel, scene);
+            read_here(panel, scene, false);
             Vec::new()
         }
         Act::Undo => record_or_say(panel, night.undo(), "", "there is nothing to take back"),
@@ -137,6 +139,7 @@ fn acted(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
         }
         Act::Help => {
             panel.help_from = mode;
+            panel.help_page = 0;
             panel.mode = Mode::Help;
             Vec::new()
         }
@@ -153,7 +156,19 @@ fn acted(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
             Vec::new()
         }
         Act::Accept => {
-            centred(panel, scene.utc);
+            centred(panel, scene.utc, false);
+            Vec::new()
+        }
+        Act::Timed if !scene.from.observatory.mount.hour_circle.stands_still() => {
+            panel.say("a ring that rides with the drive shows the same mark all along: press r");
+            Vec::new()
+        }
+        Act::Timed if mode == Mode::Centring => {
+            centred(panel, scene.utc, true);
+            Vec::new()
+        }
+        Act::Timed => {
+            read_here(panel, scene, true);
             Vec::new()
         }
         Act::Cancel => {
@@ -162,11 +177,12 @@ fn acted(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
             Vec::new()
         }
         Act::Star => entered(panel, Mode::ChoosingStar),
+        Act::Calibration => entered(panel, Mode::Calibration),
         Act::Search => entered(panel, Mode::Searching),
         Act::Note => entered(panel, Mode::Noting),
         Act::Clock => entered(panel, Mode::Clock),
         Act::Ring => entered(panel, Mode::Ring),
-        Act::Up | Act::Down | Act::Other => Vec::new(),
+        _ => Vec::new(),
     }
 }
 
@@ -205,28 +221,31 @@ fn side(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
     record(Event::SideChanged { side }, said, panel.mode)
 }
 
-/// The star stands in the middle at this moment: what the circles show is typed next.
-fn centred(panel: &mut Panel, utc: Utc) {
+/// The star stands in the middle at this moment, or drifts across it with the hour circle set on a
+/// mark: what the circles show is typed next.
+fn centred(panel: &mut Panel, utc: Utc, timed: bool) {
     if let Some(star) = panel.star.take() {
         panel.enter(Mode::Reading);
         panel.star = Some(Centred {
             at: Some(utc),
+            timed,
             ..star
         });
     }
 }
 
 /// The object being dialled stands in the middle at this moment.
-fn read_here(panel: &mut Panel, scene: &Scene<'_>) {
+fn read_here(panel: &mut Panel, scene: &Scene<'_>, timed: bool) {
     match &scene.shown.target {
         Some(target) if matches!(scene.shown.settings, Settings::Dialled(_)) => {
             panel.star = Some(Centred {
                 star: target.clone(),
                 found: true,
                 at: None,
+                timed,
                 questioned: false,
             });
-            centred(panel, scene.utc);
+            centred(panel, scene.utc, timed);
         }
         _ => panel.say(NO_OBJECT),
     }

@@ -14,7 +14,7 @@ use crate::screen::reading::{Line, TypedReading};
 use crate::screen::shown::{From, Settings, Shown};
 use crate::screen::target_line::{self, place_in_list};
 use crate::screen::update::SUN_WORD;
-use crate::screen::{circle, entry, help, lists, stopped, truth};
+use crate::screen::{calibration, circle, entry, help, lists, stopped, truth};
 
 /// Draws the screen.
 pub fn view(look: Look, buffer: &mut Buffer, from: &From<'_>, shown: &Shown) {
@@ -72,7 +72,9 @@ fn draw_body(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown
         Mode::ChoosingStar => lists::draw_stars(look, buffer, body, panel, &shown.stars),
         Mode::Searching => lists::draw_matches(look, buffer, body, panel, &shown.matches),
         Mode::Reading => draw_reading(look, buffer, body, from, shown),
-        Mode::Help => help::draw(look, buffer, body, panel.help_from),
+        Mode::Calibration => calibration::draw(look, buffer, body, from, shown),
+        Mode::Doubting | Mode::Sweeping | Mode::Objects => {}
+        Mode::Help => help::draw(look, buffer, body, panel.help_from, panel.help_page),
         Mode::Noting => {
             let about = shown.target.as_ref().map_or("the night", |t| &t.name);
             let words = format!("a note about {about}");

@@ -116,6 +116,7 @@ pub fn observatory() -> Observatory {
         earlier_read_at: None,
         lead_s: 0.0,
         sun_risk_accepted: false,
+        earlier_night: None,
         demonstration: Some(errors()),
     }
 }

@@ -45,7 +45,10 @@ fn interval(text: &str) -> Result<f64, String> {
 
 /// Dials and prints.
 pub fn run(args: &DialArgs, common: &Common, out: &mut dyn Write) -> anyhow::Result<()> {
-    let station = Station::open(common)?;
+    let mut station = Station::open(common)?;
+    if let Some(journal) = &common.night {
+        station.follow(journal)?;
+    }
     let asked: Vec<Asked> = args
         .targets
         .iter()
