@@ -53,12 +53,12 @@ pub fn run(common: &Common) -> anyhow::Result<()> {
 }
 
 /// Tonight's journal, and the clock: the machine's; or one that starts at the instant asked for, or
-/// at the demonstration's evening where nothing is configured, and then goes on where that night
+/// at the demonstration's evening at a site of the program's own, and then goes on where that night
 /// stopped rather than before its last act.
 fn journal_and_clock(station: &Station, common: &Common) -> anyhow::Result<(PathBuf, Clock)> {
     let start = match common.at {
         Some(at) => Some(at),
-        None if station.unconfigured => Some(Utc::parse(demonstration::EVENING)?),
+        None if station.built_in => Some(Utc::parse(demonstration::EVENING)?),
         None => None,
     };
     let clock = start.map_or_else(Clock::of_the_machine, Clock::starting_at);

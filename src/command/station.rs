@@ -43,8 +43,6 @@ pub struct Station {
     pub tube: Option<TubePlace>,
     /// When the last of them was read.
     pub calibrated_at: Option<Utc>,
-    /// No site was asked for and the user has none: the demonstration night.
-    pub unconfigured: bool,
     /// The site is one of the program's own, which do not exist.
     pub built_in: bool,
     /// The side of the pier asked for.
@@ -59,7 +57,7 @@ impl Station {
     /// Opens the site, the mount and the file of readings the options name.
     pub fn open(common: &Common) -> anyhow::Result<Self> {
         let folders = Folders::of_the_user()?;
-        let (site, unconfigured) = site_of(&folders, common.site.as_deref())?;
+        let site = site_of(&folders, common.site.as_deref())?;
         let mount = match &common.mount {
             Some(name) => folders.mount(name)?,
             None => folders.mount_of(&site)?,
@@ -85,7 +83,6 @@ impl Station {
             sights: Vec::new(),
             tube: None,
             calibrated_at: None,
-            unconfigured,
             sun_risk_accepted: common.accept_sun_risk,
             at: common.at,
             clock: common
@@ -207,15 +204,15 @@ impl Station {
     }
 }
 
-/// The site asked for; else the user's only one; else the demonstration's, which is then said.
-fn site_of(folders: &Folders, asked: Option<&str>) -> anyhow::Result<(SiteFile, bool)> {
+/// The site asked for; else the user's only one; else the demonstration's.
+fn site_of(folders: &Folders, asked: Option<&str>) -> anyhow::Result<SiteFile> {
     if let Some(name) = asked {
-        return Ok((folders.site(name)?, false));
+        return Ok(folders.site(name)?);
     }
     let own = folders.paths(Shelf::Sites)?;
     match own.as_slice() {
-        [] => Ok((folders.site(builtin::DEMONSTRATION_SITE)?, true)),
-        [only] => Ok((folders.site(&only.to_string_lossy())?, false)),
+        [] => Ok(folders.site(builtin::DEMONSTRATION_SITE)?),
+        [only] => Ok(folders.site(&only.to_string_lossy())?),
         several => {
             let names: Vec<String> = several
                 .iter()

@@ -103,19 +103,22 @@ impl From<'_> {
                 None => "",
             },
         };
+        let outlook = target.as_ref().map(|target| {
+            foresight.outlook(self.observatory, &target.name, &target.source, self.moment)
+        });
         let settings = match (&target, state.current_target()) {
-            (Some(target), _) => self.settings(target),
+            (Some(target), _) => self.settings(target, outlook),
             (None, Some(entry)) => nothing(&format!("no catalogue knows {}", entry.target.name)),
             (None, None) if state.targets.is_empty() => {
                 nothing("the list is empty: press / to look up an object")
+            }
+            (None, None) if self.known.estimate.is_calibrated() => {
+                nothing("press space for the first object of the list, s to read another star")
             }
             (None, None) => {
                 nothing("press s to read a star, or space for the first object of the list")
             }
         };
-        let outlook = target.as_ref().map(|target| {
-            foresight.outlook(self.observatory, &target.name, &target.source, self.moment)
-        });
         let typed = panel.typed.line().value();
         Shown {
             moment: *self.moment,
@@ -137,7 +140,7 @@ impl From<'_> {
         }
     }
 
-    fn settings(&self, target: &Target) -> Settings {
+    fn settings(&self, target: &Target, outlook: Option<Outlook>) -> Settings {
         let observatory = self.observatory;
         let state = self.night.state();
         let accepted =
@@ -154,7 +157,8 @@ impl From<'_> {
         };
         match dial::dial(&setup, &observatory.lead(self.moment), target) {
             Ok(dial) => {
-                stopped(&dial, accepted).unwrap_or_else(|| Settings::Dialled(Box::new(dial)))
+                let stopped = stopped(&dial, accepted, self.rises(outlook));
+                stopped.unwrap_or_else(|| Settings::Dialled(Box::new(dial)))
             }
             Err(NotDialled::TheSun | NotDialled::SunNear { .. }) => {
                 near_the_sun("this lies near the Sun, and the Sun is up")
@@ -164,6 +168,15 @@ impl From<'_> {
                 words: other.to_string(),
                 answerable: false,
             },
+        }
+    }
+
+    /// When an object that is not up comes clear of the horizon mask, in words.
+    fn rises(&self, outlook: Option<Outlook>) -> String {
+        let zone = self.observatory.zone;
+        match outlook.and_then(|outlook| outlook.changes) {
+            Some(at) => format!("; clear from {}", zone.civil(at).format("%H:%M")),
+            None => "; it does not come clear of the horizon here".to_owned(),
         }
     }
 
@@ -285,7 +298,7 @@ fn tube(state: &State) -> Option<TubePlace> {
 }
 
 /// What stops settings that could be followed to someone's harm.
-fn stopped(dial: &Dial, sun_risk_accepted: bool) -> Option<Settings> {
+fn stopped(dial: &Dial, sun_risk_accepted: bool, rises: String) -> Option<Settings> {
     let caution = dial.cautions.iter().find(|caution| match caution.code {
         CautionCode::NearSun => !sun_risk_accepted,
         CautionCode::BelowHorizon | CautionCode::BeyondLimit => true,
@@ -295,7 +308,7 @@ fn stopped(dial: &Dial, sun_risk_accepted: bool) -> Option<Settings> {
         CautionCode::NearSun => near_the_sun(&caution.text),
         CautionCode::BelowHorizon => Settings::Stopped {
             heading: "not up",
-            words: caution.text.clone(),
+            words: caution.text.clone() + &rises,
             answerable: false,
         },
         _ => Settings::Stopped {

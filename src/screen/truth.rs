@@ -4,7 +4,7 @@
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 
-use crate::angle::Angle;
+use crate::angle::{Angle, Azimuth};
 use crate::dial::Dial;
 use crate::screen::light::Strength;
 use crate::screen::look::{Look, fitting, wrapped};
@@ -92,13 +92,18 @@ pub fn draw_cautions(look: Look, buffer: &mut Buffer, area: Rect, dial: &Dial) {
             lines.push((format!("{mark} {line}"), Strength::Strong));
         }
     }
-    lines.extend(places(dial).map(|line| (line, Strength::Plain)));
+    if let Some(line) = places(dial, usize::from(area.width)) {
+        let around = wrapped(&line, usize::from(area.width));
+        lines.extend(around.into_iter().map(|line| (line, Strength::Plain)));
+    }
     for ((line, strength), row) in lines.iter().zip(area.rows()) {
         look.left(buffer, row, line, *strength);
     }
 }
 
-fn places(dial: &Dial) -> Option<String> {
+/// Where the slit must stand and where the eyepiece will be: which way from the pier, so that ladder,
+/// stool and people are in the right place before the swing.
+fn places(dial: &Dial, width: usize) -> Option<String> {
     let slit = dial.slit.map(|slit| {
         format!(
             "slit toward {:.0}° {}, {:.0}° up",
@@ -107,9 +112,18 @@ fn places(dial: &Dial) -> Option<String> {
             slit.altitude.degrees()
         )
     });
-    let eyepiece = dial
+    let height = dial
         .eyepiece
         .map(|place| format!("eyepiece {:.1} m above the floor", place.height_m));
-    let said: Vec<String> = slit.into_iter().chain(eyepiece).collect();
-    (!said.is_empty()).then(|| said.join(", "))
+    let aside = dial.eyepiece.map(|place| {
+        let way = Azimuth::new(Angle::from_radians(place.east_m.atan2(place.north_m)));
+        let far = place.east_m.hypot(place.north_m);
+        format!("{far:.1} m {} of the pier", compass(way))
+    });
+    let said: Vec<String> = slit.into_iter().chain(height).chain(aside).collect();
+    let wordings = [
+        said.join(", "),
+        said.join(", ").replace(" above the floor", " up"),
+    ];
+    (!said.is_empty()).then(|| fitting(&wordings, width).to_owned())
 }

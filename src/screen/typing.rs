@@ -85,11 +85,17 @@ fn added(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
     if let Some(event) = taken {
         return record(event, "it was in the list already", Mode::Stepping);
     }
-    let said = format!("{} stands at the end of the list", target.name);
-    let event = Event::TargetAdded {
-        target: Box::new(ListedTarget::from(target)),
+    let said = format!("{} stands at the end of the list now", target.name);
+    let target = Box::new(ListedTarget::from(target));
+    let place = targets.len() + 1;
+    let added = Event::TargetAdded {
+        target: target.clone(),
     };
-    record(event, said, Mode::Stepping)
+    let mut doings = record(added, "", Mode::Stepping);
+    // what is looked up is wanted now
+    let taken = Event::TargetTaken { place, target };
+    doings.extend(record(taken, said, Mode::Stepping));
+    doings
 }
 
 fn sun_risk(panel: &mut Panel, scene: &Scene<'_>, text: &str) -> Vec<Doing> {

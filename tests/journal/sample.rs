@@ -2,7 +2,8 @@
 
 use nonius::metal::Side;
 use nonius::night::{
-    Circle, Event, ListedPlace, ListedTarget, Opening, Setting, ShownAxes, StarReading,
+    Circle, EarlierNight, Event, ListedPlace, ListedTarget, Opening, Setting, ShownAxes,
+    StarReading, StartedFrom,
 };
 use nonius::time::Utc;
 use proptest::prelude::*;
@@ -148,7 +149,29 @@ pub fn every_kind() -> Vec<Event> {
         Event::Undone { line: 15 },
         Event::SessionClosed,
         Event::SessionResumed,
+        Event::AxisAdjusted,
+        Event::StartedFrom {
+            earlier: Some(Box::new(started_from(true))),
+        },
     ]
+}
+
+/// What a night before taught of the mount.
+pub fn started_from(moved: bool) -> StartedFrom {
+    let errors_arcmin = vec![206.9, -94.8, 13.1, -19.1, 8.2, -5.8, 0.3];
+    let square = |row, column| if row == column { 4.0 } else { -0.5 };
+    let row = |row| (0..7).map(|column| square(row, column)).collect();
+    StartedFrom {
+        earlier: EarlierNight {
+            night: "2026-11-30".to_owned(),
+            stars: 6,
+            errors_arcmin,
+            covariance_arcmin2: (0..7).map(row).collect(),
+        },
+        moved,
+        hour_index_free: false,
+        dec_index_free: true,
+    }
 }
 
 fn name() -> impl Strategy<Value = String> {
@@ -198,6 +221,10 @@ pub fn an_act() -> impl Strategy<Value = Event> {
         (a_circle(), prop::option::of(a_reading()))
             .prop_map(|(circle, reading)| Event::RingSet { circle, reading }),
         (-3600.0..3600.0).prop_map(|seconds| Event::ClockCorrected { seconds }),
+        Just(Event::AxisAdjusted),
+        prop::option::of(any::<bool>()).prop_map(|moved| Event::StartedFrom {
+            earlier: moved.map(|moved| Box::new(started_from(moved))),
+        }),
         a_side().prop_map(|side| Event::SideChanged { side }),
         name().prop_map(|target| Event::SunRiskAcknowledged { target }),
     ]
