@@ -3,7 +3,7 @@
 //! The options come from the command line's own description, the keys from the screen's own table;
 //! what neither says stands here.
 
-use std::io::{self, Write};
+use std::io::{self, IsTerminal as _, Write};
 
 use clap::CommandFactory as _;
 use clap_mangen::Man;
@@ -74,7 +74,13 @@ pub fn run(out: &mut dyn Write) -> anyhow::Result<()> {
         }
         roff.to_writer(&mut page)?;
     }
-    Ok(out.write_all(&page)?)
+    out.write_all(&page)?;
+    if io::stdout().is_terminal() {
+        // at a terminal the page is of no use as it is
+        let hint = "this is the page as man reads it: nonius manual | man -l -";
+        let _ = writeln!(io::stderr(), "{hint}");
+    }
+    Ok(())
 }
 
 /// A command with the options of its own; those that every command shares are said once.

@@ -20,6 +20,7 @@ pub mod layout;
 pub mod light;
 pub mod lists;
 pub mod look;
+pub mod objects;
 pub mod observatory;
 pub mod outlook;
 pub mod panel;

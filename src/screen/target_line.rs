@@ -22,6 +22,17 @@ pub fn draw(look: Look, buffer: &mut Buffer, row: Rect, target: &Target, beside:
     look.left(buffer, rest, &description(target), Strength::Plain);
 }
 
+/// The observer's note, where the line is too short for it.
+#[must_use]
+pub fn note_cut<'t>(row: Rect, target: &'t Target, beside: &str) -> &'t str {
+    let whole = columns(&target.name) + 2 + columns(&description(target)) + 1 + columns(beside);
+    if whole > usize::from(row.width) {
+        &target.note
+    } else {
+        ""
+    }
+}
+
 /// What the object is: kind, constellation, magnitude, size, the observer's note.
 #[must_use]
 pub fn description(target: &Target) -> String {

@@ -82,8 +82,9 @@ fn going(outlook: Outlook, zone: CivilZone) -> String {
     }
 }
 
-/// Draws the cautions, the gravest first, and where slit and eyepiece stand if there is room.
-pub fn draw_cautions(look: Look, buffer: &mut Buffer, area: Rect, dial: &Dial) {
+/// Draws the cautions, the gravest first; and if there is room, where slit and eyepiece stand, and the
+/// observer's note.
+pub fn draw_cautions(look: Look, buffer: &mut Buffer, area: Rect, dial: &Dial, note: &str) {
     let width = usize::from(area.width).saturating_sub(2);
     let mut lines: Vec<(String, Strength)> = Vec::new();
     for caution in &dial.cautions {
@@ -96,6 +97,8 @@ pub fn draw_cautions(look: Look, buffer: &mut Buffer, area: Rect, dial: &Dial) {
         let around = wrapped(&line, usize::from(area.width));
         lines.extend(around.into_iter().map(|line| (line, Strength::Plain)));
     }
+    let noted = wrapped(note, usize::from(area.width));
+    lines.extend(noted.into_iter().map(|line| (line, Strength::Plain)));
     for ((line, strength), row) in lines.iter().zip(area.rows()) {
         look.left(buffer, row, line, *strength);
     }

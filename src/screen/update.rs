@@ -11,7 +11,7 @@ use crate::screen::happening::{Happening, Stroke};
 use crate::screen::keys::{self, Act, DOUBLE_STRIKE, Mode};
 use crate::screen::panel::{Centred, Doing, Panel};
 use crate::screen::shown::{From, Settings, Shown};
-use crate::screen::typing;
+use crate::screen::{objects, typing};
 use crate::time::Utc;
 
 /// What a happening is held against.
@@ -73,6 +73,7 @@ fn struck(panel: &mut Panel, scene: &Scene<'_>, stroke: Stroke) -> Vec<Doing> {
             Vec::new()
         }
         Mode::Calibration => calibrating(panel, scene, act),
+        Mode::Objects => objects::looking(panel, scene, act),
         _ => typing::typing(panel, scene, act),
     };
     if doings
@@ -178,6 +179,10 @@ fn acted(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
         }
         Act::Star => entered(panel, Mode::ChoosingStar),
         Act::Calibration => entered(panel, Mode::Calibration),
+        Act::Objects => {
+            objects::open(panel, night.state());
+            Vec::new()
+        }
         Act::Search => entered(panel, Mode::Searching),
         Act::Note => entered(panel, Mode::Noting),
         Act::Clock => entered(panel, Mode::Clock),

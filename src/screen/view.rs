@@ -14,7 +14,7 @@ use crate::screen::reading::{Line, TypedReading};
 use crate::screen::shown::{From, Settings, Shown};
 use crate::screen::target_line::{self, place_in_list};
 use crate::screen::update::SUN_WORD;
-use crate::screen::{calibration, circle, entry, help, lists, stopped, truth};
+use crate::screen::{calibration, circle, entry, help, lists, objects, stopped, truth};
 
 /// Draws the screen.
 pub fn view(look: Look, buffer: &mut Buffer, from: &From<'_>, shown: &Shown) {
@@ -73,7 +73,8 @@ fn draw_body(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown
         Mode::Searching => lists::draw_matches(look, buffer, body, panel, &shown.matches),
         Mode::Reading => draw_reading(look, buffer, body, from, shown),
         Mode::Calibration => calibration::draw(look, buffer, body, from, shown),
-        Mode::Doubting | Mode::Sweeping | Mode::Objects => {}
+        Mode::Objects => objects::draw(look, buffer, body, from),
+        Mode::Doubting | Mode::Sweeping => {}
         Mode::Help => help::draw(look, buffer, body, panel.help_from, panel.help_page),
         Mode::Noting => {
             let about = shown.target.as_ref().map_or("the night", |t| &t.name);
@@ -152,7 +153,11 @@ fn draw_settings(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, s
         cautions.y += 1;
         cautions.height = cautions.height.saturating_sub(1);
     }
-    truth::draw_cautions(look, buffer, cautions, dial);
+    let target = shown.target.as_ref();
+    let note = target.map_or("", |target| {
+        target_line::note_cut(regions.target, target, &beside)
+    });
+    truth::draw_cautions(look, buffer, cautions, dial, note);
 }
 
 fn pretended(shown: &Shown, width: usize) -> Option<String> {

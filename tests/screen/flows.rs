@@ -308,16 +308,17 @@ fn the_other_side_of_the_pier_and_back() {
 #[test]
 fn the_clock_is_corrected_by_what_is_typed_and_said_ever_after() {
     let scene = Scene::at(EVENING, 80, 24);
-    assert!(scene.play("c 2.5 <enter>").says("(+2.5 s)"));
+    assert!(scene.play("k 2.5 <enter>").says("(+2.5 s)"));
     // what is typed is how far the corrected clock is off
-    assert!(scene.play("c -1 <enter>").says("(+1.5 s)"));
-    assert!(scene.play("c now <enter>").says("type seconds"));
+    assert!(scene.play("k -1 <enter>").says("(+1.5 s)"));
+    assert!(scene.play("k now <enter>").says("type seconds"));
 }
 
 #[test]
 fn the_keys_are_listed_and_the_list_is_left_by_any_key() {
     let scene = Scene::at(EVENING, 60, 20);
     insta::assert_snapshot!("the_keys", scene.play("?").text());
+    insta::assert_snapshot!("more_of_the_keys", scene.play("? <space>").text());
     assert!(scene.play("? x").says("press s to read a star"));
 }
 
@@ -341,4 +342,40 @@ fn the_end_of_the_list_is_said() {
             .says("this is the end of the list")
     );
     assert!(scene.play("b").says("this is the head of the list"));
+}
+
+#[test]
+fn the_list_shows_what_became_of_it_and_is_gone_through_by_hand() {
+    let scene = Scene::at(EVENING, 80, 24).with_list(&["M 37", "M 31", "M 7", "M 42"]);
+    scene.play("<space> f");
+    insta::assert_snapshot!("the_list", scene.play("o <down>").text());
+    let picture = scene.play("o <down> <enter>");
+    assert!(picture.says("2 of 4"), "{}", picture.text());
+}
+
+#[test]
+fn what_is_looked_up_is_dialled_at_once() {
+    let scene = Scene::at(EVENING, 80, 24);
+    let picture = scene.play("<space> / m45 <enter>");
+    assert!(
+        picture.says("M 45") && picture.says("5 of 5"),
+        "{}",
+        picture.text()
+    );
+}
+
+#[test]
+fn a_star_timed_on_a_mark_is_known_better_than_one_looked_at() {
+    let mut scene = Scene::at(EVENING, 80, 24);
+    scene.observatory.mount.hour_circle.vernier = None;
+    // no mark of the circle: they are 4 minutes apart
+    let picture = scene.play("s capella <enter> d 17h58m20s <enter>");
+    assert!(picture.says("read on a mark"), "{}", picture.text());
+    scene.play("s capella <enter> d 17h56m <enter> 44d15N <enter>");
+    let (session, _) = scene.session();
+    let readings = &session.night().state().readings;
+    assert!(readings[0].reading.timed, "{readings:?}");
+    // 2 s of time and a twentieth of four minutes, not 0.15 of four minutes
+    let sigma_s = readings[0].reading.hour_sigma_deg * 240.0;
+    assert!((sigma_s - 12.2).abs() < 0.1, "{sigma_s} s");
 }
