@@ -127,8 +127,12 @@ impl Station {
         }
     }
 
-    /// Goes by what a night's journal knows of the mount, on top of the file of readings.
+    /// Goes by what a night's journal knows of the mount, on top of the file of readings. A journal not
+    /// begun yet knows nothing.
     pub fn follow(&mut self, journal: &Path) -> anyhow::Result<()> {
+        if !journal.exists() {
+            return Ok(());
+        }
         let night = Night::replay(journal::read(journal)?.events);
         if let Some(opening) = &night.state().opening {
             whose(opening, (&self.site.id, &self.mount_id))?;

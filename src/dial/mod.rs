@@ -74,7 +74,12 @@ pub fn dial(setup: &Setup<'_>, moment: &Moment, target: &Target) -> Result<Dial,
             hour: prediction.hour_sigma(),
             dec: prediction.dec_sigma(),
         },
-        chances: chances(mount, &prediction),
+        chances: chances(mount, &prediction, mount.hour_circle.look_error()),
+        chances_on_the_mark: if mount.hour_circle.stands_still() {
+            chances(mount, &prediction, mount.hour_circle.timed_error())
+        } else {
+            Vec::new()
+        },
         swing: tube_now.map(|from| Swing::between(from, axes)),
         slit: mount
             .dome
@@ -123,9 +128,9 @@ fn dec_setting(mount: &Mount, shown: AxisAngle) -> DeclinationSetting {
     }
 }
 
-/// The chance for each optic, the setting of both circles included.
-fn chances(mount: &Mount, prediction: &Prediction) -> Vec<Chance> {
-    let hour = mount.hour_circle.look_error();
+/// The chance for each optic, the setting of both circles included: that of the hour circle is `hour`,
+/// 1 sigma.
+fn chances(mount: &Mount, prediction: &Prediction, hour: Angle) -> Vec<Chance> {
     let dec = mount.declination_circle.look_error();
     let covariance = prediction.sky_with_setting(hour, dec);
     let of = |optic: &Optic| Chance {

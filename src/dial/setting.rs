@@ -68,6 +68,9 @@ pub struct Dial {
     pub uncertainty: Uncertainty,
     /// The chance for each optic.
     pub chances: Vec<Chance>,
+    /// The same with the hour circle set exactly on the next mark and the object let drift in; none
+    /// where the ring rides with the drive.
+    pub chances_on_the_mark: Vec<Chance>,
     /// How far to swing from where the tube was last known to be.
     pub swing: Option<Swing>,
     /// Where the slit must stand.

@@ -12,6 +12,9 @@ use crate::screen::outlook::Outlook;
 use crate::screen::words::{chance, compass, rough};
 use crate::time::CivilZone;
 
+/// Waiting on the mark is worth naming from so much more chance on.
+const WORTH_WAITING: f64 = 0.03;
+
 /// Draws the two lines of truth.
 pub fn draw(
     look: Look,
@@ -46,10 +49,18 @@ pub fn draw(
     ];
     let line = fitting(&wordings, usize::from(room.width));
     look.left(buffer, room, line, Strength::Plain);
+    let on_the_mark = dial.chances_on_the_mark.iter().map(|each| each.probability);
     let chances: Vec<String> = dial
         .chances
         .iter()
-        .map(|each| format!("{} {}", each.optic, chance(each.probability)))
+        .zip(on_the_mark.map(Some).chain(std::iter::repeat(None)))
+        .map(|(each, on_the_mark)| {
+            let gained = on_the_mark.filter(|better| better - each.probability > WORTH_WAITING);
+            let mark = gained.map_or_else(String::new, |better| {
+                format!(", {} on the mark", chance(better))
+            });
+            format!("{} {}{mark}", each.optic, chance(each.probability))
+        })
         .collect();
     if has_chances(dial, calibrated) {
         let line = format!("at the first look: {}", chances.join("   "));
