@@ -108,7 +108,7 @@ fn opening(station: &Station, list: Option<String>, targets: Vec<ListedTarget>) 
 fn earlier_night(station: &Station, now: Utc) -> Option<EarlierNight> {
     let evening = station.site.zone.night(now).to_string();
     let whose = (station.site.id.as_str(), station.mount_id.as_str());
-    let (date, night) = last_before(&station.folders.nights(), &evening, whose)?;
+    let (date, night) = last_before(station.folders.nights(), &evening, whose)?;
     let known = Known::of(&station.grounds(), night.state());
     Some(EarlierNight::of(&date, &known.estimate))
 }

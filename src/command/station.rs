@@ -145,7 +145,7 @@ impl Station {
         let known = Known::of(&grounds, night.state());
         self.estimate = known.estimate;
         self.calibrated_at = known.read_at;
-        let shown = night.state().tube.map(|tube| TubePlace {
+        let shown = night.state().tube.as_ref().map(|tube| TubePlace {
             axes: tube.axes.into(),
             utc: tube.utc,
             side: tube.side,

@@ -4,7 +4,7 @@ use crate::angle::{Angle, HourAngle};
 use crate::dial::caution::{Caution, CautionCode};
 use crate::dial::setup::Setup;
 use crate::dial::sun;
-use crate::metal::{Axes, HourAngleSpan, Side};
+use crate::metal::{Axes, HourAngleSpan, MountErrors, Side};
 use crate::sky::{Body, Moment, Observed, Source};
 
 /// Below this the air spoils the view and refraction grows uncertain (common practice, no source).
@@ -180,8 +180,16 @@ fn pole_caution(observed: &Observed) -> Option<Caution> {
 }
 
 fn calibration_caution(setup: &Setup<'_>, moment: &Moment) -> Option<Caution> {
-    if !setup.estimate.is_calibrated() {
-        let text = "no star has been read yet: these are the settings of a perfect mount";
+    let estimate = setup.estimate;
+    if !estimate.is_calibrated() {
+        let text = match (estimate.knows_hour_zero(), estimate.knows_dec_zero()) {
+            (false, true) => "the zero of the hour circle is not known: read a star",
+            (true, false) => "the zero of the declination circle is not known: read a star",
+            _ if estimate.errors() != MountErrors::default() => {
+                "the zeros of the circles are not known: read a star"
+            }
+            _ => "no star has been read yet: these are the settings of a perfect mount",
+        };
         return Some(Caution::new(CautionCode::Uncalibrated, text));
     }
     let hours = moment.utc().seconds_since(setup.calibrated_at?) / 3600.0;

@@ -58,8 +58,19 @@ impl Estimate {
     /// True once it is known where the circles' zeros are: from a sight, or from an earlier night.
     #[must_use]
     pub fn is_calibrated(&self) -> bool {
-        let known = |place| self.covariance[(place, place)].sqrt() < KNOWN_INDEX.radians();
-        self.sights_used > 0 || (known(0) && known(1))
+        self.sights_used > 0 || (self.knows_hour_zero() && self.knows_dec_zero())
+    }
+
+    /// True if the zero of the hour circle is known.
+    #[must_use]
+    pub fn knows_hour_zero(&self) -> bool {
+        self.covariance[(0, 0)].sqrt() < KNOWN_INDEX.radians()
+    }
+
+    /// True if the zero of the declination circle is known.
+    #[must_use]
+    pub fn knows_dec_zero(&self) -> bool {
+        self.covariance[(1, 1)].sqrt() < KNOWN_INDEX.radians()
     }
 
     /// What the axes must show to look at an observed place (refraction included), and how sure that is.

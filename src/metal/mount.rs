@@ -129,3 +129,13 @@ pub struct Mount {
     /// Its finder and eyepieces, in the order they are tried.
     pub optics: Vec<Optic>,
 }
+
+impl Mount {
+    /// True if an hour angle can be reached, from one side of the pier at least.
+    #[must_use]
+    pub fn reaches(&self, hour_angle: HourAngle) -> bool {
+        let on = |span: Option<HourAngleSpan>| span.is_none_or(|span| span.contains(hour_angle));
+        let limits = &self.limits;
+        on(limits.tube_west) || (self.kind.has_two_sides() && on(limits.tube_east))
+    }
+}

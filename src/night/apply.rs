@@ -37,14 +37,14 @@ impl State {
                 reading,
             } => {
                 self.change(target, |entry| entry.outcome = Some(Outcome::Found(utc)));
-                self.set_to(setting.as_ref(), utc);
+                self.set_to(target, setting.as_ref(), utc);
                 if let Some(reading) = reading {
                     self.read(line, utc, reading);
                 }
             }
             Event::Missed { target, setting } => {
                 self.change(target, |entry| entry.outcome = Some(Outcome::Missed(utc)));
-                self.set_to(setting.as_ref(), utc);
+                self.set_to(target, setting.as_ref(), utc);
             }
             Event::Note { target, text } => match target {
                 Some(name) => self.change(name, |entry| entry.notes.push(text.clone())),
@@ -129,16 +129,28 @@ impl State {
     }
 
     /// The tube was set by the circles, as told.
-    fn set_to(&mut self, setting: Option<&Setting>, utc: Utc) {
+    fn set_to(&mut self, target: &str, setting: Option<&Setting>, utc: Utc) {
         if let Some(&Setting { axes, side, .. }) = setting {
-            self.tube = Some(TubeShown { axes, side, utc });
+            let at = target.to_owned();
+            self.tube = Some(TubeShown {
+                at,
+                axes,
+                side,
+                utc,
+            });
         }
     }
 
     fn read(&mut self, line: u64, utc: Utc, reading: &StarReading) {
         if let Some(axes) = reading.shown() {
             let side = reading.side;
-            self.tube = Some(TubeShown { axes, side, utc });
+            let at = reading.star.clone();
+            self.tube = Some(TubeShown {
+                at,
+                axes,
+                side,
+                utc,
+            });
         }
         self.readings.push(NightReading {
             line,

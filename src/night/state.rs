@@ -90,8 +90,10 @@ pub struct NightReading {
 }
 
 /// Where the tube was last known to be, by what the circles showed.
-#[derive(Clone, Copy, Debug, PartialEq)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct TubeShown {
+    /// What it looked at.
+    pub at: String,
     /// The shown axis angles.
     pub axes: ShownAxes,
     /// The side of the pier.

@@ -37,6 +37,8 @@ pub struct Circles<'c> {
     pub zone: CivilZone,
     /// The side the tube is known to be on.
     pub tube: Option<Side>,
+    /// What it was last known to look at.
+    pub tube_at: &'c str,
 }
 
 /// Draws both circles.
@@ -66,6 +68,7 @@ fn draw_hour(
         sidereal,
         zone,
         tube,
+        ..
     } = circles;
     let circle = &mount.hour_circle;
     let scale = circle.scale();
@@ -151,7 +154,10 @@ fn draw_dec(
         label: "declination circle",
         figures,
         lies: lies(&scale.graduation(dial.dec.reading)),
-        mark: Vec::new(),
+        mark: match dial.swing {
+            Some(_) => vec![format!("from {}:", circles.tube_at)],
+            None => Vec::new(),
+        },
         swing,
     };
     draw_words(look, buffer, at, &pane);

@@ -75,6 +75,18 @@ pub fn draw(look: Look, buffer: &mut Buffer, area: Rect, header: &Header<'_>) {
     };
     let civil = format!("civil {}{corrected}", civil.format("%H %M %S"));
     let utc = format!("UTC {}", header.utc.chrono().format("%H %M %S"));
+    let narrower = columns(&civil) + 1 + columns(&utc) > usize::from(middle.width);
+    #[allow(clippy::cast_possible_truncation)] // within the row
+    let early = (columns(&sidereal) + 2) as u16;
+    let middle = if narrower && early < second.width {
+        Rect {
+            x: second.x + early,
+            width: second.width - early,
+            ..*second
+        }
+    } else {
+        middle
+    };
     look.left(buffer, middle, &civil, Strength::Plain);
     look.right(buffer, *second, &utc, Strength::Plain);
 }

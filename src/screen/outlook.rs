@@ -1,4 +1,5 @@
-//! Where an object is going: rising or setting, and until when it stays clear of the horizon mask.
+//! Where an object is going: rising or setting, and until when it stays clear of the horizon mask
+//! and within the mount's reach.
 
 use crate::screen::observatory::Observatory;
 use crate::sky::{Moment, Observed, Source};
@@ -9,7 +10,7 @@ use crate::time::Utc;
 pub struct Outlook {
     /// Its altitude grows.
     pub rising: bool,
-    /// It is clear of the horizon mask now.
+    /// It is clear of the horizon mask now, and within the mount's reach.
     pub clear: bool,
     /// When that changes, within a day.
     pub changes: Option<Utc>,
@@ -30,9 +31,13 @@ impl Outlook {
             let then = moment.later(seconds);
             then.observed(&then.apparent(source))
         };
+        let limits = &observatory.mount.limits;
+        let lowest = limits.lowest_altitude.unwrap_or_default();
         let clear = |place: &Observed| {
             place.altitude.degrees() > 0.0
+                && place.altitude >= lowest
                 && place.altitude > observatory.horizon.altitude_at(place.azimuth)
+                && observatory.mount.reaches(place.hour_angle)
         };
         let now = at(0.0);
         let clear_now = clear(&now);

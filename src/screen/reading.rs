@@ -92,9 +92,13 @@ impl Sitting<'_> {
             _ => None,
         };
         TypedReading {
-            hour: self.line(hour, mount.hour_circle.scale(), off(|held| held.hour_off)),
+            hour: self.line(
+                (hour_text, hour),
+                mount.hour_circle.scale(),
+                off(|held| held.hour_off),
+            ),
             dec: self.line(
-                dec,
+                (dec_text, dec),
                 mount.declination_circle.scale(),
                 off(|held| held.dec_off),
             ),
@@ -154,7 +158,7 @@ impl Sitting<'_> {
 
     fn line(
         &self,
-        typed: Option<Result<Reading, TextFault>>,
+        (text, typed): (&str, Option<Result<Reading, TextFault>>),
         scale: Scale,
         off: Option<Angle>,
     ) -> Line {
@@ -169,7 +173,9 @@ impl Sitting<'_> {
                     Some(off) => format!("; {} from a perfect mount", rough(off)),
                     None => String::new(),
                 };
-                Line::Understood(format!("{}{expected}", scale.understood(reading)))
+                let decimal = if is_decimal(text) { " by decimals" } else { "" };
+                let understood = scale.understood(reading);
+                Line::Understood(format!("{understood}{decimal}{expected}"))
             }
         }
     }
@@ -225,6 +231,16 @@ impl Sitting<'_> {
 /// Nothing for an empty text, else what it is read as.
 fn some<T>(text: &str, read: impl Fn(&str) -> T) -> Option<T> {
     (!text.trim().is_empty()).then(|| read(text))
+}
+
+/// True for one number with decimals: `40.40`, which may have been meant as `40 40`.
+fn is_decimal(text: &str) -> bool {
+    let mut words = text.split_whitespace();
+    let number = words.next().is_some_and(|word| {
+        let digits = word.trim_end_matches(|c: char| c.is_alphabetic());
+        digits.contains(['.', ',']) && digits.parse::<f64>().is_ok()
+    });
+    number && words.all(|word| word.chars().all(char::is_alphabetic))
 }
 
 fn degrees(axes: &[AxisAngle]) -> Vec<f64> {

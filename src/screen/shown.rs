@@ -157,7 +157,8 @@ impl From<'_> {
         };
         match dial::dial(&setup, &observatory.lead(self.moment), target) {
             Ok(dial) => {
-                let stopped = stopped(&dial, accepted, self.rises(outlook));
+                let forced = state.side.is_some();
+                let stopped = stopped(&dial, accepted, &self.rises(outlook), forced);
                 stopped.unwrap_or_else(|| Settings::Dialled(Box::new(dial)))
             }
             Err(NotDialled::TheSun | NotDialled::SunNear { .. }) => {
@@ -187,7 +188,7 @@ impl From<'_> {
             self.bright,
             self.moment,
             request(state),
-            state.tube.map(|tube| tube.side),
+            state.tube.as_ref().map(|tube| tube.side),
             typed,
         )
     }
@@ -219,7 +220,7 @@ impl From<'_> {
     pub fn reading_side(&self, moment: &Moment, target: &Target) -> Option<Side> {
         let state = self.night.state();
         let place = moment.observed(&moment.apparent(&target.source));
-        let present = state.tube.map(|tube| tube.side);
+        let present = state.tube.as_ref().map(|tube| tube.side);
         self.observatory
             .mount
             .choose_side(request(state), place.hour_angle, present)
@@ -266,7 +267,16 @@ impl From<'_> {
     }
 }
 
+/// The heading over an object below the horizon.
+const NOT_UP: &str = "not up";
+
 impl Shown {
+    /// True if the object being dialled is below the horizon.
+    #[must_use]
+    pub fn is_not_up(&self) -> bool {
+        matches!(&self.settings, Settings::Stopped { heading, .. } if *heading == NOT_UP)
+    }
+
     /// The settings shown, for the record.
     #[must_use]
     pub fn setting(&self) -> Option<Setting> {
@@ -289,7 +299,7 @@ pub fn request(state: &State) -> SideRequest {
 }
 
 fn tube(state: &State) -> Option<TubePlace> {
-    let shown = state.tube?;
+    let shown = state.tube.as_ref()?;
     Some(TubePlace {
         axes: shown.axes.into(),
         utc: shown.utc,
@@ -298,7 +308,12 @@ fn tube(state: &State) -> Option<TubePlace> {
 }
 
 /// What stops settings that could be followed to someone's harm.
-fn stopped(dial: &Dial, sun_risk_accepted: bool, rises: String) -> Option<Settings> {
+fn stopped(
+    dial: &Dial,
+    sun_risk_accepted: bool,
+    rises: &str,
+    side_is_forced: bool,
+) -> Option<Settings> {
     let caution = dial.cautions.iter().find(|caution| match caution.code {
         CautionCode::NearSun => !sun_risk_accepted,
         CautionCode::BelowHorizon | CautionCode::BeyondLimit => true,
@@ -307,13 +322,17 @@ fn stopped(dial: &Dial, sun_risk_accepted: bool, rises: String) -> Option<Settin
     Some(match caution.code {
         CautionCode::NearSun => near_the_sun(&caution.text),
         CautionCode::BelowHorizon => Settings::Stopped {
-            heading: "not up",
-            words: caution.text.clone() + &rises,
+            heading: NOT_UP,
+            words: caution.text.clone() + rises,
             answerable: false,
         },
         _ => Settings::Stopped {
             heading: "out of reach",
-            words: caution.text.clone(),
+            words: if side_is_forced {
+                format!("{}. t goes back to the usual side", caution.text)
+            } else {
+                caution.text.clone()
+            },
             answerable: false,
         },
     })

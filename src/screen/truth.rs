@@ -40,7 +40,7 @@ pub fn draw(
     let going = outlook.map_or_else(String::new, |outlook| going(outlook, zone));
     let azimuth = format!(
         "azimuth {:.0}° {}",
-        observed.azimuth.degrees(),
+        observed.azimuth.degrees().round() % 360.0,
         compass(observed.azimuth)
     );
     let wordings = [
@@ -121,7 +121,7 @@ fn places(dial: &Dial, width: usize) -> Option<String> {
     let slit = dial.slit.map(|slit| {
         format!(
             "slit toward {:.0}° {}, {:.0}° up",
-            slit.azimuth.degrees(),
+            slit.azimuth.degrees().round() % 360.0,
             compass(slit.azimuth),
             slit.altitude.degrees()
         )

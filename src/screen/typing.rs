@@ -138,10 +138,13 @@ fn clock(panel: &mut Panel, scene: &Scene<'_>, text: &str) -> Vec<Doing> {
 
 fn ring(panel: &mut Panel, text: &str) -> Vec<Doing> {
     let (circle, said) = match text {
-        "h" | "hour" => (Circle::Hour, "hour circle: read a star for its new zero"),
+        "h" | "hour" => (
+            Circle::Hour,
+            "hour circle: zero not known now, read a star; the rest is kept",
+        ),
         "d" | "declination" => (
             Circle::Declination,
-            "declination circle: read a star for its new zero",
+            "declination circle: zero not known now, read a star; the rest is kept",
         ),
         _ => {
             panel.say("type h or d");

@@ -5,7 +5,7 @@
 
 use crossterm::event::KeyCode;
 
-use crate::night::{Event, Night, NightTarget};
+use crate::night::{Event, Night, NightTarget, Outcome};
 use crate::screen::calibrating::calibrating;
 use crate::screen::happening::{Happening, Stroke};
 use crate::screen::keys::{self, Act, DOUBLE_STRIKE, Mode};
@@ -117,6 +117,14 @@ fn acted(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
     match act {
         Act::Next => record_or_say(panel, night.next(), "", "this is the end of the list"),
         Act::Back => record_or_say(panel, night.back(), "", "this is the head of the list"),
+        Act::Found if was_found(night) => {
+            panel.say("found already: u takes it back, r reads the circles on it");
+            Vec::new()
+        }
+        Act::Found if scene.shown.is_not_up() => {
+            panel.say("it is not up: what is in the eyepiece is something else");
+            Vec::new()
+        }
         Act::Found => {
             let event = night.found(scene.shown.setting(), None);
             let said = format!("found: {}", current(night));
@@ -196,6 +204,11 @@ const NO_OBJECT: &str = "no object is being dialled: press space for the first";
 pub(super) fn entered(panel: &mut Panel, mode: Mode) -> Vec<Doing> {
     panel.enter(mode);
     Vec::new()
+}
+
+fn was_found(night: &Night) -> bool {
+    let current = night.state().current_target();
+    current.is_some_and(|entry| matches!(entry.outcome, Some(Outcome::Found(_))))
 }
 
 fn current(night: &Night) -> &str {

@@ -49,7 +49,7 @@ fn draw_header(look: Look, buffer: &mut Buffer, area: Rect, from: &From<'_>, sho
     let state = from.night.state();
     let side = match &shown.settings {
         Settings::Dialled(dial) => Some(dial.side),
-        _ => state.side.or(state.tube.map(|tube| tube.side)),
+        _ => state.side.or(state.tube.as_ref().map(|tube| tube.side)),
     };
     let header = Header {
         site: &from.observatory.site,
@@ -129,7 +129,8 @@ fn draw_settings(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, s
         dial,
         sidereal,
         zone,
-        tube: state.tube.map(|tube| tube.side),
+        tube: state.tube.as_ref().map(|tube| tube.side),
+        tube_at: state.tube.as_ref().map_or("", |tube| &tube.at),
     };
     circle::draw(look, buffer, &regions.hour, &regions.dec, &circles);
     look.rule(buffer, regions.rule);

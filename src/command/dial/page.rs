@@ -100,7 +100,7 @@ fn setting(station: &Station, target: &Target, dial: &Dial, out: &mut dyn Write)
             "slit",
             &format!(
                 "azimuth {:.0}°, altitude {:.0}°",
-                slit.azimuth.degrees(),
+                slit.azimuth.degrees().round() % 360.0,
                 slit.altitude.degrees()
             ),
         )?;

@@ -76,7 +76,7 @@ pub(super) fn stand(dial: &Dial) -> String {
     format!(
         "altitude {:.0}°, azimuth {:.0}° ({})",
         observed.altitude.degrees(),
-        observed.azimuth.degrees(),
+        observed.azimuth.degrees().round() % 360.0,
         compass(observed.azimuth)
     )
 }
