@@ -13,6 +13,7 @@
 mod air;
 mod body;
 mod catalogue_place;
+mod crossing;
 mod earth;
 mod equinox;
 mod fk4;
@@ -21,6 +22,7 @@ mod moment;
 mod observer;
 mod place;
 pub mod refraction;
+mod rise_set;
 #[cfg(test)]
 mod samples;
 mod through_air;
@@ -29,8 +31,10 @@ mod vector;
 pub use air::Air;
 pub use body::Body;
 pub use catalogue_place::{CataloguePlace, Equinox};
+pub use crossing::{Crossing, crossings};
 pub use equinox::EquinoxFault;
 pub use horizon::HorizonMask;
 pub use moment::Moment;
 pub use observer::Observer;
 pub use place::{Apparent, Observed, Source, separation};
+pub use rise_set::{Passage, Transit, Twilight};

@@ -11,6 +11,7 @@ mod mount;
 mod observing;
 mod published;
 mod refraction;
+mod rise_set;
 mod stages;
 mod stars;
 mod table;
