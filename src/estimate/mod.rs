@@ -7,6 +7,7 @@
 pub mod chance;
 mod descent;
 pub mod fit;
+pub mod next_star;
 pub mod prediction;
 pub mod prior;
 mod resolve;
@@ -16,6 +17,7 @@ pub mod sight;
 pub use chance::chance;
 pub use descent::{GROSS_SIGMAS, TRUSTED_SIGMAS};
 pub use fit::{Fit, fit};
+pub use next_star::{Offered, Station, Wanted};
 pub use prediction::{Estimate, Prediction};
 pub use prior::{Covariance, Prior};
 pub use sight::{Residual, Sight, nearest};
