@@ -11,6 +11,7 @@ use crate::metal::{Mount, Optic, Side, TubeDirections, to_axes};
 use crate::sky::{Body, Moment, Observed, Source};
 
 pub mod caution;
+pub mod doubt;
 pub mod json;
 pub mod mark;
 mod outlook;
@@ -24,6 +25,7 @@ pub mod tube;
 pub mod withheld;
 
 pub use caution::{Caution, CautionCode};
+pub use doubt::{Circumstances, Correction, Explanation, Questioned, Suspicion};
 pub use mark::NextMark;
 pub use setting::{Chance, DeclinationSetting, Dial, HourSetting, Uncertainty};
 pub use setup::Setup;

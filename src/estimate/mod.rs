@@ -13,6 +13,7 @@ pub mod prior;
 mod resolve;
 mod search;
 pub mod sight;
+pub mod suspicion;
 
 pub use chance::chance;
 pub use descent::{GROSS_SIGMAS, TRUSTED_SIGMAS};
@@ -21,3 +22,4 @@ pub use next_star::{Offered, Station, Wanted};
 pub use prediction::{Estimate, Prediction};
 pub use prior::{Covariance, Prior};
 pub use sight::{Residual, Sight, nearest};
+pub use suspicion::{Held, SUSPICIOUS, Slipped, ln_sum};
