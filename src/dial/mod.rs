@@ -25,7 +25,7 @@ pub mod tube;
 pub mod withheld;
 
 pub use caution::{Caution, CautionCode};
-pub use doubt::{Circumstances, Correction, Explanation, Questioned, Suspicion};
+pub use doubt::{Circumstances, Correction, Earlier, Explanation, Questioned, Suspicion};
 pub use mark::NextMark;
 pub use setting::{Chance, DeclinationSetting, Dial, HourSetting, Uncertainty};
 pub use setup::Setup;

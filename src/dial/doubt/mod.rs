@@ -1,10 +1,11 @@
 //! An improbable reading: what may have happened, the likeliest first, each with the correction it asks for.
 //!
-//! [`Questioned::suspicion`] holds one new reading against the estimate so far; [`suspicions`] looks over a whole set of
+//! [`Questioned::suspicion`] holds one new reading against the readings before; [`suspicions`] looks over a whole set of
 //! readings, of which any may be the wrong one. Nothing is taken or dropped here: the observer chooses.
 
 mod account;
 mod circles;
+mod earlier;
 mod explanation;
 mod rows;
 mod stars;
@@ -18,6 +19,7 @@ use crate::estimate::{Estimate, Held, Sight, Slipped};
 use crate::metal::{Mount, Scale};
 use crate::sky::Moment;
 
+pub use earlier::Earlier;
 pub use explanation::{Circle, Correction, Explanation, Kind, Suspicion};
 pub use rows::{Suspected, suspicions};
 
@@ -59,14 +61,26 @@ struct Weighed {
 }
 
 impl Questioned<'_> {
-    /// What there is to say against a reading, if it is suspicious. The estimate must not rest on the reading. Nothing
-    /// too for a place nearer the pole of the mount than the tube can come.
+    /// What there is to say against a reading after those before it, if it is suspicious. Nothing too for a place nearer
+    /// the pole of the mount than the tube can come.
     #[must_use]
-    pub fn suspicion(&self, estimate: &Estimate) -> Option<Suspicion> {
+    pub fn suspicion(&self, earlier: &Earlier<'_>) -> Option<Suspicion> {
+        self.suspicion_against(&self.estimate(earlier))
+    }
+
+    /// The same against an estimate, which must not rest on the reading.
+    #[must_use]
+    pub fn suspicion_against(&self, estimate: &Estimate) -> Option<Suspicion> {
         self.held(estimate)
             .filter(Held::is_suspicious)
             .and_then(|_| self.weighed(estimate))
             .map(|weighed| weighed.suspicion(self))
+    }
+
+    /// The estimate of the readings before, by the meaning of theirs that goes best with this one.
+    fn estimate(&self, earlier: &Earlier<'_>) -> Estimate {
+        let latitude = self.moment.observer().latitude;
+        earlier.estimate(latitude, &self.sight(), |estimate| self.held(estimate))
     }
 
     /// The reading held against an estimate that does not rest on it.

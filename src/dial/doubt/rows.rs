@@ -1,7 +1,7 @@
 //! Which of a set of readings are wrong, when any may be.
 
-use crate::dial::doubt::{Questioned, Suspicion};
-use crate::estimate::{Estimate, Prior, Sight, fit};
+use crate::dial::doubt::{Earlier, Questioned, Suspicion};
+use crate::estimate::{Estimate, Prior, Sight};
 
 /// A suspicious reading of a set.
 #[derive(Clone, Debug, PartialEq)]
@@ -26,7 +26,7 @@ pub fn suspicions(prior: &Prior, rows: &[Questioned<'_>]) -> Vec<Suspected> {
         .filter_map(|&row| {
             let questioned = rows.get(row)?;
             let estimate = without(prior, rows, &sights, &aside, row)?;
-            let suspicion = questioned.suspicion(&estimate)?;
+            let suspicion = questioned.suspicion_against(&estimate)?;
             Some(Suspected { row, suspicion })
         })
         .collect();
@@ -56,7 +56,7 @@ fn worst(
         .map(|(row, _)| row)
 }
 
-/// The estimate from all readings but one and those set aside.
+/// The estimate from all readings but one and those set aside, to hold that one against.
 fn without(
     prior: &Prior,
     rows: &[Questioned<'_>],
@@ -70,6 +70,9 @@ fn without(
         .filter(|(other, _)| *other != row && !aside.contains(other))
         .map(|(_, sight)| sight.clone())
         .collect();
-    let latitude = rows.first()?.moment.observer().latitude;
-    Some(Estimate::from(&fit(latitude, prior, &others)))
+    let earlier = Earlier {
+        prior,
+        sights: &others,
+    };
+    Some(rows.get(row)?.estimate(&earlier))
 }

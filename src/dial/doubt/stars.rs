@@ -4,7 +4,7 @@ use crate::angle::Angle;
 use crate::catalog::Target;
 use crate::dial::doubt::account::{Account, What};
 use crate::dial::doubt::{Questioned, weights};
-use crate::sky::Source;
+use crate::sky::{Observed, Source};
 
 /// Stars nearer than this in the finder are one and the same to the circles.
 const SAME_PLACE: Angle = Angle::from_arcminutes(1.0);
@@ -27,20 +27,30 @@ pub(super) fn others(questioned: &Questioned<'_>) -> Vec<Account> {
     let Questioned { moment, target, .. } = *questioned;
     let place = |source: &Source| moment.observed(&moment.apparent(source));
     let meant = place(&target.source);
-    let mut accounts: Vec<Account> = questioned
+    let mut up: Vec<(&Target, Observed)> = questioned
         .stars
         .iter()
-        .filter_map(|star| {
-            let there = place(&star.source);
-            let apart = there.separation(&meant);
-            let up = there.altitude.angle() > Angle::ZERO;
-            (up && apart > SAME_PLACE).then(|| Account {
-                what: What::Star(Box::new(star.clone())),
-                sight: questioned.sight_of(questioned.sighting, moment, star),
-                prior: likeness(target, star, apart),
-            })
-        })
+        .map(|star| (star, place(&star.source)))
+        .filter(|(_, there)| there.altitude.angle() > Angle::ZERO)
         .collect();
+    up.sort_by(|(a, _), (b, _)| magnitude(a).total_cmp(&magnitude(b)));
+    let mut taken = vec![meant];
+    let mut accounts = Vec::with_capacity(up.len());
+    for (star, there) in up {
+        // of a close pair the circles know only one
+        if taken
+            .iter()
+            .any(|other| there.separation(other) < SAME_PLACE)
+        {
+            continue;
+        }
+        taken.push(there);
+        accounts.push(Account {
+            what: What::Star(Box::new(star.clone())),
+            sight: questioned.sight_of(questioned.sighting, moment, star),
+            prior: likeness(target, star, there.separation(&meant)),
+        });
+    }
     let sum: f64 = accounts.iter().map(|account| account.prior).sum();
     for account in &mut accounts {
         account.prior *= weights::OTHER_STAR / sum;
@@ -48,9 +58,12 @@ pub(super) fn others(questioned: &Questioned<'_>) -> Vec<Account> {
     accounts
 }
 
+fn magnitude(target: &Target) -> f64 {
+    target.magnitude.unwrap_or(BRIGHT)
+}
+
 /// How readily one star is taken for another, as a proportion.
 fn likeness(meant: &Target, star: &Target, apart: Angle) -> f64 {
-    let magnitude = |target: &Target| target.magnitude.unwrap_or(BRIGHT);
     let fainter = magnitude(star) - magnitude(meant);
     let alike = if fainter > 0.0 {
         (-fainter * fainter / 2.0).exp()

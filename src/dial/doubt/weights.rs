@@ -16,7 +16,7 @@ pub(super) const WRONG_SIGN: f64 = 0.006;
 /// The other side of the pier.
 pub(super) const OTHER_SIDE: f64 = 0.004;
 /// A ring that turns by hand or rides with the drive has slipped since the last reading.
-pub(super) const LOOSE_RING_SLIPPED: f64 = 0.006;
+pub(super) const LOOSE_RING_SLIPPED: f64 = 0.012;
 /// A ring made fast has slipped: its screw worked loose.
 pub(super) const FAST_RING_SLIPPED: f64 = 0.0003;
 /// Both circles have slipped, of one.
