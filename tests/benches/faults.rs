@@ -12,23 +12,31 @@ mod night;
 #[path = "../doubt/rates.rs"]
 mod rates;
 
+/// Sound readings after each number of readings before.
+const SOUND_OF_EACH: usize = 2000;
+
+/// Spoilt readings of each kind.
+const SPOILT_OF_EACH: usize = 400;
+
 fn main() -> ExitCode {
     let stars = night::bright_stars();
-    let count = |name: &str, usual: usize| {
-        std::env::var(name)
-            .ok()
-            .and_then(|n| n.parse().ok())
-            .unwrap_or(usual)
-    };
     let (mut sound, mut suspected) = (0, 0);
-    for (before, (of, alarms)) in rates::false_alarms(1, &stars, count("SOUND", 1000)) {
+    for (before, (of, alarms)) in rates::false_alarms(1, &stars, SOUND_OF_EACH) {
         println!("{alarms:>5} of {of} sound readings suspected after {before}");
         sound += of;
         suspected += alarms;
     }
     let (mut spoilt, mut right) = (0, 0);
-    for (kind, tally) in rates::explained(2, &stars, count("SPOILT", 100)) {
-        println!("{:<14}{tally:?}", kind.word());
+    for (kind, tally) in rates::explained(2, &stars, SPOILT_OF_EACH) {
+        let rates::Tally {
+            spoilt: of,
+            suspected,
+            right: named,
+        } = tally;
+        println!(
+            "{:<14}{of} spoilt, {suspected} suspected, {named} explained by the first",
+            kind.word()
+        );
         spoilt += tally.spoilt;
         right += tally.right;
     }

@@ -45,6 +45,7 @@ impl Chance {
 
     /// A whole number below that.
     pub fn below(&mut self, count: usize) -> usize {
-        (self.unit() * count as f64) as usize
+        // the remainder favours the first by one in 2^50 for the small counts asked for
+        usize::try_from(self.next() >> 12).unwrap_or(0) % count
     }
 }

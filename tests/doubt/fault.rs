@@ -180,7 +180,7 @@ fn other_star(chance: &mut Chance, night: &Night<'_>) -> Option<Spoilt> {
             let fainter = star.magnitude.unwrap() - meant.magnitude.unwrap();
             (1.0..NEIGHBOUR_DEG).contains(&apart)
                 && fainter.abs() < ALIKE_MAGNITUDES
-                && night.is_up(star, &moment)
+                && Night::is_up(star, &moment)
                 && !night.stars.iter().any(|brighter| {
                     brighter.magnitude < star.magnitude
                         && place(brighter).separation(&place(star)).arcminutes() < PAIR_ARCMIN

@@ -8,10 +8,10 @@ mod rates;
 
 #[test]
 fn the_first_explanation_is_nearly_always_the_right_one() {
-    /// Nine in ten, asked of some thousand faults, holds of a hundred too.
+    /// Nine in ten.
     const RIGHT: f64 = 0.9;
     let stars = night::bright_stars();
-    let tallies = rates::explained(5, &stars, 16);
+    let tallies = rates::explained(5, &stars, 72);
     let sum = |of: fn(&rates::Tally) -> usize| tallies.values().map(of).sum::<usize>() as f64;
     let (spoilt, right) = (sum(|one| one.spoilt), sum(|one| one.right));
     assert!(right >= RIGHT * spoilt, "{right} of {spoilt}: {tallies:#?}");
@@ -20,8 +20,11 @@ fn the_first_explanation_is_nearly_always_the_right_one() {
 #[test]
 fn sound_readings_are_hardly_ever_suspected() {
     let stars = night::bright_stars();
-    let rates = rates::false_alarms(6, &stars, 50);
-    let suspected: usize = rates.values().map(|(_, suspected)| suspected).sum();
-    // one in a thousand is what chance makes; three hundred hold two only once in thirty runs
-    assert!(suspected <= 1, "{rates:?}");
+    let rates = rates::false_alarms(6, &stars, 250);
+    let sum = |of: fn(&(usize, usize)) -> usize| rates.values().map(of).sum::<usize>();
+    let (sound, suspected) = (sum(|one| one.0), sum(|one| one.1));
+    assert!(
+        suspected * 500 <= sound,
+        "{suspected} of {sound}: {rates:?}"
+    );
 }

@@ -120,13 +120,13 @@ impl<'a> Night<'a> {
         loop {
             let star = &self.stars[chance.below(self.stars.len())];
             let bright = star.magnitude.is_some_and(|hp| hp <= READ_HP);
-            if bright && self.is_up(star, moment) {
+            if bright && Self::is_up(star, moment) {
                 return star.clone();
             }
         }
     }
 
-    pub fn is_up(&self, star: &Target, moment: &Moment) -> bool {
+    pub fn is_up(star: &Target, moment: &Moment) -> bool {
         let place = moment.observed(&moment.apparent(&star.source));
         place.altitude.degrees() > LOWEST_DEG && place.declination.degrees().abs() < 80.0
     }

@@ -66,31 +66,8 @@ pub fn false_alarms(
                 .map(|_| night.some_reading(&mut chance))
                 .collect();
             let read = night.some_reading(&mut chance);
-            if let Some(suspicion) = suspicion(&night, &earlier, &read, agreed()) {
-                suspected += 1;
-                if std::env::var_os("TALK").is_some() {
-                    println!(
-                        "ALARM {before} {:.1e} dec {:.1} off {:.2} {:.2} {:?}\n {:?}\n {:?}\n {:?}",
-                        suspicion.improbability,
-                        read.moment
-                            .apparent(&read.target.source)
-                            .declination
-                            .degrees(),
-                        suspicion.hour_off.degrees(),
-                        suspicion.dec_off.degrees(),
-                        night.truth.to_array().map(|x| x.degrees()),
-                        night.mount.hour_circle,
-                        night.mount.declination_circle,
-                        earlier
-                            .iter()
-                            .map(|r| (
-                                r.sighting,
-                                r.moment.apparent(&r.target.source).declination.degrees()
-                            ))
-                            .collect::<Vec<_>>()
-                    );
-                }
-            }
+            let suspicion = suspicion(&night, &earlier, &read, agreed());
+            suspected += usize::from(suspicion.is_some());
         }
         rates.insert(before, (per_count, suspected));
     }
@@ -127,26 +104,6 @@ pub fn explained(seed: u64, stars: &[Target], per_kind: usize) -> BTreeMap<Kind,
                 .first()
                 .is_some_and(|first| truth.is(first));
             tally.right += usize::from(right);
-            if !right && std::env::var_os("TALK").is_some() {
-                println!(
-                    "{kind:?} {:?}/{:?}/{:?}/{:?}: improb {:.1e} sound {:.3} unexpl {:.3}",
-                    night.mount.hour_circle.ring,
-                    night.mount.hour_circle.division.degrees(),
-                    night.mount.declination_circle.division.degrees(),
-                    night.mount.declination_circle.numbering,
-                    suspicion.improbability,
-                    suspicion.sound,
-                    suspicion.unexplained
-                );
-                for one in suspicion.explanations.iter().take(4) {
-                    println!(
-                        "    {:.3} {} {}",
-                        one.share,
-                        if truth.is(one) { "*" } else { " " },
-                        one.text
-                    );
-                }
-            }
         }
         tallies.insert(kind, tally);
     }

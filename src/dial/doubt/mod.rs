@@ -80,6 +80,15 @@ impl Questioned<'_> {
     /// The estimate of the readings before, by the meaning of theirs that goes best with this one.
     fn estimate(&self, earlier: &Earlier<'_>) -> Estimate {
         let latitude = self.moment.observer().latitude;
+        let sights: Vec<Sight> = earlier
+            .sights
+            .iter()
+            .map(|sight| self.with_rounding(sight.clone(), false))
+            .collect();
+        let earlier = Earlier {
+            sights: &sights,
+            ..*earlier
+        };
         earlier.estimate(latitude, &self.sight(), |estimate| self.held(estimate))
     }
 
@@ -101,9 +110,14 @@ impl Questioned<'_> {
     /// What a reading would have said of that star at that moment: as uncertain as the look and the rounding to what the
     /// eye can set make it.
     fn sight_of(&self, sighting: &Sighting, moment: &Moment, target: &Target) -> Sight {
+        let sight = sighting.sight(self.mount, moment, &target.source);
+        self.with_rounding(sight, sighting.timed)
+    }
+
+    /// A sight as uncertain as the looks and the rounding make it; a timed hour is not rounded.
+    fn with_rounding(&self, mut sight: Sight, timed: bool) -> Sight {
         let (hour, dec) = (&self.mount.hour_circle, &self.mount.declination_circle);
-        let mut sight = sighting.sight(self.mount, moment, &target.source);
-        if !sighting.timed {
+        if !timed {
             sight.sigma_hour = with_rounding(sight.sigma_hour, &hour.scale());
         }
         sight.sigma_dec = with_rounding(sight.sigma_dec, &dec.scale());

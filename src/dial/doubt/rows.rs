@@ -16,7 +16,13 @@ pub struct Suspected {
 /// make without it; the one against which most is to be said is set aside first.
 #[must_use]
 pub fn suspicions(prior: &Prior, rows: &[Questioned<'_>]) -> Vec<Suspected> {
-    let sights: Vec<Sight> = rows.iter().map(Questioned::sight).collect();
+    let sights: Vec<Sight> = rows
+        .iter()
+        .map(|row| {
+            row.sighting
+                .sight(row.mount, row.moment, &row.target.source)
+        })
+        .collect();
     let mut aside: Vec<usize> = Vec::new();
     while let Some(worst) = worst(prior, rows, &sights, &aside) {
         aside.push(worst);
