@@ -1,9 +1,14 @@
 //! How well improbable readings are explained, and how rarely sound ones are suspected, over many mounts by chance.
-#![allow(clippy::unwrap_used, clippy::panic, missing_docs)]
+#![allow(
+    clippy::unwrap_used,
+    clippy::cast_possible_truncation,
+    clippy::cast_sign_loss,
+    missing_docs
+)]
 
 use std::process::ExitCode;
 
-#[path = "../doubt/chance.rs"]
+#[path = "../nights/chance.rs"]
 mod chance;
 #[path = "../doubt/fault.rs"]
 mod fault;

@@ -9,7 +9,7 @@ use nonius::sexagesimal::Unit;
 use nonius::sky::Moment;
 
 use crate::chance::Chance;
-use crate::night::{Night, Read};
+use crate::night::{Night, Read, happens, pick};
 
 /// Another star is one within this distance of the one meant.
 const NEIGHBOUR_DEG: f64 = 25.0;
@@ -121,7 +121,7 @@ pub fn spoil(chance: &mut Chance, night: &Night<'_>, kind: Kind) -> Option<Spoil
             ))
         }
         Kind::WrongSign => {
-            if chance.happens(0.5) {
+            if happens(chance, 0.5) {
                 let typed = turned_round(chance, night, hour, true)?;
                 Some(plain(
                     Sighting {
@@ -190,7 +190,7 @@ fn other_star(chance: &mut Chance, night: &Night<'_>) -> Option<Spoilt> {
     if others.is_empty() {
         return None;
     }
-    let other = chance.pick(&others);
+    let other = pick(chance, &others);
     let side = night.some_side(chance, other, &moment);
     let read = night.read(chance, &moment, other, side)?;
     Some(Spoilt {
@@ -224,8 +224,8 @@ fn stepped(chance: &mut Chance, scale: &Scale, was: Reading) -> Option<Reading> 
         ],
     };
     let steps: Vec<Angle> = steps.into_iter().filter(|step| *step >= division).collect();
-    let step = chance.pick(&steps);
-    let by = if chance.happens(0.5) { step } else { -step };
+    let step = pick(chance, &steps);
+    let by = if happens(chance, 0.5) { step } else { -step };
     let larger = was.value.abs() + by;
     let whole_turn = scale.positions_of(Reading {
         value: Angle::from_degrees(300.0),
@@ -259,7 +259,7 @@ fn turned_round(
         format!("+{rest}")
     } else if let Some(rest) = text.strip_prefix('+') {
         format!("-{rest}")
-    } else if was.half.is_some() && chance.happens(0.7) {
+    } else if was.half.is_some() && happens(chance, 0.7) {
         let (rest, letter) = text.split_at(text.len() - 1);
         let other = match letter {
             "N" => "S",
@@ -290,15 +290,15 @@ fn slipped(chance: &mut Chance, night: &Night<'_>) -> Option<Spoilt> {
         night.mount.hour_circle.ring != Ring::Fixed,
         night.mount.declination_circle.slips,
     );
-    let hour = hour_loose && (!dec_loose || chance.happens(0.6));
+    let hour = hour_loose && (!dec_loose || happens(chance, 0.6));
     let dec = dec_loose && !hour;
     if !hour && !dec {
         return None;
     }
     let mut by = |division: Angle| {
         let least = division.degrees().max(LEAST_SLIP_DEG);
-        let size = least * (chance.unit() * (90.0 / least).ln()).exp();
-        Angle::from_degrees(if chance.happens(0.5) { size } else { -size })
+        let size = least * (chance.uniform() * (90.0 / least).ln()).exp();
+        Angle::from_degrees(if happens(chance, 0.5) { size } else { -size })
     };
     let mut turned = Night {
         mount: night.mount.clone(),
@@ -323,7 +323,7 @@ fn leapt(chance: &mut Chance, night: &Night<'_>) -> Option<Spoilt> {
     if night.mount.hour_circle.ring == Ring::Driven {
         return None;
     }
-    let by = chance.pick(&[3600.0, -3600.0, 7200.0, 0.0]);
+    let by = pick(chance, &[3600.0, -3600.0, 7200.0, 0.0]);
     let by = if by == 0.0 {
         chance.between(400.0, 5000.0)
     } else {

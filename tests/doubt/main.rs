@@ -1,6 +1,11 @@
 //! Improbable readings explained: a small version of what `cargo test --bench faults` weighs over many nights.
-#![allow(clippy::unwrap_used)]
+#![allow(
+    clippy::unwrap_used,
+    clippy::cast_possible_truncation,
+    clippy::cast_sign_loss
+)]
 
+#[path = "../nights/chance.rs"]
 mod chance;
 mod fault;
 mod night;

@@ -73,7 +73,7 @@ impl<'a> Night<'a> {
     pub fn by_chance(chance: &mut Chance, stars: &'a [Target]) -> Self {
         let mount = mount(chance);
         let expected = mount.expected;
-        let mut error = |sigma: Angle| sigma * chance.normal();
+        let mut error = |sigma: Angle| sigma * chance.normal(1.0);
         let truth = MountErrors {
             hour_index: error(Angle::from_degrees(40.0)),
             dec_index: error(Angle::from_degrees(if mount.declination_circle.slips {
@@ -87,7 +87,7 @@ impl<'a> Night<'a> {
             skew: error(expected.skew),
             sag: error(expected.sag),
         };
-        let south = if chance.happens(0.5) { -1.0 } else { 1.0 };
+        let south = if happens(chance, 0.5) { -1.0 } else { 1.0 };
         let observer = Observer {
             latitude: Latitude::from_degrees(south * chance.between(5.0, 58.0)),
             longitude: Longitude::from_degrees(chance.between(-180.0, 180.0)),
@@ -106,7 +106,7 @@ impl<'a> Night<'a> {
             truth,
             dusk,
             stars,
-            letters: chance.happens(0.6),
+            letters: happens(chance, 0.6),
         }
     }
 
@@ -118,7 +118,7 @@ impl<'a> Night<'a> {
     /// A bright star well up.
     pub fn some_star(&self, chance: &mut Chance, moment: &Moment) -> Target {
         loop {
-            let star = &self.stars[chance.below(self.stars.len())];
+            let star = &self.stars[chance.one_of(self.stars.len())];
             let bright = star.magnitude.is_some_and(|hp| hp <= READ_HP);
             if bright && Self::is_up(star, moment) {
                 return star.clone();
@@ -137,7 +137,7 @@ impl<'a> Night<'a> {
             return Side::Single;
         }
         let east = moment.apparent(&star.source).hour_angle.degrees() < 0.0;
-        if east == chance.happens(0.85) {
+        if east == happens(chance, 0.85) {
             Side::TubeWest
         } else {
             Side::TubeEast
@@ -165,8 +165,8 @@ impl<'a> Night<'a> {
         let (hour, dec) = (&self.mount.hour_circle, &self.mount.declination_circle);
         let off =
             |angle: AxisAngle, sigma: Angle, by: f64| AxisAngle::new(angle.angle() + sigma * by);
-        let hour_axis = off(axes.hour, hour.look_error(), chance.normal());
-        let dec_axis = off(axes.dec, dec.look_error(), chance.normal());
+        let hour_axis = off(axes.hour, hour.look_error(), chance.normal(1.0));
+        let dec_axis = off(axes.dec, dec.look_error(), chance.normal(1.0));
         Some(Read {
             moment: *moment,
             target: star.clone(),
@@ -213,49 +213,40 @@ impl<'a> Night<'a> {
     }
 }
 
+/// True so often.
+pub fn happens(chance: &mut Chance, share: f64) -> bool {
+    chance.uniform() < share
+}
+
+/// One of them.
+pub fn pick<T: Copy>(chance: &mut Chance, from: &[T]) -> T {
+    from[chance.one_of(from.len())]
+}
+
 /// A mount of one of the three kinds of circles.
 fn mount(chance: &mut Chance) -> Mount {
-    let seconds = |s: f64| Angle::from_time_seconds(s);
     let minutes = |m: f64| Angle::from_arcminutes(m);
-    let size = chance.below(3);
-    let degrees = chance.happens(0.2);
+    let size = chance.one_of(3);
+    let degrees = happens(chance, 0.2);
     let (unit, numbering) = (
         if degrees { Unit::Degrees } else { Unit::Hours },
-        chance.pick(&[
-            HourNumbering::Full,
-            HourNumbering::Full,
-            HourNumbering::Halves,
-            HourNumbering::PlusMinus,
-        ]),
+        pick(
+            chance,
+            &[
+                HourNumbering::Full,
+                HourNumbering::Full,
+                HourNumbering::Halves,
+                HourNumbering::PlusMinus,
+            ],
+        ),
     );
-    let (hour_division, hour_vernier, dec_division, dec_vernier) = match (size, degrees) {
-        (0, false) => (
-            seconds(chance.pick(&[600.0, 1200.0])),
-            None,
-            minutes(120.0),
-            None,
-        ),
-        (0, true) => (minutes(120.0), None, minutes(120.0), None),
-        (1, false) => (seconds(300.0), None, minutes(60.0), None),
-        (1, true) => (minutes(60.0), None, minutes(60.0), None),
-        (_, false) => (
-            seconds(60.0),
-            Some(seconds(4.0)),
-            minutes(10.0),
-            Some(minutes(1.0 / 6.0)),
-        ),
-        (_, true) => (
-            minutes(30.0),
-            Some(minutes(1.0)),
-            minutes(10.0),
-            Some(minutes(1.0 / 6.0)),
-        ),
-    };
+    let [hour_division, hour_vernier, dec_division, dec_vernier] =
+        graduation(chance, size, degrees);
     let portable = size < 2;
     let ring = if portable {
-        chance.pick(&[Ring::Slips, Ring::Driven, Ring::Driven])
+        pick(chance, &[Ring::Slips, Ring::Driven, Ring::Driven])
     } else {
-        chance.pick(&[Ring::Fixed, Ring::Fixed, Ring::Slips])
+        pick(chance, &[Ring::Fixed, Ring::Fixed, Ring::Slips])
     };
     let expected = if portable {
         ExpectedErrors::default()
@@ -270,7 +261,10 @@ fn mount(chance: &mut Chance) -> Mount {
     };
     Mount {
         name: "by chance".to_owned(),
-        kind: chance.pick(&[Kind::German, Kind::German, Kind::German, Kind::Fork]),
+        kind: pick(
+            chance,
+            &[Kind::German, Kind::German, Kind::German, Kind::Fork],
+        ),
         clock_drive: true,
         hour_circle: HourCircle {
             ring,
@@ -283,24 +277,27 @@ fn mount(chance: &mut Chance) -> Mount {
             increases: if ring == Ring::Driven {
                 Increases::East
             } else {
-                chance.pick(&[Increases::West, Increases::West, Increases::East])
+                pick(chance, &[Increases::West, Increases::West, Increases::East])
             },
-            division: hour_division,
+            division: hour_division.unwrap(),
             vernier: hour_vernier,
-            second_fiducial: chance.happens(0.15),
+            second_fiducial: happens(chance, 0.15),
             reading_error: None,
         },
         declination_circle: DeclinationCircle {
-            numbering: chance.pick(&[
-                DeclinationNumbering::Signed,
-                DeclinationNumbering::Signed,
-                DeclinationNumbering::Quarters,
-                DeclinationNumbering::PolarDistance,
-                DeclinationNumbering::Full,
-            ]),
-            division: dec_division,
+            numbering: pick(
+                chance,
+                &[
+                    DeclinationNumbering::Signed,
+                    DeclinationNumbering::Signed,
+                    DeclinationNumbering::Quarters,
+                    DeclinationNumbering::PolarDistance,
+                    DeclinationNumbering::Full,
+                ],
+            ),
+            division: dec_division.unwrap(),
             vernier: dec_vernier,
-            slips: portable && chance.happens(0.4),
+            slips: portable && happens(chance, 0.4),
             reading_error: None,
         },
         limits: Limits::default(),
@@ -309,4 +306,23 @@ fn mount(chance: &mut Chance) -> Mount {
         tube: None,
         optics: Vec::new(),
     }
+}
+
+/// Divisions and verniers of the hour and the declination circle, by the size of the mount.
+fn graduation(chance: &mut Chance, size: usize, degrees: bool) -> [Option<Angle>; 4] {
+    let seconds = |s: f64| Some(Angle::from_time_seconds(s));
+    let minutes = |m: f64| Some(Angle::from_arcminutes(m));
+    let [dec, dec_vernier] = match size {
+        0 => [minutes(120.0), None],
+        1 => [minutes(60.0), None],
+        _ => [minutes(10.0), minutes(1.0 / 6.0)],
+    };
+    let [hour, hour_vernier] = match (size, degrees) {
+        (0, false) => [seconds(pick(chance, &[600.0, 1200.0])), None],
+        (1, false) => [seconds(300.0), None],
+        (_, false) => [seconds(60.0), seconds(4.0)],
+        (0 | 1, true) => [dec, None],
+        (_, true) => [minutes(30.0), minutes(1.0)],
+    };
+    [hour, hour_vernier, dec, dec_vernier]
 }

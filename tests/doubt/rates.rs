@@ -56,7 +56,7 @@ pub fn false_alarms(
     stars: &[Target],
     per_count: usize,
 ) -> BTreeMap<usize, (usize, usize)> {
-    let mut chance = Chance::new(seed);
+    let mut chance = Chance::seeded(seed);
     let mut rates = BTreeMap::new();
     for before in 1..=6 {
         let mut suspected = 0;
@@ -76,13 +76,13 @@ pub fn false_alarms(
 
 /// Spoilt readings by chance after three to six sound ones.
 pub fn explained(seed: u64, stars: &[Target], per_kind: usize) -> BTreeMap<Kind, Tally> {
-    let mut chance = Chance::new(seed);
+    let mut chance = Chance::seeded(seed);
     let mut tallies = BTreeMap::new();
     for kind in KINDS {
         let mut tally = Tally::default();
         while tally.spoilt < per_kind {
             let night = Night::by_chance(&mut chance, stars);
-            let before = 3 + chance.below(4);
+            let before = 3 + chance.one_of(4);
             let Some(Spoilt {
                 read,
                 circumstances,
