@@ -102,6 +102,8 @@ pub const DIVISION: Bound = Bound::new("division", "seconds of arc", 1.0, 324_00
 pub const READING_ERROR: Bound = Bound::new("reading error", "degrees", 1e-5, 15.0);
 /// How large an error of the mount is expected to be, 1 sigma; zero for none.
 pub const EXPECTED_ERROR: Bound = Bound::new("expected error", "degrees", 0.0, 30.0);
+/// What is expected of a circle's eccentricity: a circle farther off its centre is seen to wobble.
+pub const ECCENTRICITY: Bound = Bound::new("eccentricity of a circle", "degrees", 0.0, 3.0);
 /// Radius of a dome.
 pub const DOME_RADIUS: Bound = Bound::new("radius of the dome", "metres", 0.5, 50.0);
 /// Where the axes cross, from the centre of the dome, in each direction.

@@ -11,7 +11,7 @@ use crate::command::options::Common;
 use crate::command::readings::{self, Readings};
 use crate::command::station::Station;
 use crate::estimate::{Fit, Residual};
-use crate::metal::errors::{COUNT, NAMES};
+use crate::metal::errors::NAMES;
 use crate::sexagesimal::{Notation, Unit};
 
 /// Which file.
@@ -86,17 +86,20 @@ impl<'a> Report<'a> {
             site: &station.site.id,
             mount: &station.mount_id,
             readings_used: fit.sights_used(),
-            errors: terms(fit)
+            errors: terms(station, fit)
+                .into_iter()
                 .map(|(name, value, sigma)| ErrorTerm {
                     name,
                     value_arcmin: value.arcminutes(),
                     sigma_arcmin: sigma.arcminutes(),
                 })
                 .collect(),
-            covariance_arcmin2: fit
-                .covariance
-                .row_iter()
-                .map(|row| row.iter().map(|&square| minutes(minutes(square))).collect())
+            covariance_arcmin2: in_question(station, fit.covariance.row_iter())
+                .map(|row| {
+                    in_question(station, row.iter())
+                        .map(|&square| minutes(minutes(square)))
+                        .collect()
+                })
                 .collect(),
             residuals: residuals.collect(),
             spread_arcmin: fit.spread.arcminutes(),
@@ -106,17 +109,25 @@ impl<'a> Report<'a> {
     }
 }
 
-/// Each error with its value and its spread.
-fn terms(fit: &Fit) -> impl Iterator<Item = (&'static str, Angle, Angle)> + '_ {
-    let values: [Angle; COUNT] = fit.errors.to_array();
-    let variances = fit.covariance.diagonal();
-    NAMES
+/// Of something there is for each error, what there is for those in question on this mount.
+fn in_question<T>(station: &Station, of_all: impl Iterator<Item = T>) -> impl Iterator<Item = T> {
+    of_all
+        .zip(station.mount.expected.in_question())
+        .filter_map(|(one, in_question)| in_question.then_some(one))
+}
+
+/// Each error in question with its value and its spread.
+fn terms(station: &Station, fit: &Fit) -> Vec<(&'static str, Angle, Angle)> {
+    let sigmas = fit
+        .covariance
+        .diagonal()
+        .map(|variance| Angle::from_radians(variance.max(0.0).sqrt()));
+    let all = NAMES
         .into_iter()
-        .zip(values)
-        .zip(variances.iter().copied().collect::<Vec<_>>())
-        .map(|((name, value), variance)| {
-            (name, value, Angle::from_radians(variance.max(0.0).sqrt()))
-        })
+        .zip(fit.errors.to_array())
+        .zip(sigmas.iter().copied())
+        .map(|((name, value), sigma)| (name, value, sigma));
+    in_question(station, all).collect()
 }
 
 /// Minutes of arc with their sign, and nothing without one.
@@ -160,7 +171,7 @@ fn table(
         "{:<26}{:>14}{:>14}",
         "error (reading minus true)", "value", "1 sigma"
     )?;
-    for (name, value, sigma) in terms(fit) {
+    for (name, value, sigma) in terms(station, fit) {
         writeln!(
             out,
             "{name:<26}{:>14}{:>14}",

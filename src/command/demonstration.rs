@@ -22,5 +22,6 @@ pub fn errors() -> MountErrors {
         cone: Angle::from_arcminutes(9.0),
         skew: Angle::from_arcminutes(-4.0),
         sag: Angle::from_arcminutes(1.5),
+        ..MountErrors::default()
     }
 }

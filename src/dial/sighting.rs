@@ -3,7 +3,7 @@
 use crate::angle::{Angle, AxisAngle};
 use crate::dial::tube::TubePlace;
 use crate::estimate::{Estimate, Sight, nearest};
-use crate::metal::{Axes, Mount, Reading, Side, TooNearPole};
+use crate::metal::{Axes, Mount, OppositeVerniers, Reading, Side, TooNearPole};
 use crate::sky::{Moment, Observed, Source};
 
 /// Both circles as read with a star in the middle of the field.
@@ -74,6 +74,10 @@ impl Sighting {
             dec,
             sigma_hour,
             sigma_dec,
+            opposite: OppositeVerniers {
+                hour: self.hour_opposite.is_some(),
+                dec: self.dec_opposite.is_some(),
+            },
         }
     }
 
@@ -87,9 +91,7 @@ impl Sighting {
     ) -> Result<Understood, TooNearPole> {
         let sight = self.sight(mount, moment, source);
         let latitude = moment.observer().latitude;
-        let expected = estimate
-            .predict(sight.hour_angle, sight.declination, latitude, self.side)?
-            .axes;
+        let expected = estimate.predict_sight(latitude, &sight)?.axes;
         // a circle that was read has at least one candidate
         let meant =
             |candidates: &[AxisAngle], expected| nearest(candidates, expected).unwrap_or(expected);

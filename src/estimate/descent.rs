@@ -11,11 +11,11 @@
 
 use nalgebra::{RowSVector, SMatrix, SVector};
 
-use crate::angle::{Angle, Declination, HourAngle, Latitude};
+use crate::angle::{Angle, Latitude};
 use crate::estimate::prior::{Covariance, Prior};
-use crate::estimate::sight::off;
+use crate::estimate::sight::{Place, off};
 use crate::metal::errors::COUNT;
-use crate::metal::{Axes, MountErrors, Side, to_axes_with_slopes};
+use crate::metal::{Axes, MountErrors};
 
 /// A reading this near its prediction, in sigmas, is trusted in full.
 pub const TRUSTED_SIGMAS: f64 = 3.0;
@@ -58,9 +58,7 @@ type Vector = SVector<f64, COUNT>;
 /// A sight whose circles are taken to mean one pair of axis angles.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(super) struct Settled {
-    pub hour_angle: HourAngle,
-    pub declination: Declination,
-    pub side: Side,
+    pub place: Place,
     pub shown: Axes,
     pub sigma_hour: Angle,
     pub sigma_dec: Angle,
@@ -224,14 +222,7 @@ fn stand(
         total += gross.cost(sigmas);
     };
     for sight in sights {
-        let (predicted, slopes) = to_axes_with_slopes(
-            sight.hour_angle,
-            sight.declination,
-            latitude,
-            &errors,
-            sight.side,
-        )
-        .ok()?;
+        let (predicted, slopes) = sight.place.foretold(latitude, &errors).ok()?;
         let slopes: SMatrix<f64, 2, COUNT> = slopes.by_errors;
         add(
             slopes.row(0).into_owned(),

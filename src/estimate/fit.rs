@@ -1,6 +1,6 @@
 //! The fit: the likeliest errors of the mount, given the prior and every accepted sight since the last ring setting.
 //!
-//! Maximum a posteriori over the seven errors. Each circle's reading is trusted in full while its residual is within
+//! Maximum a posteriori over the errors of the mount. Each circle's reading is trusted in full while its residual is within
 //! three sigma, by Huber's weights beyond, and hardly at all once it can only be a mistake; readings that can mean several
 //! angles are resolved together. Residuals are shown less predicted.
 
@@ -100,7 +100,8 @@ mod tests {
     use crate::angle::{AxisAngle, Declination, HourAngle};
     use crate::estimate::Estimate;
     use crate::estimate::sight::off;
-    use crate::metal::{ExpectedErrors, Side, to_axes};
+    use crate::metal::errors::ALWAYS;
+    use crate::metal::{ExpectedErrors, OppositeVerniers, Side, to_axes};
 
     const LATITUDE_DEG: f64 = 52.0;
 
@@ -126,8 +127,8 @@ mod tests {
         Prior::from_expected(&ExpectedErrors::default())
     }
 
-    fn mount(arcminutes: [f64; 7]) -> MountErrors {
-        MountErrors::from_array(arcminutes.map(Angle::from_arcminutes))
+    fn mount(arcminutes: [f64; ALWAYS]) -> MountErrors {
+        MountErrors::with_centred_circles(arcminutes.map(Angle::from_arcminutes))
     }
 
     /// What a mount shows, read without error though the observer allows for 3'.
@@ -145,6 +146,7 @@ mod tests {
             dec: vec![axes.dec],
             sigma_hour: Angle::from_arcminutes(3.0),
             sigma_dec: Angle::from_arcminutes(3.0),
+            opposite: OppositeVerniers::default(),
         }
     }
 
@@ -212,7 +214,7 @@ mod tests {
             );
         }
         let prior = default_prior();
-        for error in 2..7 {
+        for error in 2..ALWAYS {
             assert!(fit.covariance[(error, error)] > 0.9 * prior.covariance()[(error, error)]);
         }
         let residual = fit.residuals[0].unwrap();
@@ -338,6 +340,7 @@ mod tests {
                     dec: if west { vec![] } else { vec![AxisAngle::from_degrees(b)] },
                     sigma_hour: Angle::from_degrees(sigma),
                     sigma_dec: Angle::from_degrees(-sigma),
+                    opposite: OppositeVerniers { hour: !west, dec: west },
                 })
                 .collect();
             let expected = Angle::from_degrees(expected);
@@ -345,6 +348,8 @@ mod tests {
                 polar_high: expected,
                 polar_east: expected,
                 cone: expected,
+                hour_eccentric: expected,
+                dec_eccentric: expected,
                 ..ExpectedErrors::default()
             });
             let fit = fit(Latitude::from_degrees(latitude), &prior, &sights);

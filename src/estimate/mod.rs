@@ -14,6 +14,7 @@ mod resolve;
 mod search;
 pub mod sight;
 pub mod suspicion;
+pub mod widening;
 
 pub use chance::chance;
 pub use descent::{GROSS_SIGMAS, TRUSTED_SIGMAS};
@@ -23,3 +24,4 @@ pub use prediction::{Estimate, Prediction};
 pub use prior::{Covariance, Prior};
 pub use sight::{Residual, Sight, nearest};
 pub use suspicion::{Held, SUSPICIOUS, Slipped, ln_sum};
+pub use widening::Touched;

@@ -168,7 +168,7 @@ mod tests {
     use super::*;
     use crate::angle::AxisAngle;
     use crate::estimate::{Prior, Sight, fit};
-    use crate::metal::ExpectedErrors;
+    use crate::metal::{ExpectedErrors, OppositeVerniers};
 
     const LATITUDE_DEG: f64 = 52.0;
 
@@ -203,6 +203,7 @@ mod tests {
             dec: vec![AxisAngle::new(axes.dec.angle())],
             sigma_hour: place.sigma_hour,
             sigma_dec: place.sigma_dec,
+            opposite: OppositeVerniers::default(),
         }
     }
 

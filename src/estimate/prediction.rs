@@ -7,7 +7,8 @@ use nalgebra::Matrix2;
 use crate::angle::{Angle, Declination, HourAngle, Latitude};
 use crate::estimate::fit::Fit;
 use crate::estimate::prior::{Covariance, Prior};
-use crate::metal::{Axes, MountErrors, Side, TooNearPole, to_axes_with_slopes};
+use crate::estimate::sight::{Place, Sight};
+use crate::metal::{Axes, MountErrors, OppositeVerniers, Side, TooNearPole};
 
 /// An index this well known is no longer free, whose sigma is 60°.
 const KNOWN_INDEX: Angle = Angle::from_degrees(10.0);
@@ -73,7 +74,8 @@ impl Estimate {
         self.covariance[(1, 1)].sqrt() < KNOWN_INDEX.radians()
     }
 
-    /// What the axes must show to look at an observed place (refraction included), and how sure that is.
+    /// What the axes must show to look at an observed place (refraction included), and how sure that is. The circles are
+    /// read at one mark or vernier each.
     pub fn predict(
         &self,
         hour_angle: HourAngle,
@@ -81,8 +83,28 @@ impl Estimate {
         latitude: Latitude,
         side: Side,
     ) -> Result<Prediction, TooNearPole> {
-        let (axes, slopes) =
-            to_axes_with_slopes(hour_angle, declination, latitude, &self.errors, side)?;
+        self.predict_read(
+            latitude,
+            Place {
+                hour_angle,
+                declination,
+                side,
+                opposite: OppositeVerniers::default(),
+            },
+        )
+    }
+
+    /// What the circles must have shown at a sight, read as they were, and how sure that is.
+    pub fn predict_sight(
+        &self,
+        latitude: Latitude,
+        sight: &Sight,
+    ) -> Result<Prediction, TooNearPole> {
+        self.predict_read(latitude, sight.place())
+    }
+
+    fn predict_read(&self, latitude: Latitude, place: Place) -> Result<Prediction, TooNearPole> {
+        let (axes, slopes) = place.foretold(latitude, &self.errors)?;
         let covariance = slopes.by_errors * self.covariance * slopes.by_errors.transpose();
         let place_by_axes = slopes.by_place.try_inverse().ok_or(TooNearPole)?;
         let sky = place_by_axes * covariance * place_by_axes.transpose();
@@ -153,7 +175,7 @@ impl Prediction {
 mod tests {
     use super::*;
     use crate::angle::AxisAngle;
-    use crate::estimate::{Sight, fit};
+    use crate::estimate::fit;
     use crate::metal::ExpectedErrors;
 
     const LATITUDE_DEG: f64 = 52.0;
@@ -167,6 +189,7 @@ mod tests {
             dec: vec![AxisAngle::from_degrees(25.0)],
             sigma_hour: Angle::from_arcminutes(3.0),
             sigma_dec: Angle::from_arcminutes(3.0),
+            opposite: OppositeVerniers::default(),
         };
         let prior = Prior::from_expected(&ExpectedErrors::default());
         Estimate::from(&fit(Latitude::from_degrees(LATITUDE_DEG), &prior, &[star]))

@@ -1,4 +1,4 @@
-//! What is believed of a mount's errors before any star is read: a Gaussian of the seven errors, in radians.
+//! What is believed of a mount's errors before any star is read: a Gaussian of its errors, in radians.
 //!
 //! The indexes are free: one sigma of 60° about nothing only keeps an unread index from being of any size at all.
 //! The rest is what the mount file expects, or what the last night left, widened.
@@ -10,22 +10,22 @@ use crate::estimate::Estimate;
 use crate::metal::errors::COUNT;
 use crate::metal::{ExpectedErrors, MountErrors};
 
-/// A covariance of the seven errors in the order of [`MountErrors::to_array`], in square radians.
+/// A covariance of the errors in the order of [`MountErrors::to_array`], in square radians.
 pub type Covariance = SMatrix<f64, COUNT, COUNT>;
 
 /// One sigma of an index error that nothing is known of.
-const FREE_INDEX: Angle = Angle::from_degrees(60.0);
+pub(super) const FREE_INDEX: Angle = Angle::from_degrees(60.0);
 
 /// A direction of the correlations with less than this share of the variance is known as well as exactly: below it
 /// lies only the rounding of the matrix.
 const NO_VARIANCE: f64 = 1e-13;
 
-/// Sweeps of the eigenvalue routine; a 7 by 7 matrix takes some ten.
+/// Sweeps of the eigenvalue routine; a matrix of so many errors takes some ten.
 const MOST_SWEEPS: usize = 1000;
 
 /// The belief before any reading.
 ///
-/// Held beside the covariance is a root of it, which turns the errors into seven independent numbers of unit
+/// Held beside the covariance is a root of it, which turns the errors into independent numbers of unit
 /// variance: in them the fit is well scaled, and an error that is known exactly (sigma nothing) simply does not move.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Prior {
@@ -45,10 +45,23 @@ impl Prior {
             cone,
             skew,
             sag,
+            hour_eccentric,
+            dec_eccentric,
         } = *expected;
-        let sigmas = [
-            FREE_INDEX, FREE_INDEX, polar_high, polar_east, cone, skew, sag,
-        ];
+        let sigmas = MountErrors {
+            hour_index: FREE_INDEX,
+            dec_index: FREE_INDEX,
+            polar_high,
+            polar_east,
+            cone,
+            skew,
+            sag,
+            hour_eccentric_sine: hour_eccentric,
+            hour_eccentric_cosine: hour_eccentric,
+            dec_eccentric_sine: dec_eccentric,
+            dec_eccentric_cosine: dec_eccentric,
+        }
+        .to_array();
         Self::new(
             SVector::zeros(),
             &Covariance::from_diagonal(&variances(sigmas)),
@@ -156,7 +169,11 @@ mod tests {
 
     #[test]
     fn the_root_gives_back_the_covariance() {
-        let expected = Prior::from_expected(&ExpectedErrors::default());
+        let expected = Prior::from_expected(&ExpectedErrors {
+            hour_eccentric: Angle::from_arcminutes(5.0),
+            dec_eccentric: Angle::from_arcminutes(5.0),
+            ..ExpectedErrors::default()
+        });
         let mut covariance = *expected.covariance();
         covariance[(0, 4)] = 0.99 * (covariance[(0, 0)] * covariance[(4, 4)]).sqrt();
         covariance[(4, 0)] = covariance[(0, 4)];

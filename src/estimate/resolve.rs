@@ -11,7 +11,7 @@ use crate::estimate::descent::{Gross, Settled, sigma_rad};
 use crate::estimate::prior::Prior;
 use crate::estimate::sight::{Sight, nearest, off};
 use crate::metal::errors::COUNT;
-use crate::metal::{Axes, MountErrors, to_axes_with_slopes};
+use crate::metal::{Axes, MountErrors};
 
 /// The best determined sights give the index; the others could only repeat them.
 const MOST_ANCHORS: usize = 8;
@@ -48,13 +48,7 @@ pub(super) fn starts(latitude: Latitude, prior: &Prior, sights: &[Sight]) -> Vec
     let mut hour_circle = Vec::with_capacity(sights.len());
     let mut dec_circle = Vec::with_capacity(sights.len());
     for sight in sights {
-        let Ok((predicted, slopes)) = to_axes_with_slopes(
-            sight.hour_angle,
-            sight.declination,
-            latitude,
-            &mean,
-            sight.side,
-        ) else {
+        let Ok((predicted, slopes)) = sight.place().foretold(latitude, &mean) else {
             continue;
         };
         let variances: Vector2<f64> =
@@ -150,22 +144,13 @@ pub(super) fn settle(
     sights
         .iter()
         .map(|sight| {
-            let (predicted, slopes) = to_axes_with_slopes(
-                sight.hour_angle,
-                sight.declination,
-                latitude,
-                errors,
-                sight.side,
-            )
-            .ok()?;
+            let (predicted, slopes) = sight.place().foretold(latitude, errors).ok()?;
             // at the very edge of reach the slopes are infinite
             if !slopes.by_errors.iter().all(|slope| slope.is_finite()) {
                 return None;
             }
             Some(Settled {
-                hour_angle: sight.hour_angle,
-                declination: sight.declination,
-                side: sight.side,
+                place: sight.place(),
                 shown: Axes {
                     hour: nearest(&sight.hour, predicted.hour)?,
                     dec: nearest(&sight.dec, predicted.dec)?,

@@ -5,7 +5,7 @@ use crate::estimate::descent::{Descent, GROSS_SIGMAS, Gross, Settled, descend, s
 use crate::estimate::prior::Prior;
 use crate::estimate::resolve::{settle, starts};
 use crate::estimate::sight::{Residual, Sight, off};
-use crate::metal::{Axes, MountErrors, to_axes};
+use crate::metal::{Axes, MountErrors};
 
 /// Readings are taken anew to mean what is nearest to the fit, until none changes; two or three rounds do.
 const MOST_ROUNDS: usize = 8;
@@ -84,8 +84,8 @@ fn approach(
         .into_iter()
         .flatten()
         .collect();
-    if settled.iter().any(|one| !near_pole(one.declination)) {
-        settled.retain(|one| !near_pole(one.declination));
+    if settled.iter().any(|one| !near_pole(one.place.declination)) {
+        settled.retain(|one| !near_pole(one.place.declination));
     }
     descend(latitude, prior, &start, &settled, Gross::Held)
 }
@@ -144,14 +144,7 @@ fn near_pole(declination: Declination) -> bool {
 }
 
 fn residual(latitude: Latitude, errors: &MountErrors, sight: &Settled) -> Option<Residual> {
-    let predicted = to_axes(
-        sight.hour_angle,
-        sight.declination,
-        latitude,
-        errors,
-        sight.side,
-    )
-    .ok()?;
+    let (predicted, _) = sight.place.foretold(latitude, errors).ok()?;
     let hour = off(sight.shown.hour, predicted.hour);
     let dec = off(sight.shown.dec, predicted.dec);
     Some(Residual {

@@ -1,7 +1,9 @@
 //! A star in the middle of the field with both circles read.
 
-use crate::angle::{Angle, AxisAngle, Declination, HourAngle};
-use crate::metal::{Axes, Side};
+use crate::angle::{Angle, AxisAngle, Declination, HourAngle, Latitude};
+use crate::metal::{
+    Axes, MountErrors, OppositeVerniers, Side, Slopes, TooNearPole, to_axes_with_slopes,
+};
 
 /// A star centred, and what the circles showed.
 ///
@@ -24,6 +26,47 @@ pub struct Sight {
     pub sigma_hour: Angle,
     /// Error of the declination reading, 1 sigma, on the axis.
     pub sigma_dec: Angle,
+    /// Which circles were read at two opposite verniers: such a reading is the mean of both, free of eccentricity.
+    pub opposite: OppositeVerniers,
+}
+
+/// Where a star stood, and how the circles were read on it.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(super) struct Place {
+    pub hour_angle: HourAngle,
+    pub declination: Declination,
+    pub side: Side,
+    pub opposite: OppositeVerniers,
+}
+
+impl Sight {
+    pub(super) const fn place(&self) -> Place {
+        Place {
+            hour_angle: self.hour_angle,
+            declination: self.declination,
+            side: self.side,
+            opposite: self.opposite,
+        }
+    }
+}
+
+impl Place {
+    /// What the circles, read so, show on a mount of such errors, with the slopes there.
+    pub(super) fn foretold(
+        &self,
+        latitude: Latitude,
+        errors: &MountErrors,
+    ) -> Result<(Axes, Slopes), TooNearPole> {
+        let (axes, mut slopes) = to_axes_with_slopes(
+            self.hour_angle,
+            self.declination,
+            latitude,
+            &self.opposite.errors_seen(errors),
+            self.side,
+        )?;
+        slopes.by_errors = self.opposite.slopes_seen(slopes.by_errors);
+        Ok((axes, slopes))
+    }
 }
 
 /// What the estimate leaves unexplained of one sight.

@@ -73,7 +73,7 @@ impl Estimate {
         sight: &Sight,
         slipped: Slipped,
     ) -> Result<Option<Held>, TooNearPole> {
-        let expected = self.predict(sight.hour_angle, sight.declination, latitude, sight.side)?;
+        let expected = self.predict_sight(latitude, sight)?;
         let (hour, dec) = (sigma_rad(sight.sigma_hour), sigma_rad(sight.sigma_dec));
         let sound = expected.covariance + Matrix2::new(hour * hour, 0.0, 0.0, dec * dec);
         let spreads = spreads(sound, slipped);
@@ -151,7 +151,7 @@ mod tests {
     use super::*;
     use crate::angle::{AxisAngle, Declination, HourAngle};
     use crate::estimate::{Prior, fit};
-    use crate::metal::{ExpectedErrors, Side};
+    use crate::metal::{ExpectedErrors, OppositeVerniers, Side};
 
     const LATITUDE_DEG: f64 = 52.0;
 
@@ -170,6 +170,7 @@ mod tests {
             dec: axes(dec),
             sigma_hour: Angle::from_arcminutes(3.0),
             sigma_dec: Angle::from_arcminutes(4.0),
+            opposite: OppositeVerniers::default(),
         }
     }
 

@@ -3,6 +3,7 @@
 pub mod circle;
 pub mod dome;
 mod dual;
+pub mod eccentricity;
 pub mod engraved;
 pub mod errors;
 mod frames;
@@ -24,6 +25,7 @@ pub use circle::{
     DeclinationCircle, DeclinationNumbering, HourCircle, HourNumbering, Increases, Ring,
 };
 pub use dome::{EyepiecePlace, Slit, TubeDirections};
+pub use eccentricity::OppositeVerniers;
 pub use errors::MountErrors;
 pub use geometry::{Axes, Slopes, TooNearPole, to_axes, to_axes_with_slopes, to_sky};
 pub use graduation::{Graduation, VernierLine};

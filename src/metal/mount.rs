@@ -2,6 +2,7 @@
 
 use crate::angle::{Altitude, Angle, HourAngle};
 use crate::metal::circle::{DeclinationCircle, HourCircle};
+use crate::metal::errors::COUNT;
 
 /// How the mount carries its tube.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -57,6 +58,10 @@ pub struct ExpectedErrors {
     pub skew: Angle,
     /// Of the sag.
     pub sag: Angle,
+    /// Of the hour circle's eccentricity, each of its two parts; nothing where it is not looked for.
+    pub hour_eccentric: Angle,
+    /// Of the declination circle's eccentricity, each of its two parts; nothing where it is not looked for.
+    pub dec_eccentric: Angle,
 }
 
 impl Default for ExpectedErrors {
@@ -68,7 +73,22 @@ impl Default for ExpectedErrors {
             cone: Angle::from_arcminutes(30.0),
             skew: Angle::from_arcminutes(12.0),
             sag: Angle::from_arcminutes(3.0),
+            hour_eccentric: Angle::ZERO,
+            dec_eccentric: Angle::ZERO,
         }
+    }
+}
+
+impl ExpectedErrors {
+    /// Which errors are in question on this mount, in the order of [`crate::metal::errors::NAMES`]: all but the
+    /// eccentricities not looked for.
+    #[must_use]
+    pub fn in_question(&self) -> [bool; COUNT] {
+        let hour = self.hour_eccentric > Angle::ZERO;
+        let dec = self.dec_eccentric > Angle::ZERO;
+        [
+            true, true, true, true, true, true, true, hour, hour, dec, dec,
+        ]
     }
 }
 

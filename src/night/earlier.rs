@@ -6,7 +6,8 @@
 use serde::{Deserialize, Serialize};
 
 use crate::angle::Angle;
-use crate::estimate::{Estimate, Prior};
+use crate::estimate::{Covariance, Estimate, Prior};
+use crate::metal::errors::{ALWAYS, COUNT};
 use crate::metal::{ExpectedErrors, Mount, MountErrors, Ring};
 
 /// How far each error of a mount that stood still may have moved since, 1 sigma: clamps, bolts and
@@ -19,6 +20,11 @@ const STOOD_STILL: MountErrors = MountErrors {
     cone: Angle::from_arcminutes(2.0),
     skew: Angle::from_arcminutes(1.0),
     sag: Angle::from_arcminutes(0.5),
+    // an engraving stays where it is
+    hour_eccentric_sine: Angle::ZERO,
+    hour_eccentric_cosine: Angle::ZERO,
+    dec_eccentric_sine: Angle::ZERO,
+    dec_eccentric_cosine: Angle::ZERO,
 };
 
 /// What an earlier night taught of the mount.
@@ -96,7 +102,14 @@ impl StartedFrom {
                 *covariance.get_mut((row, column))? = square * minute * minute;
             }
         }
-        for place in self.forgotten() {
+        // an eccentricity the record did not look for, or the mount file no longer does, is as the mount file has it
+        let looked_for = |place: usize, covariance: &Covariance| covariance[(place, place)] > 0.0;
+        let eccentric: Vec<usize> = (ALWAYS..COUNT)
+            .filter(|&place| {
+                !looked_for(place, &covariance) || !looked_for(place, unread.covariance())
+            })
+            .collect();
+        for place in self.forgotten().chain(eccentric) {
             covariance.row_mut(place).fill(0.0);
             covariance.column_mut(place).fill(0.0);
             covariance[(place, place)] = unread.covariance()[(place, place)];
@@ -118,6 +131,11 @@ impl StartedFrom {
             (1, dec_index),
             (2, self.moved),
             (3, self.moved),
+            // a ring turned on its seat
+            (ALWAYS, self.hour_index_free),
+            (ALWAYS + 1, self.hour_index_free),
+            (ALWAYS + 2, self.dec_index_free),
+            (ALWAYS + 3, self.dec_index_free),
         ]
         .into_iter()
         .filter_map(|(place, forgotten)| forgotten.then_some(place))
@@ -137,27 +155,20 @@ impl StartedFrom {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::metal::errors::COUNT;
 
     /// Through minutes of arc and back, in radians.
     const ROUNDING: f64 = 1e-12;
 
     fn taught() -> Estimate {
         let sigmas = [2.0, 2.0, 1.0, 3.0, 2.0, 3.0, 1.5].map(Angle::from_arcminutes);
-        let mut covariance = crate::estimate::Covariance::zeros();
+        let mut covariance = Covariance::zeros();
         for (place, sigma) in sigmas.into_iter().enumerate() {
             covariance[(place, place)] = sigma.radians() * sigma.radians();
         }
         covariance[(1, 4)] = -0.9 * covariance[(1, 1)];
         covariance[(4, 1)] = covariance[(1, 4)];
-        let mut errors = [Angle::ZERO; COUNT];
-        for (error, minutes) in errors
-            .iter_mut()
-            .zip([200.0, -90.0, 14.0, -22.0, 8.0, -5.0, 2.0])
-        {
-            *error = Angle::from_arcminutes(minutes);
-        }
-        Estimate::new(MountErrors::from_array(errors), covariance)
+        let errors = [200.0, -90.0, 14.0, -22.0, 8.0, -5.0, 2.0].map(Angle::from_arcminutes);
+        Estimate::new(MountErrors::with_centred_circles(errors), covariance)
     }
 
     fn started(moved: bool, hour_index_free: bool) -> StartedFrom {
@@ -210,6 +221,36 @@ mod tests {
         let estimate = Estimate::from_prior(&prior.unwrap());
         assert!(!estimate.is_calibrated());
         assert!((estimate.errors().dec_index.arcminutes() + 90.0).abs() < 1e-9);
+    }
+
+    #[test]
+    fn an_eccentricity_is_kept_where_both_the_record_and_the_mount_file_look_for_it() {
+        let asked = ExpectedErrors {
+            hour_eccentric: Angle::from_arcminutes(5.0),
+            ..ExpectedErrors::default()
+        };
+        let sigma = |prior: &Prior, place: usize| {
+            Angle::from_radians(prior.covariance()[(place, place)].sqrt()).arcminutes()
+        };
+        // never looked for: as the mount file has it
+        let prior = started(false, false).prior(&asked).unwrap();
+        assert!((sigma(&prior, ALWAYS) - 5.0).abs() < 1e-9);
+        let mut found = started(false, false);
+        found.earlier.errors_arcmin[ALWAYS] = 4.0;
+        found.earlier.covariance_arcmin2[ALWAYS][ALWAYS] = 0.25;
+        let prior = found.prior(&asked).unwrap();
+        let kept = prior.mean().hour_eccentric_sine;
+        assert!(
+            (kept.arcminutes() - 4.0).abs() < 1e-9 && (sigma(&prior, ALWAYS) - 0.5).abs() < 1e-9
+        );
+        // no longer looked for
+        let prior = found.prior(&ExpectedErrors::default()).unwrap();
+        assert!(prior.mean().hour_eccentric_sine.abs().radians() < ROUNDING);
+        assert!(sigma(&prior, ALWAYS) < 1e-9);
+        // a ring turned on its seat since
+        found.hour_index_free = true;
+        let prior = found.prior(&asked).unwrap();
+        assert!((sigma(&prior, ALWAYS) - 5.0).abs() < 1e-9);
     }
 
     #[test]

@@ -1,16 +1,13 @@
 //! What is known of the mount as a night stands: the estimate from every star in use.
 //!
-//! A ring set anew, or knocked, makes its index free again; an axis turned by its adjusters makes the
+//! A ring set anew, or knocked, makes its index free again (and its eccentricity unsure, where that is looked for); an axis turned by its adjusters makes the
 //! axis unsure again. What the stars before told of all the other errors is kept each time.
 
-use crate::angle::{Angle, Latitude};
-use crate::estimate::{Estimate, Fit, Prior, Sight, fit};
-use crate::metal::{ExpectedErrors, MountErrors, errors};
+use crate::angle::Latitude;
+use crate::estimate::{Estimate, Fit, Prior, Sight, Touched, fit};
+use crate::metal::ExpectedErrors;
 use crate::night::state::{State, Zeros};
 use crate::time::Utc;
-
-/// As free as an index nothing is known of.
-const FREE: Angle = Angle::from_degrees(60.0);
 
 /// What was believed before any star of the night.
 #[derive(Clone, Copy, Debug)]
@@ -59,10 +56,14 @@ impl Known {
         let mut turn_over = |to: Zeros, sights: &mut Vec<Sight>, read_at: &mut Option<Utc>| {
             if to != zeros {
                 let before = Estimate::from(&fit(latitude, &prior, sights));
-                let unsure = made_unsure(zeros, to, grounds.expected);
-                prior = Prior::from_estimate(&before, unsure);
+                let touched = Touched {
+                    hour_ring: zeros.hour != to.hour,
+                    dec_ring: zeros.dec != to.dec,
+                    axis: zeros.axis != to.axis,
+                };
+                prior = Prior::from_estimate(&before, touched.widening(grounds.expected));
                 sights.clear();
-                if zeros.hour != to.hour || zeros.dec != to.dec {
+                if touched.hour_ring || touched.dec_ring {
                     *read_at = None;
                 }
                 zeros = to;
@@ -85,25 +86,11 @@ impl Known {
     }
 }
 
-/// By how much each error may have changed where the zeros went from one count to another.
-fn made_unsure(from: Zeros, to: Zeros, expected: &ExpectedErrors) -> [Angle; errors::COUNT] {
-    let where_changed = |changed: bool, by: Angle| if changed { by } else { Angle::ZERO };
-    let axis = from.axis != to.axis;
-    MountErrors {
-        hour_index: where_changed(from.hour != to.hour, FREE),
-        dec_index: where_changed(from.dec != to.dec, FREE),
-        polar_high: where_changed(axis, expected.polar_high),
-        polar_east: where_changed(axis, expected.polar_east),
-        ..MountErrors::default()
-    }
-    .to_array()
-}
-
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::angle::{Declination, HourAngle};
-    use crate::metal::{Axes, Side, to_axes};
+    use crate::angle::{Angle, Declination, HourAngle};
+    use crate::metal::{Axes, MountErrors, Side, to_axes};
     use crate::night::event::{Circle, Event, Stamped};
     use crate::night::reading::StarReading;
 

@@ -7,7 +7,7 @@ use serde::{Deserialize, Serialize};
 
 use crate::angle::{Angle, AxisAngle, Declination, HourAngle};
 use crate::estimate::Sight;
-use crate::metal::{Axes, Side};
+use crate::metal::{Axes, OppositeVerniers, Side};
 
 /// The two shown axis angles.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
@@ -104,6 +104,7 @@ impl StarReading {
             dec: axes(&self.dec_candidates_deg),
             sigma_hour: Angle::from_degrees(self.hour_sigma_deg),
             sigma_dec: Angle::from_degrees(self.dec_sigma_deg),
+            opposite: OppositeVerniers::default(),
         }
     }
 }

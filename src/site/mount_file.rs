@@ -3,10 +3,12 @@
 
 use crate::angle::{Altitude, Angle, HourAngle};
 use crate::bounds::{
-    AXES_ABOVE_FLOOR, AXES_IN_DOME, Bound, DOME_RADIUS, EXPECTED_ERROR, EYEPIECE, FIELD,
-    LIMIT_HOUR_ANGLE, LOWEST_ALTITUDE, TUBE_OFFSET,
+    AXES_ABOVE_FLOOR, AXES_IN_DOME, Bound, DOME_RADIUS, ECCENTRICITY, EXPECTED_ERROR, EYEPIECE,
+    FIELD, LIMIT_HOUR_ANGLE, LOWEST_ALTITUDE, TUBE_OFFSET,
 };
-use crate::metal::{Dome, ExpectedErrors, HourAngleSpan, Kind, Limits, Mount, Optic, Ring, Tube};
+use crate::metal::{
+    Dome, ExpectedErrors, HourAngleSpan, HourCircle, Kind, Limits, Mount, Optic, Ring, Tube,
+};
 use crate::sexagesimal::Unit;
 use crate::site::circle_file;
 use crate::site::document::{self, Section};
@@ -68,7 +70,9 @@ fn mount(top: &mut Section<'_>) -> Option<Mount> {
     let declination_circle =
         top.required_table("declination-circle", circle_file::declination_circle);
     let limits = top.table("limits", |section| Some(limits(section, kind)));
-    let expected = top.table("expected-errors", |section| Some(expected_errors(section)));
+    let expected = top.table("expected-errors", |section| {
+        Some(expected_errors(section, hour_circle.as_ref()))
+    });
     let tube = top.table("tube", tube);
     let dome = top.table("dome", |section| dome(section, tube));
     let optics = optics(top);
@@ -142,7 +146,7 @@ fn span(value: &Value<'_>) -> Option<HourAngleSpan> {
     })
 }
 
-fn expected_errors(section: &mut Section<'_>) -> ExpectedErrors {
+fn expected_errors(section: &mut Section<'_>, hour_circle: Option<&HourCircle>) -> ExpectedErrors {
     let usual = ExpectedErrors::default();
     let size = |value: Value<'_>| {
         written_angle::size(&value, Some(Unit::Degrees), &EXPECTED_ERROR, Angle::degrees)
@@ -160,13 +164,43 @@ fn expected_errors(section: &mut Section<'_>) -> ExpectedErrors {
     });
     let both = both.and_then(size);
     let [cone, skew, sag] = ["cone", "skew", "sag"].map(|key| section.optional(key).and_then(size));
+    let hour_eccentric = hour_eccentricity(section, hour_circle);
+    let dec_eccentric = section
+        .optional("declination-circle-eccentricity")
+        .and_then(eccentricity);
     ExpectedErrors {
         polar_high: high.or(both).unwrap_or(usual.polar_high),
         polar_east: east.or(both).unwrap_or(usual.polar_east),
         cone: cone.unwrap_or(usual.cone),
         skew: skew.unwrap_or(usual.skew),
         sag: sag.unwrap_or(usual.sag),
+        hour_eccentric: hour_eccentric.unwrap_or(usual.hour_eccentric),
+        dec_eccentric: dec_eccentric.unwrap_or(usual.dec_eccentric),
     }
+}
+
+fn eccentricity(value: Value<'_>) -> Option<Angle> {
+    written_angle::size(&value, Some(Unit::Degrees), &ECCENTRICITY, Angle::degrees)
+}
+
+/// The hour circle's eccentricity, where its readings can tell of one.
+fn hour_eccentricity(section: &mut Section<'_>, hour_circle: Option<&HourCircle>) -> Option<Angle> {
+    const TWO_MARKS: &str = "leave it out, and read the circle at two opposite marks, as hour and hour-b: their mean is free of it";
+    let value = section.optional("hour-circle-eccentricity")?;
+    let expected = eccentricity(value)?;
+    let circle = hour_circle.filter(|_| expected > Angle::ZERO);
+    if circle.is_some_and(|circle| circle.ring == Ring::Driven) {
+        value.fault(
+            "a ring that rides with the drive turns under its index: no eccentricity can be found from its readings",
+            TWO_MARKS,
+        );
+    } else if circle.is_some_and(|circle| circle.second_fiducial) {
+        value.fault(
+            "an hour circle read at one mark or the other shows its eccentricity now one way, now the other",
+            TWO_MARKS,
+        );
+    }
+    Some(expected)
 }
 
 fn metres(section: &mut Section<'_>, key: &'static str, bound: &Bound) -> Option<f64> {

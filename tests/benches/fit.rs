@@ -9,12 +9,14 @@ use std::hint::black_box;
 use criterion::{Criterion, criterion_group, criterion_main};
 use nonius::angle::{Angle, AxisAngle, Declination, HourAngle, Latitude};
 use nonius::estimate::{Prior, Sight, fit};
-use nonius::metal::{ExpectedErrors, MountErrors, Side, to_axes, to_axes_with_slopes};
+use nonius::metal::{
+    ExpectedErrors, MountErrors, OppositeVerniers, Side, to_axes, to_axes_with_slopes,
+};
 
 const LATITUDE_DEG: f64 = 52.0;
 
 fn mount() -> MountErrors {
-    MountErrors::from_array(
+    MountErrors::with_centred_circles(
         [2000.0, 900.0, 40.0, -50.0, 20.0, -8.0, 2.0].map(Angle::from_arcminutes),
     )
 }
@@ -45,6 +47,7 @@ fn readings(count: usize) -> Vec<Sight> {
                 dec: vec![off(axes.dec, 2.0 * turn)],
                 sigma_hour: Angle::from_arcminutes(3.0),
                 sigma_dec: Angle::from_arcminutes(3.0),
+                opposite: OppositeVerniers::default(),
             }
         })
         .collect()
@@ -77,6 +80,11 @@ fn misread(sights: &[Sight], nth: usize) -> Vec<Sight> {
 fn estimate(c: &mut Criterion) {
     let latitude = Latitude::from_degrees(LATITUDE_DEG);
     let prior = Prior::from_expected(&ExpectedErrors::default());
+    let off_centre = Prior::from_expected(&ExpectedErrors {
+        hour_eccentric: Angle::from_arcminutes(5.0),
+        dec_eccentric: Angle::from_arcminutes(5.0),
+        ..ExpectedErrors::default()
+    });
     c.bench_function("slopes of the geometry at one place", |b| {
         let (h, d) = (
             HourAngle::from_degrees(-30.0),
@@ -85,20 +93,34 @@ fn estimate(c: &mut Criterion) {
         b.iter(|| to_axes_with_slopes(black_box(h), d, latitude, &mount(), Side::TubeWest));
     });
     let many = readings(200);
-    for (name, sights) in [
-        ("fit of 6 readings", readings(6)),
-        ("fit of 6 readings, one misread", misread(&readings(6), 6)),
+    for (name, prior, sights) in [
+        ("fit of 6 readings", &prior, readings(6)),
+        (
+            "fit of 6 readings, one misread",
+            &prior,
+            misread(&readings(6), 6),
+        ),
         (
             "fit of 20 readings, two misread",
+            &prior,
             misread(&readings(20), 10),
         ),
-        ("fit of 200 readings", many.clone()),
-        ("fit of 200 ambiguous readings", ambiguous(&many)),
-        ("fit of 200 readings, ten misread", misread(&many, 20)),
+        ("fit of 200 readings", &prior, many.clone()),
+        (
+            "fit of 200 readings, circles off centre",
+            &off_centre,
+            many.clone(),
+        ),
+        ("fit of 200 ambiguous readings", &prior, ambiguous(&many)),
+        (
+            "fit of 200 readings, ten misread",
+            &prior,
+            misread(&many, 20),
+        ),
     ] {
-        assert!(fit(latitude, &prior, &sights).converged, "{name}");
+        assert!(fit(latitude, prior, &sights).converged, "{name}");
         c.bench_function(name, |b| {
-            b.iter(|| fit(latitude, &prior, black_box(&sights)));
+            b.iter(|| fit(latitude, prior, black_box(&sights)));
         });
     }
 }

@@ -8,6 +8,7 @@ mod cautions;
 mod circles;
 mod coordinates;
 mod dial;
+mod eccentric;
 mod faults;
 mod mark;
 mod misread;

@@ -56,7 +56,7 @@ pub const SOUTHERN: [&str; 12] = [
 ];
 
 pub fn pretended() -> MountErrors {
-    MountErrors::from_array(TRUE.map(Angle::from_arcminutes))
+    MountErrors::with_centred_circles(TRUE.map(Angle::from_arcminutes))
 }
 
 /// What the program needs to be told of a station.

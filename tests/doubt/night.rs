@@ -86,6 +86,7 @@ impl<'a> Night<'a> {
             cone: error(expected.cone),
             skew: error(expected.skew),
             sag: error(expected.sag),
+            ..MountErrors::default()
         };
         let south = if happens(chance, 0.5) { -1.0 } else { 1.0 };
         let observer = Observer {
@@ -257,6 +258,7 @@ fn mount(chance: &mut Chance) -> Mount {
             cone: minutes(8.0),
             skew: minutes(6.0),
             sag: minutes(3.0),
+            ..ExpectedErrors::default()
         }
     };
     Mount {

@@ -129,6 +129,7 @@ fn index_only(sky: &Sky, sight: &Sight) -> Estimate {
         cone: Angle::ZERO,
         skew: Angle::ZERO,
         sag: Angle::ZERO,
+        ..ExpectedErrors::default()
     };
     let prior = Prior::from_expected(&exact);
     Estimate::from(&fit(sky.latitude, &prior, std::slice::from_ref(sight)))

@@ -6,7 +6,7 @@
 
 use nonius::angle::{Angle, AxisAngle, Declination, HourAngle, Latitude};
 use nonius::estimate::{Estimate, Prediction, Sight};
-use nonius::metal::{Axes, Kind, MountErrors, Side, to_axes, to_sky};
+use nonius::metal::{Axes, Kind, MountErrors, OppositeVerniers, Side, to_axes, to_sky};
 use nonius::sky::separation;
 
 use crate::chance::Chance;
@@ -69,6 +69,7 @@ impl Sky {
                 cone,
                 skew,
                 sag,
+                ..MountErrors::default()
             },
         }
     }
@@ -163,6 +164,7 @@ pub fn sight(place: &Place, hand: Hand) -> Sight {
         dec: Vec::new(),
         sigma_hour: hand.hour,
         sigma_dec: hand.dec,
+        opposite: OppositeVerniers::default(),
     }
 }
 

@@ -3,7 +3,7 @@
 
 use nonius::angle::{Angle, AxisAngle};
 use nonius::estimate::{Estimate, Fit, Prior, Sight, fit};
-use nonius::metal::ExpectedErrors;
+use nonius::metal::{ExpectedErrors, OppositeVerniers};
 
 use crate::mount::{errors, off_deg, place, side};
 use crate::table::{Row, number_of, rows};
@@ -32,6 +32,7 @@ fn prior(row: &Row) -> Prior {
         cone: sigma("cone"),
         skew: sigma("skew"),
         sag: sigma("sag"),
+        ..ExpectedErrors::default()
     })
 }
 
@@ -45,6 +46,7 @@ fn sight(row: &Row) -> Sight {
         dec: vec![AxisAngle::from_degrees(row.number("dec_axis_deg"))],
         sigma_hour: Angle::from_arcminutes(row.number("sigma_hour_arcmin")),
         sigma_dec: Angle::from_arcminutes(row.number("sigma_dec_arcmin")),
+        opposite: OppositeVerniers::default(),
     }
 }
 
@@ -184,6 +186,7 @@ fn a_published_pair_of_readings_gives_its_index_and_polar_error() {
         cone: Angle::ZERO,
         skew: Angle::ZERO,
         sag: Angle::ZERO,
+        ..ExpectedErrors::default()
     });
     let seen = value("declination of the star") + value("refraction");
     let sights: Vec<Sight> = [
@@ -208,6 +211,7 @@ fn a_published_pair_of_readings_gives_its_index_and_polar_error() {
             dec: [read, -read, beyond, -beyond].map(AxisAngle::new).to_vec(),
             sigma_hour: Angle::from_arcminutes(1.0),
             sigma_dec: Angle::from_arcseconds(1.0),
+            opposite: OppositeVerniers::default(),
         }
     })
     .collect();

@@ -28,7 +28,7 @@ pub fn side(row: &Row) -> Side {
 
 /// The errors a row names.
 pub fn errors(row: &Row) -> MountErrors {
-    MountErrors::from_array(ERRORS.map(|name| Angle::from_arcminutes(row.number(name))))
+    MountErrors::with_centred_circles(ERRORS.map(|name| Angle::from_arcminutes(row.number(name))))
 }
 
 /// The observed place and latitude a row names.

@@ -83,6 +83,7 @@ pub fn errors() -> MountErrors {
         cone: Angle::from_arcminutes(9.0),
         skew: Angle::from_arcminutes(-5.0),
         sag: Angle::from_arcminutes(2.0),
+        ..MountErrors::default()
     }
 }
 
