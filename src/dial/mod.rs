@@ -10,10 +10,12 @@ use crate::estimate::{Prediction, chance};
 use crate::metal::{Mount, Optic, Side, TubeDirections, to_axes};
 use crate::sky::{Body, Moment, Observed, Source};
 
+pub mod bright;
 pub mod caution;
 pub mod doubt;
 pub mod json;
 pub mod mark;
+pub mod next_star;
 mod outlook;
 pub mod setting;
 pub mod setup;

@@ -19,23 +19,32 @@ use crate::screen::look::{Look, wrapped};
 use crate::screen::panel::Panel;
 use crate::screen::shown::{From, Shown};
 
-/// The columns of the errors: name, value, spread.
+/// The columns of the errors: name, value, spread; fewer where the screen is narrow.
 const ERRORS_WIDTH: u16 = 36;
+const NARROW_ERRORS_WIDTH: u16 = 28;
+
+/// A body narrower than this has no room for the long names.
+const NARROW: u16 = 70;
 
 /// Draws the calibration view.
 pub fn draw(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown: &Shown) {
     let state = from.night.state();
-    let errors = error_lines(from.known);
+    let narrow = body.width < NARROW;
+    let errors = error_lines(from.known, narrow);
     #[allow(clippy::cast_possible_truncation)] // a few lines
     let upper = layout::rows_of(body, 0, errors.len() as u16 + 1);
     let left = Rect {
-        width: ERRORS_WIDTH.min(upper.width),
+        width: if narrow {
+            NARROW_ERRORS_WIDTH
+        } else {
+            ERRORS_WIDTH
+        },
         ..upper
     };
     lines(look, buffer, left, &errors, None);
     let right = Rect {
-        x: left.right() + 2,
-        width: upper.width.saturating_sub(left.width + 2),
+        x: left.right() + 1,
+        width: upper.width.saturating_sub(left.width + 1),
         ..upper
     };
     draw_stars(look, buffer, right, from, state);
@@ -54,22 +63,18 @@ pub fn draw(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown:
     }
 }
 
-fn error_lines(known: &Known) -> Vec<String> {
-    let heading = format!("{:<18}{:>10}{:>8}", "error", "value", "1 sigma");
+fn error_lines(known: &Known, narrow: bool) -> Vec<String> {
+    let width = if narrow { 10 } else { 18 };
+    let heading = format!("{:<width$}{:>10}{:>8}", "error", "value", "1 sigma");
     let variances = known.estimate.covariance().diagonal();
     let errors = known.estimate.errors().to_array();
     let terms = NAMES.iter().zip(errors).zip(variances.iter().copied());
     let line = |((name, value), variance): ((&&str, Angle), f64)| {
         let sigma = Angle::from_radians(variance.max(0.0).sqrt());
+        let name = shortened(name, narrow);
         // an error that is held at nothing is no news
-        (sigma > Angle::ZERO).then(|| {
-            format!(
-                "{:<18}{:>10}{:>8}",
-                shortened(name),
-                signed(value),
-                spread(sigma)
-            )
-        })
+        (sigma > Angle::ZERO)
+            .then(|| format!("{name:<width$}{:>10}{:>8}", signed(value), spread(sigma)))
     };
     std::iter::once(heading)
         .chain(terms.filter_map(line))
@@ -77,17 +82,33 @@ fn error_lines(known: &Known) -> Vec<String> {
 }
 
 /// The name in the room there is.
-fn shortened(name: &str) -> String {
-    name.replace("hour-circle", "hour")
-        .replace("declination-circle", "declination")
+fn shortened(name: &str, narrow: bool) -> String {
+    let short = name
+        .replace("hour-circle", "hour")
+        .replace("declination-circle", "declination");
+    if narrow {
+        short.replace("declination", "dec").replace("polar ", "")
+    } else {
+        short
+    }
 }
 
 /// An error with its sign, in minutes of arc or degrees.
 fn signed(value: Angle) -> String {
     if value.abs().degrees() < 10.0 {
-        format!("{:+.1}'", value.arcminutes())
+        tenths(value)
     } else {
         format!("{:+.2}°", value.degrees())
+    }
+}
+
+/// Minutes of arc to a tenth, with a sign; nothing has none.
+fn tenths(angle: Angle) -> String {
+    let tenths = (angle.arcminutes() * 10.0).round() / 10.0;
+    if tenths == 0.0 {
+        "0.0'".to_owned()
+    } else {
+        format!("{tenths:+.1}'")
     }
 }
 
@@ -131,11 +152,7 @@ fn star_lines(known: &Known, state: &State) -> Vec<String> {
             Some(Some(left)) => {
                 let let_go = left.weight() < LET_GO;
                 let mark = if let_go { " not trusted" } else { "" };
-                format!(
-                    "{:>8}{:>8}{mark}",
-                    format!("{:+.1}'", left.hour.arcminutes()),
-                    format!("{:+.1}'", left.dec.arcminutes())
-                )
+                format!("{:>8}{:>8}{mark}", tenths(left.hour), tenths(left.dec))
             }
             Some(None) => "  too near the pole".to_owned(),
             None if read.reading.used => "  before a zero was set".to_owned(),
@@ -151,12 +168,10 @@ const LET_GO: f64 = 0.5;
 
 fn consequences(from: &From<'_>, shown: &Shown) -> Vec<String> {
     let mut said = Vec::new();
-    said.extend(
-        shown
-            .insight
-            .iter()
-            .flat_map(|insight| insight.words.iter().cloned()),
-    );
+    if let Some(insight) = &shown.insight {
+        said.push(insight.next_in_words());
+        said.extend(insight.timing_in_words());
+    }
     said.extend(earlier_night(from));
     said
 }

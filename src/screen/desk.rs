@@ -2,8 +2,10 @@
 //! handed what happens and when, and holds neither clock nor terminal.
 
 use crate::catalog::Target;
+use crate::dial::bright::FAINTEST_RIVAL_HP;
 use crate::night::{Begun, Effect, Event, Known, Session};
 use crate::screen::happening::Happening;
+use crate::screen::insight::Insight;
 use crate::screen::keys::Mode;
 use crate::screen::light::Light;
 use crate::screen::look::Look;
@@ -11,7 +13,6 @@ use crate::screen::observatory::Observatory;
 use crate::screen::outlook::Foresight;
 use crate::screen::panel::{Doing, Panel};
 use crate::screen::shown::{From, Shown};
-use crate::screen::stars::FAINTEST_HP;
 use crate::screen::update::{Scene, update};
 use crate::screen::view::view;
 use crate::sky::Moment;
@@ -43,7 +44,7 @@ impl<'d> Desk<'d> {
     ) -> Self {
         let state = session.night().state();
         let known = Known::of(&observatory.grounds(), state);
-        let bright = observatory.catalogue.bright_stars(FAINTEST_HP);
+        let bright = observatory.catalogue.bright_stars(FAINTEST_RIVAL_HP);
         let mut panel = Panel::new(light);
         let resumed = begun.resumed.then(|| {
             let (found, missed) = state.tally();
@@ -164,12 +165,27 @@ impl<'d> Desk<'d> {
                     self.panel.enter(then);
                 }
                 self.panel.said = Some(said).filter(|said| !said.is_empty());
+                self.foresight.forget();
                 for effect in &effects {
                     self.follow(effect);
+                }
+                if event.reading().is_some() {
+                    self.say_what_it_told();
                 }
             }
             Err(fault) => self.panel.say(format!("NOT recorded: {fault}")),
         }
+    }
+
+    /// After a reading: what the next one would gain.
+    fn say_what_it_told(&mut self) {
+        let from = self.from();
+        let setup = from.setup(false);
+        let state = self.session.night().state();
+        let insight = Insight::of(&setup, from.moment, &self.bright, &self.known, state);
+        let said = self.panel.said.take().unwrap_or_default();
+        self.panel
+            .say(format!("{said}. {}", insight.next_in_words()));
     }
 
     fn follow(&mut self, effect: &Effect) {

@@ -8,29 +8,36 @@ use crate::screen::entry;
 use crate::screen::light::Strength;
 use crate::screen::look::Look;
 use crate::screen::panel::Panel;
-use crate::screen::stars::Placed;
+use crate::screen::shown::Shown;
 use crate::screen::target_line::description;
 use crate::screen::words::compass;
 
 /// Draws the stars to choose from.
-pub fn draw_stars(look: Look, buffer: &mut Buffer, area: Rect, panel: &Panel, stars: &[Placed]) {
-    let lines: Vec<String> = stars
+pub fn draw_stars(look: Look, buffer: &mut Buffer, area: Rect, panel: &Panel, shown: &Shown) {
+    let gain = |star: &str| {
+        let insight = shown.insight.as_ref();
+        insight.and_then(|insight| insight.gain(star))
+    };
+    let lines: Vec<String> = shown
+        .stars
         .iter()
         .map(|placed| {
             let place = &placed.observed;
+            let gain = gain(&placed.star.name);
             format!(
-                "{:<14} {:<3} mag {:>4.1}  {:>2.0}° up  {:>3.0}° {:<2}  {}",
+                "{:<14} {:<3} {:>4.1} {:>2.0}° up {:>3.0}° {:<2} {} {}",
                 shortened(&placed.star.name, 14),
                 placed.star.constellation.map_or("", |c| c.abbreviation),
                 placed.star.magnitude.unwrap_or_default(),
                 place.altitude.degrees(),
-                place.azimuth.degrees(),
+                place.azimuth.degrees().round() % 360.0,
                 compass(place.azimuth),
                 placed.side.in_words(),
+                gain.map_or_else(String::new, |gain| format!("{:>+3.0}", 100.0 * gain)),
             )
         })
         .collect();
-    let heading = "stars well placed now, the brightest first";
+    let heading = "stars well placed now; first those that help most, in points";
     draw(look, buffer, area, panel, (heading, "star"), &lines);
 }
 

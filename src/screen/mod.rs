@@ -28,7 +28,6 @@ pub mod picture;
 pub mod reading;
 pub mod run;
 pub mod shown;
-pub mod stars;
 pub mod stopped;
 pub mod target_line;
 pub mod terminal;

@@ -1,6 +1,9 @@
 //! Where an object is going: rising or setting, and until when it stays clear of the horizon mask
 //! and within the mount's reach.
 
+use std::rc::Rc;
+
+use crate::screen::insight::Insight;
 use crate::screen::observatory::Observatory;
 use crate::sky::{Moment, Observed, Source};
 use crate::time::Utc;
@@ -71,9 +74,30 @@ impl Outlook {
 #[derive(Clone, Debug, Default)]
 pub struct Foresight {
     last: Option<(String, Utc, Outlook)>,
+    insight: Option<(Utc, Rc<Insight>)>,
 }
 
+/// What was foreseen holds so long.
+const GOOD_FOR_S: f64 = 60.0;
+
 impl Foresight {
+    /// What follows from what is known of the mount, worked out anew once a minute.
+    pub fn insight(&mut self, utc: Utc, work_out: impl FnOnce() -> Insight) -> Rc<Insight> {
+        if let Some((at, insight)) = &self.insight
+            && (0.0..GOOD_FOR_S).contains(&utc.seconds_since(*at))
+        {
+            return Rc::clone(insight);
+        }
+        let insight = Rc::new(work_out());
+        self.insight = Some((utc, Rc::clone(&insight)));
+        insight
+    }
+
+    /// The record has changed: what followed from it no longer does.
+    pub fn forget(&mut self) {
+        self.insight = None;
+    }
+
     /// The outlook of an object by its name, worked out anew once a minute.
     pub fn outlook(
         &mut self,
@@ -82,7 +106,6 @@ impl Foresight {
         source: &Source,
         moment: &Moment,
     ) -> Outlook {
-        const GOOD_FOR_S: f64 = 60.0;
         if let Some((last, at, outlook)) = &self.last
             && last == name
             && (0.0..GOOD_FOR_S).contains(&moment.utc().seconds_since(*at))

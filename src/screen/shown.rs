@@ -2,7 +2,10 @@
 //!
 //! What the observer sees is what a key acts on: the same value goes to the view and to the update.
 
+use std::rc::Rc;
+
 use crate::catalog::{Filter, Target};
+use crate::dial::bright::Placed;
 use crate::dial::{self, CautionCode, Dial, NotDialled, Setup, TubePlace};
 use crate::metal::{self, Side, SideRequest};
 use crate::night::{Known, Night, Setting, State};
@@ -12,7 +15,6 @@ use crate::screen::observatory::Observatory;
 use crate::screen::outlook::{Foresight, Outlook};
 use crate::screen::panel::Panel;
 use crate::screen::reading::{Sitting, TypedReading};
-use crate::screen::stars::{self, Placed};
 use crate::sky::Moment;
 
 /// More matches than a screen has lines.
@@ -53,7 +55,7 @@ pub struct Shown {
     /// Where it is going.
     pub outlook: Option<Outlook>,
     /// What follows from what is known of the mount, while the observer looks at that.
-    pub insight: Option<Insight>,
+    pub insight: Option<Rc<Insight>>,
     /// The stars to choose from.
     pub stars: Vec<Placed>,
     /// The objects that match what is typed.
@@ -120,16 +122,22 @@ impl From<'_> {
             }
         };
         let typed = panel.typed.line().value();
+        let insight = matches!(panel.mode, Mode::Calibration | Mode::ChoosingStar).then(|| {
+            let work_out = || {
+                let setup = self.setup(false);
+                Insight::of(&setup, self.moment, self.bright, self.known, state)
+            };
+            foresight.insight(self.moment.utc(), work_out)
+        });
         Shown {
             moment: *self.moment,
             settings,
             outlook,
-            insight: (panel.mode == Mode::Calibration)
-                .then(|| Insight::of(self.observatory, self.known, self.moment)),
-            stars: match panel.mode {
-                Mode::ChoosingStar => self.stars(typed),
+            stars: match (&insight, panel.mode) {
+                (Some(insight), Mode::ChoosingStar) => Self::stars(insight, typed),
                 _ => Vec::new(),
             },
+            insight,
             matches: match panel.mode {
                 Mode::Searching => self.matches(typed),
                 _ => Vec::new(),
@@ -140,12 +148,12 @@ impl From<'_> {
         }
     }
 
-    fn settings(&self, target: &Target, outlook: Option<Outlook>) -> Settings {
+    /// What settings are worked out from.
+    #[must_use]
+    pub fn setup(&self, sun_risk_accepted: bool) -> Setup<'_> {
         let observatory = self.observatory;
         let state = self.night.state();
-        let accepted =
-            observatory.sun_risk_accepted || state.sun_risk_is_acknowledged(&target.name);
-        let setup = Setup {
+        Setup {
             horizon: &observatory.horizon,
             mount: &observatory.mount,
             estimate: &self.known.estimate,
@@ -153,8 +161,16 @@ impl From<'_> {
             tube: tube(state),
             lead_s: observatory.lead_s,
             calibrated_at: self.known.read_at,
-            sun_risk_accepted: accepted,
-        };
+            sun_risk_accepted,
+        }
+    }
+
+    fn settings(&self, target: &Target, outlook: Option<Outlook>) -> Settings {
+        let observatory = self.observatory;
+        let state = self.night.state();
+        let accepted =
+            observatory.sun_risk_accepted || state.sun_risk_is_acknowledged(&target.name);
+        let setup = self.setup(accepted);
         match dial::dial(&setup, &observatory.lead(self.moment), target) {
             Ok(dial) => {
                 let forced = state.side.is_some();
@@ -181,16 +197,14 @@ impl From<'_> {
         }
     }
 
-    fn stars(&self, typed: &str) -> Vec<Placed> {
-        let state = self.night.state();
-        stars::well_placed(
-            self.observatory,
-            self.bright,
-            self.moment,
-            request(state),
-            state.tube.as_ref().map(|tube| tube.side),
-            typed,
-        )
+    /// The stars to choose from whose names fit what is typed.
+    fn stars(insight: &Insight, typed: &str) -> Vec<Placed> {
+        let typed = typed.trim().to_lowercase();
+        let fits = |placed: &&Placed| {
+            let mut names = placed.star.names();
+            names.any(|name| name.to_lowercase().contains(&typed))
+        };
+        insight.stars.iter().filter(fits).cloned().collect()
     }
 
     fn matches(&self, typed: &str) -> Vec<Target> {

@@ -69,7 +69,7 @@ fn draw_body(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown
     let panel = from.panel;
     match panel.mode {
         Mode::Stepping | Mode::Centring => draw_settings(look, buffer, body, from, shown),
-        Mode::ChoosingStar => lists::draw_stars(look, buffer, body, panel, &shown.stars),
+        Mode::ChoosingStar => lists::draw_stars(look, buffer, body, panel, shown),
         Mode::Searching => lists::draw_matches(look, buffer, body, panel, &shown.matches),
         Mode::Reading => draw_reading(look, buffer, body, from, shown),
         Mode::Calibration => calibration::draw(look, buffer, body, from, shown),

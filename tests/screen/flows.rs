@@ -10,10 +10,10 @@ use crate::scene::{EVENING, NOON, Picture, Scene};
 /// What the circles of the pretended mount show, as the demonstration line of a star says.
 fn circles_shown(picture: &Picture) -> (String, String) {
     let text = picture.text();
-    let line = text.lines().find(|line| line.contains("the circles show "));
+    let line = text.lines().find(|line| line.contains("circles show "));
     let shown = line
         .unwrap_or_else(|| panic!("no demonstration:\n{text}"))
-        .split("the circles show ")
+        .split("circles show ")
         .nth(1)
         .unwrap();
     let (hour, dec) = shown.split_once(" and ").unwrap();
@@ -378,4 +378,20 @@ fn a_star_timed_on_a_mark_is_known_better_than_one_looked_at() {
     // 2 s of time and a twentieth of four minutes, not 0.15 of four minutes
     let sigma_s = readings[0].reading.hour_sigma_deg * 240.0;
     assert!((sigma_s - 12.2).abs() < 0.1, "{sigma_s} s");
+}
+
+#[test]
+fn the_calibration_view_shows_what_is_known_and_which_star_next() {
+    let scene = Scene::at(EVENING, 80, 24);
+    for star in ["capella", "deneb", "aldebaran"] {
+        scene.play(&reading_of(&scene, star));
+    }
+    insta::assert_snapshot!("the_mount_as_known", scene.play("<space> c").text());
+    let picture = scene.play("c <down> x");
+    assert!(picture.says("Deneb is set aside"), "{}", picture.text());
+    let picture = scene.play("c <down> x");
+    assert!(picture.says("Deneb is used again"), "{}", picture.text());
+    let narrow = Scene::at(EVENING, 60, 20);
+    narrow.play(&reading_of(&narrow, "capella"));
+    insta::assert_snapshot!("narrow_mount_as_known", narrow.play("c").text());
 }
