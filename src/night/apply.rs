@@ -68,8 +68,9 @@ impl State {
             }
             Event::StartedFrom { earlier } => self.started_from = earlier.as_deref().cloned(),
             Event::ClockCorrected { seconds } => self.correct_clock(*seconds),
-            Event::ClockJumped { .. } => {
+            Event::ClockJumped { seconds } => {
                 self.clock_jumps += 1;
+                self.clock_leapt_s = Some(*seconds);
                 // how far a driven tube has gone since is no longer known
                 self.tube = None;
             }

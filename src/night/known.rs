@@ -148,6 +148,7 @@ mod tests {
             dec_sigma_deg: SIGMA_DEG,
             driven: false,
             timed: false,
+            doubted: String::new(),
             off_arcmin: None,
             used: true,
         }))

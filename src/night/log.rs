@@ -148,6 +148,11 @@ fn note(event: &Event) -> String {
         } => format!("{}, {}", started.earlier.night, started.words()),
         Event::StartedFrom { earlier: None } => "the mount file alone".to_owned(),
         Event::ReadingUsed { line, .. } => format!("the reading of line {line}"),
+        Event::StarRead(reading)
+        | Event::Found {
+            reading: Some(reading),
+            ..
+        } if !reading.doubted.is_empty() => reading.doubted.clone(),
         Event::StarRead(reading) if !reading.used => "not used in the estimate".to_owned(),
         Event::StarRead(reading) if reading.timed => "timed".to_owned(),
         Event::TargetTaken { target, .. } | Event::TargetAdded { target } => target.note.clone(),

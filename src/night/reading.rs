@@ -65,6 +65,9 @@ pub struct StarReading {
     /// The star was timed as it crossed the middle, with the circle set on a mark.
     #[serde(default)]
     pub timed: bool,
+    /// What was typed at first and what it was then taken for, where the reading was doubted.
+    #[serde(default)]
+    pub doubted: String,
     /// How far on the sky the reading lay from what was expected, where anything was.
     #[serde(default)]
     pub off_arcmin: Option<f64>,
@@ -155,6 +158,7 @@ mod tests {
             dec_sigma_deg: 0.15,
             driven: false,
             timed: false,
+            doubted: String::new(),
             off_arcmin: None,
             used: true,
         }

@@ -34,6 +34,8 @@ pub struct State {
     pub clock_correction_s: f64,
     /// How often the clock jumped: what was timed before cannot be compared with what came after.
     pub clock_jumps: u32,
+    /// By how much it jumped last, in seconds, positive if forward.
+    pub clock_leapt_s: Option<f64>,
     /// The objects the observer answers for, near the Sun as they are.
     pub sun_risks: BTreeSet<String>,
     /// Notes about no object.

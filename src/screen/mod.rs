@@ -9,6 +9,7 @@ mod calibrating;
 pub mod calibration;
 pub mod circle;
 pub mod desk;
+pub mod doubt;
 pub mod entry;
 pub mod figures;
 pub mod happening;

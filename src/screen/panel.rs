@@ -27,6 +27,8 @@ pub struct Panel {
     pub star: Option<Centred>,
     /// In the calibration view, the picture of what is left of the stars stands in place of their list.
     pub picture: bool,
+    /// What a doubted reading may be taken for, the first as the program would.
+    pub choices: Vec<Choice>,
     /// The mode the keys were looked up from.
     pub help_from: Mode,
     /// How often the keys were turned over.
@@ -48,8 +50,19 @@ pub struct Centred {
     pub at: Option<Utc>,
     /// It was timed across the middle, with the hour circle set on a mark.
     pub timed: bool,
-    /// The reading is far from what was expected, and the observer has been told so.
-    pub questioned: bool,
+}
+
+/// What a doubted reading may be taken for.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Choice {
+    /// How likely it is, 0 to 1.
+    pub share: f64,
+    /// In words.
+    pub words: String,
+    /// The acts it comes to, in order.
+    pub events: Vec<Event>,
+    /// What is said once they are done.
+    pub said: String,
 }
 
 /// What is being typed: a line, or one for each circle.
@@ -141,6 +154,7 @@ impl Panel {
             chosen: 0,
             star: None,
             picture: false,
+            choices: Vec::new(),
             help_from: Mode::Stepping,
             help_page: 0,
             said: None,
@@ -160,6 +174,7 @@ impl Panel {
         self.chosen = 0;
         if mode == Mode::Stepping {
             self.star = None;
+            self.choices.clear();
         }
     }
 }

@@ -1,9 +1,9 @@
 //! What the circles show, as typed: understood at once, held against what was expected, and made into
 //! a reading for the record.
 
-use nalgebra::{Matrix2, Vector2};
-
 use crate::angle::{Angle, AxisAngle};
+use crate::catalog::Target;
+use crate::dial::doubt::{Circumstances, Earlier, Questioned, Suspicion};
 use crate::dial::{Sighting, sighting::Understood};
 use crate::metal::typed::{read_dec, read_hour};
 use crate::metal::{Reading, Ring, Scale, Side};
@@ -12,12 +12,10 @@ use crate::screen::observatory::Observatory;
 use crate::screen::panel::Typed;
 use crate::screen::words::rough;
 use crate::sexagesimal::TextFault;
-use crate::sky::{Moment, Source};
+use crate::sky::Moment;
 
-/// A reading this unlikely, or more, is questioned: one in a thousand of good ones.
-///
-/// Source: the chi-squared distribution of two degrees of freedom, -2 ln 0.001.
-const QUESTIONED_CHI_SQUARED: f64 = 13.815_510_557_964_274;
+/// Stars fainter than this are not gone to in place of another (common practice, no source).
+const MISTAKABLE_HP: f64 = 3.5;
 
 /// What was typed for one circle.
 #[derive(Clone, Debug, PartialEq)]
@@ -46,8 +44,8 @@ pub struct TypedReading {
 pub struct Whole {
     /// The reading for the record.
     pub reading: StarReading,
-    /// It is so far from what was expected that it should be looked at again.
-    pub questionable: bool,
+    /// The same as numbers under the two indexes.
+    pub sighting: Sighting,
 }
 
 /// What is read, from where, and when.
@@ -55,14 +53,14 @@ pub struct Whole {
 pub struct Sitting<'s> {
     /// What stays the same.
     pub observatory: &'s Observatory,
+    /// The bright stars, the brightest first.
+    pub bright: &'s [Target],
     /// What is known of the mount.
     pub known: &'s Known,
     /// The moment the star stood in the middle.
     pub moment: &'s Moment,
-    /// The star's name.
-    pub star: &'s str,
-    /// Its place.
-    pub source: &'s Source,
+    /// The star.
+    pub star: &'s Target,
     /// The side of the pier the tube is on.
     pub side: Side,
     /// The star was timed across the middle, with the hour circle set on a mark.
@@ -85,9 +83,9 @@ impl Sitting<'_> {
         let held = self.held_against_expected(hour_read, dec_read);
         let off = |off: fn(&Understood) -> Angle| held.as_ref().map(off);
         let whole = match (hour_read, dec_read, &held) {
-            (Some(_), Some(_), Some(held)) => Some(Whole {
+            (Some(hour), Some(dec), Some(held)) => Some(Whole {
                 reading: self.record(held, hour_text, dec_text),
-                questionable: self.is_questionable(held),
+                sighting: self.sighting(hour, dec),
             }),
             _ => None,
         };
@@ -131,7 +129,9 @@ impl Sitting<'_> {
         dec: Option<Reading>,
     ) -> Option<Understood> {
         let mount = &self.observatory.mount;
-        let place = self.moment.observed(&self.moment.apparent(self.source));
+        let place = self
+            .moment
+            .observed(&self.moment.apparent(&self.star.source));
         let latitude = self.moment.observer().latitude;
         let estimate = &self.known.estimate;
         let expected = estimate
@@ -139,20 +139,16 @@ impl Sitting<'_> {
             .ok()?
             .axes;
         let sidereal = self.moment.apparent_sidereal();
-        let sighting = Sighting {
-            side: self.side,
-            hour: hour.unwrap_or_else(|| {
+        let sighting = self.sighting(
+            hour.unwrap_or_else(|| {
                 mount
                     .hour_circle
                     .reading(expected.hour, sidereal, self.side)
             }),
-            dec: dec.unwrap_or_else(|| mount.declination_circle.reading(expected.dec)),
-            hour_opposite: None,
-            dec_opposite: None,
-            timed: self.timed,
-        };
+            dec.unwrap_or_else(|| mount.declination_circle.reading(expected.dec)),
+        );
         sighting
-            .understand(mount, self.moment, self.source, estimate)
+            .understand(mount, self.moment, &self.star.source, estimate)
             .ok()
     }
 
@@ -180,23 +176,53 @@ impl Sitting<'_> {
         }
     }
 
-    /// True if a good reading would be this far off less than once in a thousand times.
-    fn is_questionable(&self, held: &Understood) -> bool {
-        let sight = &held.sight;
-        let latitude = self.moment.observer().latitude;
-        let predicted =
-            self.known
-                .estimate
-                .predict(sight.hour_angle, sight.declination, latitude, self.side);
-        let Ok(predicted) = predicted else {
-            return false;
+    /// Numbers under the two indexes.
+    const fn sighting(&self, hour: Reading, dec: Reading) -> Sighting {
+        Sighting {
+            side: self.side,
+            hour,
+            dec,
+            hour_opposite: None,
+            dec_opposite: None,
+            timed: self.timed,
+        }
+    }
+
+    /// What there is to say against a reading.
+    #[must_use]
+    pub fn suspicion(
+        &self,
+        sighting: &Sighting,
+        circumstances: Circumstances,
+    ) -> Option<Suspicion> {
+        let stars: Vec<Target> = self.bright.iter().filter(is_mistakable).cloned().collect();
+        let questioned = Questioned {
+            mount: &self.observatory.mount,
+            moment: self.moment,
+            target: self.star,
+            sighting,
+            stars: &stars,
+            circumstances,
         };
-        let square = |sigma: Angle| sigma.radians() * sigma.radians();
-        let reading = Matrix2::new(square(sight.sigma_hour), 0.0, 0.0, square(sight.sigma_dec));
-        let off = Vector2::new(held.hour_off.radians(), held.dec_off.radians());
-        (predicted.covariance + reading)
-            .try_inverse()
-            .is_some_and(|inverse| (off.transpose() * inverse * off).x > QUESTIONED_CHI_SQUARED)
+        questioned.suspicion(&Earlier {
+            prior: &self.known.prior,
+            sights: &self.known.sights,
+        })
+    }
+
+    /// A sighting made into a reading for the record, with what was said of it.
+    #[must_use]
+    pub fn recorded(&self, sighting: &Sighting, doubted: &str) -> Option<StarReading> {
+        let mount = &self.observatory.mount;
+        let held = sighting
+            .understand(mount, self.moment, &self.star.source, &self.known.estimate)
+            .ok()?;
+        let hour = mount.hour_circle.scale().text(sighting.hour);
+        let dec = mount.declination_circle.scale().text(sighting.dec);
+        Some(StarReading {
+            doubted: doubted.to_owned(),
+            ..self.record(&held, &hour, &dec)
+        })
     }
 
     fn record(&self, held: &Understood, hour: &str, dec: &str) -> StarReading {
@@ -204,7 +230,7 @@ impl Sitting<'_> {
         let west = held.hour_off.radians() * sight.declination.angle().cos();
         let off = Angle::from_radians(west.hypot(held.dec_off.radians()));
         StarReading {
-            star: self.star.to_owned(),
+            star: self.star.name.clone(),
             hour_angle_deg: sight.hour_angle.degrees(),
             declination_deg: sight.declination.degrees(),
             sidereal_deg: self.moment.apparent_sidereal().degrees(),
@@ -218,6 +244,7 @@ impl Sitting<'_> {
             dec_sigma_deg: sight.sigma_dec.degrees(),
             driven: self.observatory.mount.hour_circle.ring == Ring::Driven,
             timed: self.timed,
+            doubted: String::new(),
             off_arcmin: self
                 .known
                 .estimate
@@ -226,6 +253,10 @@ impl Sitting<'_> {
             used: true,
         }
     }
+}
+
+fn is_mistakable(star: &&Target) -> bool {
+    star.magnitude.is_some_and(|hp| hp <= MISTAKABLE_HP)
 }
 
 /// Nothing for an empty text, else what it is read as.

@@ -242,22 +242,28 @@ impl From<'_> {
     }
 
     fn reading(&self) -> Option<TypedReading> {
-        let centred = self.panel.star.as_ref()?;
         let moment = self.centred_moment()?;
-        let sitting = Sitting {
+        Some(self.sitting(&moment)?.understand(&self.panel.typed))
+    }
+
+    /// The reading being typed: what is read, from where, and when.
+    #[must_use]
+    pub fn sitting<'s>(&'s self, moment: &'s Moment) -> Option<Sitting<'s>> {
+        let centred = self.panel.star.as_ref()?;
+        Some(Sitting {
             observatory: self.observatory,
+            bright: self.bright,
             known: self.known,
-            moment: &moment,
-            star: &centred.star.name,
-            source: &centred.star.source,
-            side: self.reading_side(&moment, &centred.star)?,
+            moment,
+            star: &centred.star,
+            side: self.reading_side(moment, &centred.star)?,
             timed: centred.timed,
-        };
-        Some(sitting.understand(&self.panel.typed))
+        })
     }
 
     /// The sky as the star stood in the middle.
-    fn centred_moment(&self) -> Option<Moment> {
+    #[must_use]
+    pub fn centred_moment(&self) -> Option<Moment> {
         let at = self.panel.star.as_ref()?.at?;
         Some(self.moment.later(at.seconds_since(self.moment.utc())))
     }

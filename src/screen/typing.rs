@@ -1,7 +1,8 @@
 //! What keys do while something is typed or chosen, and what becomes of it when it is taken.
 
 use crate::catalog::Target;
-use crate::night::{Circle, Event, ListedTarget};
+use crate::night::{Circle, Event, ListedTarget, StarReading};
+use crate::screen::doubt;
 use crate::screen::keys::{Act, Mode};
 use crate::screen::panel::{Centred, Doing, Panel};
 use crate::screen::update::{SUN_WORD, Scene, entered, record};
@@ -35,7 +36,6 @@ fn cancelled(panel: &mut Panel) {
             panel.star = Some(Centred {
                 at: None,
                 timed: false,
-                questioned: false,
                 ..star
             });
         }
@@ -54,7 +54,6 @@ fn accepted(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
                     found: false,
                     at: None,
                     timed: false,
-                    questioned: false,
                 });
             } else {
                 panel.say("no such star is well placed now");
@@ -166,22 +165,31 @@ fn read(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
         panel.typed.at_second = true;
         return Vec::new();
     }
-    let Some(star) = &mut panel.star else {
+    let Some(star) = panel.star.clone() else {
         return Vec::new();
     };
-    if whole.questionable && !star.questioned {
-        star.questioned = true;
-        panel.say(
-            "far from expected: look again at star, side and circles. enter once more to take it",
-        );
+    let choices = doubt::choices(scene, &star, &whole);
+    if !choices.is_empty() {
+        // what was typed stays, for a look at it and for coming back
+        panel.mode = Mode::Doubting;
+        panel.choices = choices;
+        panel.chosen = 0;
         return Vec::new();
     }
     let said = format!("read: {}", star.star.name);
-    let event = if star.found {
-        let setting = None;
-        scene.from.night.found(setting, Some(whole.reading))
-    } else {
-        Some(Event::StarRead(Box::new(whole.reading)))
-    };
+    let event = reading_event(scene, &star, whole.reading);
     event.map_or_else(Vec::new, |event| record(event, said, Mode::Stepping))
+}
+
+/// The act of reading a star, or of finding the object read.
+pub(super) fn reading_event(
+    scene: &Scene<'_>,
+    star: &Centred,
+    reading: StarReading,
+) -> Option<Event> {
+    if star.found {
+        scene.from.night.found(None, Some(reading))
+    } else {
+        Some(Event::StarRead(Box::new(reading)))
+    }
 }

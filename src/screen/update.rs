@@ -11,7 +11,7 @@ use crate::screen::happening::{Happening, Stroke};
 use crate::screen::keys::{self, Act, DOUBLE_STRIKE, Mode};
 use crate::screen::panel::{Centred, Doing, Panel};
 use crate::screen::shown::{From, Settings, Shown};
-use crate::screen::{objects, typing};
+use crate::screen::{doubt, objects, typing};
 use crate::time::Utc;
 
 /// What a happening is held against.
@@ -74,6 +74,7 @@ fn struck(panel: &mut Panel, scene: &Scene<'_>, stroke: Stroke) -> Vec<Doing> {
         }
         Mode::Calibration => calibrating(panel, scene, act),
         Mode::Objects => objects::looking(panel, scene, act),
+        Mode::Doubting => doubt::doubting(panel, act),
         _ => typing::typing(panel, scene, act),
     };
     if doings
@@ -85,13 +86,10 @@ fn struck(panel: &mut Panel, scene: &Scene<'_>, stroke: Stroke) -> Vec<Doing> {
     doings
 }
 
-/// What was typed has changed: nothing is chosen, and nothing questioned, any more.
+/// What was typed has changed: nothing is chosen any more.
 fn changed(panel: &mut Panel) {
     panel.chosen = 0;
     panel.said = None;
-    if let Some(star) = &mut panel.star {
-        star.questioned = false;
-    }
 }
 
 pub(super) fn record(event: Event, said: impl Into<String>, then: Mode) -> Vec<Doing> {
@@ -261,7 +259,6 @@ fn read_here(panel: &mut Panel, scene: &Scene<'_>, timed: bool) {
                 found: true,
                 at: None,
                 timed,
-                questioned: false,
             });
             centred(panel, scene.utc, timed);
         }

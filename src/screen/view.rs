@@ -14,7 +14,7 @@ use crate::screen::reading::{Line, TypedReading};
 use crate::screen::shown::{From, Settings, Shown};
 use crate::screen::target_line::{self, place_in_list};
 use crate::screen::update::SUN_WORD;
-use crate::screen::{calibration, circle, entry, help, lists, objects, stopped, truth};
+use crate::screen::{calibration, circle, doubt, entry, help, lists, objects, stopped, truth};
 
 /// Draws the screen.
 pub fn view(look: Look, buffer: &mut Buffer, from: &From<'_>, shown: &Shown) {
@@ -74,7 +74,8 @@ fn draw_body(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown
         Mode::Reading => draw_reading(look, buffer, body, from, shown),
         Mode::Calibration => calibration::draw(look, buffer, body, from, shown),
         Mode::Objects => objects::draw(look, buffer, body, from),
-        Mode::Doubting | Mode::Sweeping => {}
+        Mode::Doubting => doubt::draw(look, buffer, body, from),
+        Mode::Sweeping => {}
         Mode::Help => help::draw(look, buffer, body, panel.help_from, panel.help_page),
         Mode::Noting => {
             let about = shown.target.as_ref().map_or("the night", |t| &t.name);

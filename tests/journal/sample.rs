@@ -82,6 +82,7 @@ pub fn reading(star: &str, hour_angle_deg: f64, driven: bool) -> StarReading {
         dec_sigma_deg: 0.15,
         driven,
         timed: false,
+        doubted: String::new(),
         off_arcmin: Some(7.0),
         used: true,
     }
