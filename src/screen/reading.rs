@@ -195,7 +195,12 @@ impl Sitting<'_> {
         sighting: &Sighting,
         circumstances: Circumstances,
     ) -> Option<Suspicion> {
-        let stars: Vec<Target> = self.bright.iter().filter(is_mistakable).cloned().collect();
+        let stars: Vec<Target> = self
+            .bright
+            .iter()
+            .filter(|star| is_mistakable(star))
+            .cloned()
+            .collect();
         let questioned = Questioned {
             mount: &self.observatory.mount,
             moment: self.moment,
@@ -255,7 +260,7 @@ impl Sitting<'_> {
     }
 }
 
-fn is_mistakable(star: &&Target) -> bool {
+fn is_mistakable(star: &Target) -> bool {
     star.magnitude.is_some_and(|hp| hp <= MISTAKABLE_HP)
 }
 
