@@ -1,0 +1,56 @@
+//! `nonius calibrate READINGS.csv`: fit the mount's errors from a file of readings.
+
+mod json;
+mod table;
+
+use std::io::Write;
+use std::path::PathBuf;
+
+use crate::angle::Angle;
+use crate::command::options::Common;
+use crate::command::readings;
+use crate::command::station::Station;
+use crate::estimate::Fit;
+use crate::metal::errors::NAMES;
+use clap::Args;
+
+/// Which file.
+#[derive(Args, Debug)]
+pub struct CalibrateArgs {
+    /// The file of readings: CSV with the header `utc,star,hour,dec,side`.
+    #[arg(value_name = "READINGS.csv")]
+    pub file: PathBuf,
+}
+
+/// Fits and prints.
+pub fn run(args: &CalibrateArgs, common: &Common, out: &mut dyn Write) -> anyhow::Result<()> {
+    let station = Station::open(common)?;
+    let readings = readings::load(&args.file, &station)?;
+    let fit = readings.fit(&station);
+    if common.json {
+        serde_json::to_writer(&mut *out, &json::Report::new(&station, &readings, &fit))?;
+        return Ok(writeln!(out)?);
+    }
+    table::write(&station, &readings, &fit, out)
+}
+
+/// Of something there is for each error, what there is for those in question on this mount.
+fn in_question<T>(station: &Station, of_all: impl Iterator<Item = T>) -> impl Iterator<Item = T> {
+    of_all
+        .zip(station.mount.expected.in_question())
+        .filter_map(|(one, in_question)| in_question.then_some(one))
+}
+
+/// Each error in question with its value and its spread.
+fn terms(station: &Station, fit: &Fit) -> Vec<(&'static str, Angle, Angle)> {
+    let sigmas = fit
+        .covariance
+        .diagonal()
+        .map(|variance| Angle::from_radians(variance.max(0.0).sqrt()));
+    let all = NAMES
+        .into_iter()
+        .zip(fit.errors.to_array())
+        .zip(sigmas.iter().copied())
+        .map(|((name, value), sigma)| (name, value, sigma));
+    in_question(station, all).collect()
+}
