@@ -6,8 +6,10 @@
 
 pub mod chance;
 mod descent;
+pub mod entangled;
 pub mod fit;
 pub mod next_star;
+pub mod polar_axis;
 pub mod prediction;
 pub mod prior;
 mod resolve;
@@ -18,8 +20,10 @@ pub mod widening;
 
 pub use chance::chance;
 pub use descent::{GROSS_SIGMAS, TRUSTED_SIGMAS};
+pub use entangled::Entangled;
 pub use fit::{Fit, fit};
 pub use next_star::{Offered, Station, Wanted};
+pub use polar_axis::{Lean, PolarAxis};
 pub use prediction::{Estimate, Prediction};
 pub use prior::{Covariance, Prior};
 pub use sight::{Residual, Sight, nearest};

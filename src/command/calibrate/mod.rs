@@ -1,6 +1,8 @@
 //! `nonius calibrate READINGS.csv`: fit the mount's errors from a file of readings.
 
+mod advice;
 mod json;
+mod picture;
 mod table;
 
 use std::io::Write;
@@ -31,7 +33,9 @@ pub fn run(args: &CalibrateArgs, common: &Common, out: &mut dyn Write) -> anyhow
         serde_json::to_writer(&mut *out, &json::Report::new(&station, &readings, &fit))?;
         return Ok(writeln!(out)?);
     }
-    table::write(&station, &readings, &fit, out)
+    table::write(&station, &readings, &fit, out)?;
+    picture::draw(&readings, &fit, out)?;
+    advice::write(&station, &readings, &fit, out)
 }
 
 /// Of something there is for each error, what there is for those in question on this mount.

@@ -7,7 +7,9 @@ use crate::command::calibrate::terms;
 use crate::command::readings::Readings;
 use crate::command::station::Station;
 use crate::estimate::Fit;
-use crate::sexagesimal::{Notation, Unit};
+
+/// The heading's own width.
+const LEAST_NAME_WIDTH: usize = 26;
 
 /// Minutes of arc with their sign, and nothing without one.
 fn minutes(off: Angle) -> String {
@@ -19,11 +21,25 @@ fn minutes(off: Angle) -> String {
     }
 }
 
-/// With its sign, also where it is positive.
-fn signed(notation: Notation, value: Angle) -> String {
-    let written = notation.write(value);
-    if written.starts_with('-') {
+/// An error or its spread in degrees and minutes of arc, the degrees left out where there are none.
+fn in_minutes(size: Angle) -> String {
+    let tenths = (size.abs().arcminutes() * 10.0).round();
+    let degrees = (tenths / 600.0).floor();
+    let minutes = (tenths - degrees * 600.0) / 10.0;
+    if degrees > 0.0 {
+        format!("{degrees:.0}° {minutes:04.1}'")
+    } else {
+        format!("{minutes:.1}'")
+    }
+}
+
+/// The same with its sign, and nothing without one.
+fn signed(size: Angle) -> String {
+    let written = in_minutes(size);
+    if written == "0.0'" {
         written
+    } else if size < Angle::ZERO {
+        format!("-{written}")
     } else {
         format!("+{written}")
     }
@@ -36,7 +52,6 @@ pub fn write(
     fit: &Fit,
     out: &mut dyn Write,
 ) -> anyhow::Result<()> {
-    let notation = Notation::new(Unit::Degrees, Angle::from_arcseconds(6.0));
     writeln!(
         out,
         "{} at {}: {} of {} readings used",
@@ -46,17 +61,20 @@ pub fn write(
         readings.rows.len()
     )?;
     writeln!(out)?;
+    let terms = terms(station, fit);
+    let longest = terms.iter().map(|(name, ..)| name.len()).max();
+    let width = longest.unwrap_or(0).max(LEAST_NAME_WIDTH);
     writeln!(
         out,
-        "{:<26}{:>14}{:>14}",
+        "{:<width$}{:>14}{:>14}",
         "error (reading minus true)", "value", "1 sigma"
     )?;
-    for (name, value, sigma) in terms(station, fit) {
+    for (name, value, sigma) in terms {
         writeln!(
             out,
-            "{name:<26}{:>14}{:>14}",
-            signed(notation, value),
-            notation.write(sigma)
+            "{name:<width$}{:>14}{:>14}",
+            signed(value),
+            in_minutes(sigma)
         )?;
     }
     writeln!(out)?;
@@ -95,4 +113,23 @@ pub fn write(
         writeln!(out, "the fit did not settle: do not rely on these figures")?;
     }
     Ok(())
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn an_error_is_in_degrees_only_where_it_has_some() {
+        for (arcminutes, expected) in [
+            (206.9, "+3° 26.9'"),
+            (-94.84, "-1° 34.8'"),
+            (-59.96, "-1° 00.0'"),
+            (13.1, "+13.1'"),
+            (-0.04, "0.0'"),
+        ] {
+            assert_eq!(signed(Angle::from_arcminutes(arcminutes)), expected);
+        }
+        assert_eq!(in_minutes(Angle::from_degrees(60.0)), "60° 00.0'");
+    }
 }
