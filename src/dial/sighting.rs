@@ -118,8 +118,13 @@ impl Understood {
     }
 }
 
+/// Two opposite verniers farther apart than this, beyond the half turn, are not both of the same place: twice the
+/// eccentricity of a circle that is seen to wobble (common practice, no source).
+const MOST_APART: Angle = Angle::from_degrees(6.0);
+
 /// What a circle can mean with its opposite vernier read too: each candidate is the mean of the two
-/// verniers, and the error of a look is shared between two.
+/// verniers, and the error of a look is shared between two. Where an unsigned scale turns back, an opposite vernier
+/// can stand on either side of the turn: both are told.
 fn with_opposite(
     candidates: Vec<AxisAngle>,
     opposite: Option<Vec<AxisAngle>>,
@@ -128,17 +133,25 @@ fn with_opposite(
     let Some(opposite) = opposite else {
         return (candidates, sigma);
     };
-    let mean = |shown: AxisAngle| {
-        let across: Vec<AxisAngle> = opposite
+    let across: Vec<AxisAngle> = opposite
+        .iter()
+        .map(|other| AxisAngle::new(other.angle() + Angle::HALF_TURN))
+        .collect();
+    let means = |shown: AxisAngle| {
+        let off = |other: AxisAngle| (other.angle() - shown.angle()).wrapped_signed();
+        let mut others: Vec<AxisAngle> = across
             .iter()
-            .map(|other| AxisAngle::new(other.angle() + Angle::HALF_TURN))
+            .copied()
+            .filter(|&other| off(other).abs() <= MOST_APART)
             .collect();
-        let other = nearest(&across, shown).unwrap_or(shown);
-        let off = (other.angle() - shown.angle()).wrapped_signed();
-        AxisAngle::new(shown.angle() + off / 2.0)
+        if others.is_empty() {
+            others.extend(nearest(&across, shown));
+        }
+        let mean = |other| AxisAngle::new(shown.angle() + off(other) / 2.0);
+        others.into_iter().map(mean).collect::<Vec<_>>()
     };
     (
-        candidates.into_iter().map(mean).collect(),
+        candidates.into_iter().flat_map(means).collect(),
         sigma * std::f64::consts::FRAC_1_SQRT_2,
     )
 }
@@ -148,7 +161,10 @@ mod tests {
     use super::*;
     use crate::dial::trial::{Trial, moment, target};
     use crate::dial::{Setup, dial};
-    use crate::metal::SideRequest;
+    use crate::metal::{
+        DeclinationCircle, DeclinationNumbering, HourCircle, HourNumbering, Increases, Ring,
+        SideRequest,
+    };
 
     #[test]
     fn two_opposite_verniers_are_free_of_eccentricity() {
@@ -191,5 +207,85 @@ mod tests {
             .understand(&trial.mount, &now, &vega.source, &trial.estimate)
             .unwrap();
         assert!((understood.hour_off.arcminutes() - 20.0).abs() < 1e-6);
+    }
+
+    /// Every way a circle of the program can be engraved.
+    fn every_engraving() -> Vec<(HourCircle, DeclinationCircle)> {
+        let trial = Trial::new().mount;
+        let mut found = Vec::new();
+        for numbering in [
+            HourNumbering::Full,
+            HourNumbering::Halves,
+            HourNumbering::PlusMinus,
+        ] {
+            for increases in [Increases::West, Increases::East] {
+                for ring in [Ring::Fixed, Ring::Slips, Ring::Driven] {
+                    for second_fiducial in [false, true] {
+                        for dec in [
+                            DeclinationNumbering::Signed,
+                            DeclinationNumbering::Quarters,
+                            DeclinationNumbering::PolarDistance,
+                            DeclinationNumbering::SouthPolarDistance,
+                            DeclinationNumbering::Full,
+                        ] {
+                            let hour = HourCircle {
+                                ring,
+                                numbering,
+                                increases,
+                                second_fiducial,
+                                ..trial.hour_circle
+                            };
+                            let dec = DeclinationCircle {
+                                numbering: dec,
+                                ..trial.declination_circle
+                            };
+                            found.push((hour, dec));
+                        }
+                    }
+                }
+            }
+        }
+        found
+    }
+
+    #[test]
+    fn opposite_verniers_agree_on_every_engraving_also_where_its_numbers_turn_back() {
+        let now = moment("2026-12-01T21:30:00Z");
+        let (vega, sidereal) = (target("Vega"), now.apparent_sidereal());
+        let off = Angle::from_arcminutes(10.0);
+        let trial = Trial::new();
+        for (hour_circle, declination_circle) in every_engraving() {
+            let mount = Mount {
+                hour_circle,
+                declination_circle,
+                ..trial.mount.clone()
+            };
+            for side in [Side::TubeWest, Side::TubeEast] {
+                for degrees in [-179.95, -90.1, -40.0, 0.05, 33.3, 89.9, 140.0, 179.95] {
+                    let centred = AxisAngle::from_degrees(degrees);
+                    let under = |by: Angle| AxisAngle::new(centred.angle() + by);
+                    let hour = |by| hour_circle.reading(under(by), sidereal, side);
+                    let dec = |by| declination_circle.reading(under(by));
+                    let sighting = Sighting {
+                        side,
+                        hour: hour(off),
+                        dec: dec(off),
+                        hour_opposite: Some(hour(Angle::HALF_TURN - off)),
+                        dec_opposite: Some(dec(Angle::HALF_TURN - off)),
+                        timed: false,
+                    };
+                    let sight = sighting.sight(&mount, &now, &vega.source);
+                    assert!(sight.opposite.hour && sight.opposite.dec);
+                    for candidates in [&sight.hour, &sight.dec] {
+                        let found = nearest(candidates, centred).unwrap();
+                        let missed = (found.angle() - centred.angle()).wrapped_signed();
+                        assert!(
+                            missed.abs().arcseconds() < 1e-6,
+                            "{mount:?} {side} {degrees}"
+                        );
+                    }
+                }
+            }
+        }
     }
 }
