@@ -16,6 +16,7 @@ mod resolve;
 mod search;
 pub mod sight;
 pub mod suspicion;
+pub mod sweep;
 pub mod widening;
 
 pub use chance::chance;
@@ -28,4 +29,5 @@ pub use prediction::{Estimate, Prediction};
 pub use prior::{Covariance, Prior};
 pub use sight::{Residual, Sight, nearest};
 pub use suspicion::{Held, SUSPICIOUS, Slipped, ln_sum};
+pub use sweep::{SweepStep, sweep};
 pub use widening::Touched;
