@@ -8,7 +8,7 @@ use crate::catalog::{Catalogue, Target};
 use crate::command::exit::Refused;
 use crate::command::options::Common;
 use crate::command::readings;
-use crate::dial::{Setup, TubePlace};
+use crate::dial::{Aside, Setup, TubePlace};
 use crate::estimate::{Estimate, Prior, Sight};
 use crate::metal::{Mount, SideRequest};
 use crate::night::{Grounds, Known, ListedTarget, Night, journal, whose};
@@ -201,6 +201,7 @@ impl Station {
             estimate: &self.estimate,
             side: self.side,
             tube: self.tube,
+            aside: Aside::default(),
             lead_s: self.lead_s,
             calibrated_at: self.calibrated_at,
             sun_risk_accepted: self.sun_risk_accepted,

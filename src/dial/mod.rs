@@ -10,6 +10,7 @@ use crate::estimate::{Prediction, chance};
 use crate::metal::{Mount, Optic, Side, TubeDirections, to_axes};
 use crate::sky::{Body, Moment, Observed, Source};
 
+pub mod aside;
 pub mod bright;
 pub mod caution;
 pub mod doubt;
@@ -27,6 +28,7 @@ mod trial;
 pub mod tube;
 pub mod withheld;
 
+pub use aside::Aside;
 pub use caution::{Caution, CautionCode};
 pub use doubt::{Circumstances, Correction, Earlier, Explanation, Questioned, Suspicion};
 pub use mark::NextMark;
@@ -43,7 +45,7 @@ const LEAST_WAIT: Angle = Angle::from_time_seconds(10.0);
 /// What to set on each circle for a target at an instant.
 pub fn dial(setup: &Setup<'_>, moment: &Moment, target: &Target) -> Result<Dial, NotDialled> {
     let of_date = moment.apparent(&target.source);
-    let observed = moment.observed(&of_date);
+    let observed = setup.aside.of(moment, &moment.observed(&of_date));
     withhold_near_sun(setup, moment, &target.source, &observed)?;
     let (mount, latitude) = (setup.mount, moment.observer().latitude);
     let present = setup.tube.map(|tube| tube.side);
@@ -80,6 +82,10 @@ pub fn dial(setup: &Setup<'_>, moment: &Moment, target: &Target) -> Result<Dial,
             hour: prediction.hour_sigma(),
             dec: prediction.dec_sigma(),
         },
+        sky: prediction.sky_with_setting(
+            mount.hour_circle.look_error(),
+            mount.declination_circle.look_error(),
+        ),
         chances: chances(mount, &prediction, mount.hour_circle.look_error()),
         chances_on_the_mark: if mount.hour_circle.stands_still() {
             chances(mount, &prediction, mount.hour_circle.timed_error())
@@ -161,6 +167,7 @@ fn next_mark(
     let moved = |seconds: f64| {
         let then = moment.later(seconds);
         let place = then.observed(&then.apparent(source));
+        let place = setup.aside.of(&then, &place);
         let axes = to_axes(place.hour_angle, place.declination, latitude, &errors, side).ok()?;
         Some((axes.hour.angle() - shown.angle()).wrapped_signed())
     };

@@ -1,5 +1,7 @@
 //! What to set on each circle, and what goes with it: the one value that screen, text and JSON print.
 
+use nalgebra::Matrix2;
+
 use crate::angle::Angle;
 use crate::dial::caution::Caution;
 use crate::dial::mark::NextMark;
@@ -66,6 +68,9 @@ pub struct Dial {
     pub dec: DeclinationSetting,
     /// How uncertain they are.
     pub uncertainty: Uncertainty,
+    /// Covariance of where the tube then looks about the place dialled, setting included, in square radians on the sky,
+    /// west first.
+    pub sky: Matrix2<f64>,
     /// The chance for each optic.
     pub chances: Vec<Chance>,
     /// The same with the hour circle set exactly on the next mark and the object let drift in; none

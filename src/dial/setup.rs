@@ -1,5 +1,6 @@
 //! What a setting is worked out from, beside the target and the instant.
 
+use crate::dial::aside::Aside;
 use crate::dial::tube::TubePlace;
 use crate::estimate::Estimate;
 use crate::metal::{Mount, SideRequest};
@@ -17,6 +18,8 @@ pub struct Setup<'a> {
     pub estimate: &'a Estimate,
     /// The side of the pier asked for.
     pub side: SideRequest,
+    /// How far aside of the target to look: a step of a sweep.
+    pub aside: Aside,
     /// Where the tube was last known to be.
     pub tube: Option<TubePlace>,
     /// The moment dialled for is so many seconds after the observer asks: the Sun rule holds from the

@@ -61,6 +61,7 @@ impl Trial {
             estimate: &self.estimate,
             side: SideRequest::Auto,
             tube: None,
+            aside: crate::dial::Aside::default(),
             lead_s: 0.0,
             calibrated_at: None,
             sun_risk_accepted: false,

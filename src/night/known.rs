@@ -148,6 +148,8 @@ mod tests {
             dec_sigma_deg: SIGMA_DEG,
             driven: false,
             timed: false,
+            hour_opposite: false,
+            dec_opposite: false,
             doubted: String::new(),
             off_arcmin: None,
             used: true,

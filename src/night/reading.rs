@@ -65,6 +65,12 @@ pub struct StarReading {
     /// The star was timed as it crossed the middle, with the circle set on a mark.
     #[serde(default)]
     pub timed: bool,
+    /// Both opposite verniers of the hour circle were read, and their mean taken.
+    #[serde(default)]
+    pub hour_opposite: bool,
+    /// The same of the declination circle.
+    #[serde(default)]
+    pub dec_opposite: bool,
     /// What was typed at first and what it was then taken for, where the reading was doubted.
     #[serde(default)]
     pub doubted: String,
@@ -77,6 +83,33 @@ pub struct StarReading {
 }
 
 impl StarReading {
+    /// A star whose circles showed this, in a sight of it.
+    #[must_use]
+    pub fn of_sight(star: &str, sight: &Sight, (hour, dec): (&str, &str)) -> Self {
+        let degrees = |axes: &[AxisAngle]| axes.iter().map(|axis| axis.degrees()).collect();
+        Self {
+            star: star.to_owned(),
+            hour_angle_deg: sight.hour_angle.degrees(),
+            declination_deg: sight.declination.degrees(),
+            sidereal_deg: 0.0,
+            side: sight.side,
+            hour: hour.trim().to_owned(),
+            dec: dec.trim().to_owned(),
+            hour_candidates_deg: degrees(&sight.hour),
+            dec_candidates_deg: degrees(&sight.dec),
+            taken_as: None,
+            hour_sigma_deg: sight.sigma_hour.degrees(),
+            dec_sigma_deg: sight.sigma_dec.degrees(),
+            driven: false,
+            timed: false,
+            hour_opposite: sight.opposite.hour,
+            dec_opposite: sight.opposite.dec,
+            doubted: String::new(),
+            off_arcmin: None,
+            used: true,
+        }
+    }
+
     /// The shown axis angles, if it is known which were meant.
     #[must_use]
     pub fn shown(&self) -> Option<ShownAxes> {
@@ -107,7 +140,10 @@ impl StarReading {
             dec: axes(&self.dec_candidates_deg),
             sigma_hour: Angle::from_degrees(self.hour_sigma_deg),
             sigma_dec: Angle::from_degrees(self.dec_sigma_deg),
-            opposite: OppositeVerniers::default(),
+            opposite: OppositeVerniers {
+                hour: self.hour_opposite,
+                dec: self.dec_opposite,
+            },
         }
     }
 }
@@ -158,6 +194,8 @@ mod tests {
             dec_sigma_deg: 0.15,
             driven: false,
             timed: false,
+            hour_opposite: false,
+            dec_opposite: false,
             doubted: String::new(),
             off_arcmin: None,
             used: true,

@@ -30,6 +30,7 @@ pub mod reading;
 pub mod run;
 pub mod shown;
 pub mod stopped;
+pub mod sweeping;
 pub mod target_line;
 pub mod terminal;
 pub mod truth;

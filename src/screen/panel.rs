@@ -10,6 +10,7 @@ use crate::catalog::Target;
 use crate::night::Event;
 use crate::screen::keys::Mode;
 use crate::screen::light::Light;
+use crate::screen::sweeping::Sweeping;
 use crate::time::Utc;
 
 /// What the screen holds and the record does not.
@@ -27,6 +28,8 @@ pub struct Panel {
     pub star: Option<Centred>,
     /// In the calibration view, the picture of what is left of the stars stands in place of their list.
     pub picture: bool,
+    /// The sweep for the object being dialled.
+    pub sweep: Sweeping,
     /// What a doubted reading may be taken for, the first as the program would.
     pub choices: Vec<Choice>,
     /// The mode the keys were looked up from.
@@ -154,6 +157,7 @@ impl Panel {
             chosen: 0,
             star: None,
             picture: false,
+            sweep: Sweeping::default(),
             choices: Vec::new(),
             help_from: Mode::Stepping,
             help_page: 0,
@@ -175,6 +179,7 @@ impl Panel {
         if mode == Mode::Stepping {
             self.star = None;
             self.choices.clear();
+            self.sweep = Sweeping::default();
         }
     }
 }

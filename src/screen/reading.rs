@@ -1,12 +1,12 @@
 //! What the circles show, as typed: understood at once, held against what was expected, and made into
 //! a reading for the record.
 
-use crate::angle::{Angle, AxisAngle};
+use crate::angle::Angle;
 use crate::catalog::Target;
 use crate::dial::doubt::{Circumstances, Earlier, Questioned, Suspicion};
 use crate::dial::{Sighting, sighting::Understood};
 use crate::metal::typed::{read_dec, read_hour};
-use crate::metal::{Reading, Ring, Scale, Side};
+use crate::metal::{Reading, Scale, Side};
 use crate::night::{Known, StarReading};
 use crate::screen::observatory::Observatory;
 use crate::screen::panel::Typed;
@@ -73,30 +73,34 @@ impl Sitting<'_> {
     pub fn understand(&self, typed: &Typed) -> TypedReading {
         let mount = &self.observatory.mount;
         let (hour_text, dec_text) = (typed.first.value(), typed.second.value());
-        let hour = some(hour_text, |text| self.hour(text));
-        let dec = some(dec_text, |text| read_dec(&mount.declination_circle, text));
-        let good = |typed: &Option<Result<Reading, TextFault>>| match typed {
-            Some(Ok(reading)) => Some(*reading),
-            _ => None,
-        };
-        let (hour_read, dec_read) = (good(&hour), good(&dec));
-        let held = self.held_against_expected(hour_read, dec_read);
+        let (hour_one, hour_other) = verniers(hour_text);
+        let (dec_one, dec_other) = verniers(dec_text);
+        let read_hour = |text: &str| self.hour(text);
+        let read_dec = |text: &str| read_dec(&mount.declination_circle, text);
+        let (hour, hour_opposite) = (some(hour_one, read_hour), some(hour_other, read_hour));
+        let (dec, dec_opposite) = (some(dec_one, read_dec), some(dec_other, read_dec));
+        let opposite = (good(hour_opposite.as_ref()), good(dec_opposite.as_ref()));
+        let (hour_read, dec_read) = (good(hour.as_ref()), good(dec.as_ref()));
+        let held = self.held_against_expected(hour_read, dec_read, opposite);
         let off = |off: fn(&Understood) -> Angle| held.as_ref().map(off);
-        let whole = match (hour_read, dec_read, &held) {
+        let faulty = [&hour_opposite, &dec_opposite];
+        let faulty = faulty.iter().any(|typed| matches!(typed, Some(Err(_))));
+        let held_whole = held.as_ref().filter(|_| !faulty);
+        let whole = match (hour_read, dec_read, held_whole) {
             (Some(hour), Some(dec), Some(held)) => Some(Whole {
                 reading: self.record(held, hour_text, dec_text),
-                sighting: self.sighting(hour, dec),
+                sighting: self.sighting((hour, dec), opposite),
             }),
             _ => None,
         };
         TypedReading {
             hour: self.line(
-                (hour_text, hour),
+                (hour_text, worse(hour, hour_opposite)),
                 mount.hour_circle.scale(),
                 off(|held| held.hour_off),
             ),
             dec: self.line(
-                (dec_text, dec),
+                (dec_text, worse(dec, dec_opposite)),
                 mount.declination_circle.scale(),
                 off(|held| held.dec_off),
             ),
@@ -127,6 +131,7 @@ impl Sitting<'_> {
         &self,
         hour: Option<Reading>,
         dec: Option<Reading>,
+        opposite: (Option<Reading>, Option<Reading>),
     ) -> Option<Understood> {
         let mount = &self.observatory.mount;
         let place = self
@@ -139,14 +144,10 @@ impl Sitting<'_> {
             .ok()?
             .axes;
         let sidereal = self.moment.apparent_sidereal();
-        let sighting = self.sighting(
-            hour.unwrap_or_else(|| {
-                mount
-                    .hour_circle
-                    .reading(expected.hour, sidereal, self.side)
-            }),
-            dec.unwrap_or_else(|| mount.declination_circle.reading(expected.dec)),
-        );
+        let circle = &mount.hour_circle;
+        let hour = hour.unwrap_or_else(|| circle.reading(expected.hour, sidereal, self.side));
+        let dec = dec.unwrap_or_else(|| mount.declination_circle.reading(expected.dec));
+        let sighting = self.sighting((hour, dec), opposite);
         sighting
             .understand(mount, self.moment, &self.star.source, estimate)
             .ok()
@@ -176,14 +177,18 @@ impl Sitting<'_> {
         }
     }
 
-    /// Numbers under the two indexes.
-    const fn sighting(&self, hour: Reading, dec: Reading) -> Sighting {
+    /// Numbers under the two indexes, and under the opposite verniers that were read.
+    const fn sighting(
+        &self,
+        (hour, dec): (Reading, Reading),
+        (hour_opposite, dec_opposite): (Option<Reading>, Option<Reading>),
+    ) -> Sighting {
         Sighting {
             side: self.side,
             hour,
             dec,
-            hour_opposite: None,
-            dec_opposite: None,
+            hour_opposite,
+            dec_opposite,
             timed: self.timed,
         }
     }
@@ -235,33 +240,43 @@ impl Sitting<'_> {
         let west = held.hour_off.radians() * sight.declination.angle().cos();
         let off = Angle::from_radians(west.hypot(held.dec_off.radians()));
         StarReading {
-            star: self.star.name.clone(),
-            hour_angle_deg: sight.hour_angle.degrees(),
-            declination_deg: sight.declination.degrees(),
             sidereal_deg: self.moment.apparent_sidereal().degrees(),
-            side: self.side,
-            hour: hour.trim().to_owned(),
-            dec: dec.trim().to_owned(),
-            hour_candidates_deg: degrees(&sight.hour),
-            dec_candidates_deg: degrees(&sight.dec),
             taken_as: Some(held.shown.into()),
-            hour_sigma_deg: sight.sigma_hour.degrees(),
-            dec_sigma_deg: sight.sigma_dec.degrees(),
-            driven: self.observatory.mount.hour_circle.ring == Ring::Driven,
+            driven: !self.observatory.mount.hour_circle.stands_still(),
             timed: self.timed,
-            doubted: String::new(),
             off_arcmin: self
                 .known
                 .estimate
                 .is_calibrated()
                 .then(|| off.arcminutes()),
-            used: true,
+            ..StarReading::of_sight(&self.star.name, sight, (hour, dec))
         }
     }
 }
 
 fn is_mistakable(star: &Target) -> bool {
     star.magnitude.is_some_and(|hp| hp <= MISTAKABLE_HP)
+}
+
+/// What is typed for one vernier, and for the opposite one after a stroke: `20 56 40 / 8 56 50`.
+fn verniers(text: &str) -> (&str, &str) {
+    text.split_once('/').unwrap_or((text, ""))
+}
+
+/// What was typed, or what is wrong with the opposite vernier.
+fn worse(
+    one: Option<Result<Reading, TextFault>>,
+    other: Option<Result<Reading, TextFault>>,
+) -> Option<Result<Reading, TextFault>> {
+    match other {
+        Some(Err(fault)) => Some(Err(fault)),
+        _ => one,
+    }
+}
+
+/// The reading, if it was understood.
+fn good(typed: Option<&Result<Reading, TextFault>>) -> Option<Reading> {
+    typed.and_then(|typed| typed.as_ref().ok().copied())
 }
 
 /// Nothing for an empty text, else what it is read as.
@@ -277,8 +292,4 @@ fn is_decimal(text: &str) -> bool {
         digits.contains(['.', ',']) && digits.parse::<f64>().is_ok()
     });
     number && words.all(|word| word.chars().all(char::is_alphabetic))
-}
-
-fn degrees(axes: &[AxisAngle]) -> Vec<f64> {
-    axes.iter().map(|axis| axis.degrees()).collect()
 }

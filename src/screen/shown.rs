@@ -159,6 +159,7 @@ impl From<'_> {
             estimate: &self.known.estimate,
             side: request(state),
             tube: tube(state),
+            aside: self.panel.sweep.aside(),
             lead_s: observatory.lead_s,
             calibrated_at: self.known.read_at,
             sun_risk_accepted,

@@ -11,7 +11,7 @@ use crate::screen::happening::{Happening, Stroke};
 use crate::screen::keys::{self, Act, DOUBLE_STRIKE, Mode};
 use crate::screen::panel::{Centred, Doing, Panel};
 use crate::screen::shown::{From, Settings, Shown};
-use crate::screen::{doubt, objects, typing};
+use crate::screen::{doubt, objects, sweeping, typing};
 use crate::time::Utc;
 
 /// What a happening is held against.
@@ -75,6 +75,7 @@ fn struck(panel: &mut Panel, scene: &Scene<'_>, stroke: Stroke) -> Vec<Doing> {
         Mode::Calibration => calibrating(panel, scene, act),
         Mode::Objects => objects::looking(panel, scene, act),
         Mode::Doubting => doubt::doubting(panel, act),
+        Mode::Sweeping => sweeping::sweeping(panel, scene, act),
         _ => typing::typing(panel, scene, act),
     };
     if doings
@@ -185,6 +186,10 @@ fn acted(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
         }
         Act::Star => entered(panel, Mode::ChoosingStar),
         Act::Calibration => entered(panel, Mode::Calibration),
+        Act::Sweep => {
+            sweeping::begin(panel, scene);
+            Vec::new()
+        }
         Act::Objects => {
             objects::open(panel, night.state());
             Vec::new()

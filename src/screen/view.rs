@@ -68,14 +68,16 @@ fn draw_header(look: Look, buffer: &mut Buffer, area: Rect, from: &From<'_>, sho
 fn draw_body(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown: &Shown) {
     let panel = from.panel;
     match panel.mode {
-        Mode::Stepping | Mode::Centring => draw_settings(look, buffer, body, from, shown),
+        Mode::Stepping | Mode::Centring | Mode::Sweeping => {
+            draw_settings(look, buffer, body, from, shown);
+        }
         Mode::ChoosingStar => lists::draw_stars(look, buffer, body, panel, shown),
         Mode::Searching => lists::draw_matches(look, buffer, body, panel, &shown.matches),
         Mode::Reading => draw_reading(look, buffer, body, from, shown),
         Mode::Calibration => calibration::draw(look, buffer, body, from, shown),
         Mode::Objects => objects::draw(look, buffer, body, from),
         Mode::Doubting => doubt::draw(look, buffer, body, from),
-        Mode::Sweeping => {}
+
         Mode::Help => help::draw(look, buffer, body, panel.help_from, panel.help_page),
         Mode::Noting => {
             let about = shown.target.as_ref().map_or("the night", |t| &t.name);
@@ -106,11 +108,10 @@ fn draw_body(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown
 fn draw_settings(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown: &Shown) {
     let regions = layout::dialling(body);
     let state = from.night.state();
-    let centring = from.panel.mode == Mode::Centring;
-    let beside = if centring {
-        "a star to read".to_owned()
-    } else {
-        place_in_list(state)
+    let beside = match from.panel.mode {
+        Mode::Centring => "a star to read".to_owned(),
+        Mode::Sweeping => from.panel.sweep.place(),
+        _ => place_in_list(state),
     };
     match &shown.target {
         Some(target) => target_line::draw(look, buffer, regions.target, target, &beside),
@@ -150,8 +151,12 @@ fn draw_settings(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, s
         cautions.y = cautions.y.saturating_sub(1);
         cautions.height += 1;
     }
-    if let Some(words) = pretended(shown, usize::from(body.width)) {
-        look.left(buffer, cautions, &words, Strength::Plain);
+    let lines = [
+        from.panel.sweep.words(),
+        pretended(shown, usize::from(body.width)),
+    ];
+    for words in lines.iter().flatten() {
+        look.left(buffer, cautions, words, Strength::Plain);
         cautions.y += 1;
         cautions.height = cautions.height.saturating_sub(1);
     }

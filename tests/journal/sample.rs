@@ -82,6 +82,8 @@ pub fn reading(star: &str, hour_angle_deg: f64, driven: bool) -> StarReading {
         dec_sigma_deg: 0.15,
         driven,
         timed: false,
+        hour_opposite: false,
+        dec_opposite: false,
         doubted: String::new(),
         off_arcmin: Some(7.0),
         used: true,

@@ -458,3 +458,37 @@ fn the_calibration_view_shows_what_is_known_and_which_star_next() {
     narrow.play(&reading_of(&narrow, "capella"));
     insta::assert_snapshot!("narrow_mount_as_known", narrow.play("c").text());
 }
+
+#[test]
+fn what_is_not_in_the_field_is_swept_for_and_found_there() {
+    let scene = Scene::at(EVENING, 80, 24);
+    let picture = scene.play("<space> w");
+    assert!(picture.says("read a star first"), "{}", picture.text());
+    scene.play(&reading_of(&scene, "capella"));
+    let before = known_arcmin(&scene.play(""));
+    insta::assert_snapshot!("a_sweep", scene.play("w <space> <space>").text());
+    let picture = scene.play("w <space> <space> f");
+    assert!(picture.says("found there: M 37"), "{}", picture.text());
+    let (session, _) = scene.session();
+    let state = session.night().state();
+    assert_eq!(state.readings.len(), 2);
+    assert!(matches!(state.targets[0].outcome, Some(Outcome::Found(_))));
+    drop(session);
+    assert!(known_arcmin(&scene.play("")) < before);
+}
+
+#[test]
+fn two_opposite_verniers_are_typed_with_a_stroke_between_them() {
+    let scene = Scene::at(EVENING, 80, 24);
+    let (hour, dec) = circles_shown(&scene.play("s capella <enter>"));
+    let (hours, rest) = hour.split_once('h').unwrap();
+    let across = (hours.trim().parse::<u32>().unwrap() + 12) % 24;
+    let keys = format!("s capella <enter> <enter> {hour}/{across}h{rest} <enter> {dec} <enter>");
+    let picture = scene.play(&keys);
+    assert!(picture.says("read: Capella"), "{}", picture.text());
+    let (session, _) = scene.session();
+    let read = &session.night().state().readings[0].reading;
+    assert!(read.hour_opposite && !read.dec_opposite);
+    // two looks of 10 s
+    assert!((read.hour_sigma_deg * 240.0 - 10.0 / 2.0_f64.sqrt()).abs() < 1e-6);
+}
