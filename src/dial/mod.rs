@@ -16,6 +16,7 @@ pub mod caution;
 pub mod doubt;
 pub mod json;
 pub mod mark;
+pub mod neighbour;
 pub mod next_star;
 mod outlook;
 pub mod residual_plot;

@@ -151,7 +151,7 @@ pub fn timing(
     })
 }
 
-fn looks(mount: &Mount) -> (Angle, Angle) {
+pub(super) fn looks(mount: &Mount) -> (Angle, Angle) {
     (
         mount.hour_circle.look_error(),
         mount.declination_circle.look_error(),
@@ -212,7 +212,7 @@ fn whole_sky(setup: &Setup<'_>, moment: &Moment, hour: Angle, dec: Angle) -> Vec
     places
 }
 
-const fn station(
+pub(super) const fn station(
     (hour_angle, declination): (HourAngle, Declination),
     side: Side,
     sigma_hour: Angle,
