@@ -1,6 +1,8 @@
 //! The bright stars well placed to be read: high enough, clear of the horizon mask, of Sun and Moon, within the mount's
 //! reach, and not to be mistaken for another.
 
+use std::cmp::Ordering;
+
 use crate::angle::{Altitude, Angle};
 use crate::catalog::Target;
 use crate::dial::setup::Setup;
@@ -136,6 +138,11 @@ pub(super) fn is_clear(
             .is_none_or(|span| span.contains(observed.hour_angle))
         && sun::near(moment, observed).is_none()
         && (moon.altitude <= Altitude::default() || moon.separation(observed) > NEAR_MOON)
+}
+
+/// The brighter first.
+pub(super) fn by_brightness(a: &Target, b: &Target) -> Ordering {
+    magnitude(a).total_cmp(&magnitude(b))
 }
 
 fn magnitude(star: &Target) -> f64 {

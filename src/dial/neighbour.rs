@@ -4,16 +4,16 @@
 use crate::angle::Angle;
 use crate::catalog::Target;
 use crate::dial::bright::{self, Placed};
-use crate::dial::next_star::{field_looked_into, looks, station};
+use crate::dial::next_star::{AS_GOOD, field_looked_into, looks, station};
 use crate::dial::setting::{Chance, Dial};
 use crate::dial::setup::Setup;
-use crate::estimate::{Offered, Wanted};
+use crate::estimate::{Covariance, Offered, Wanted};
 use crate::metal::Side;
 use crate::sexagesimal::Notation;
 use crate::sky::{Moment, separation};
 
 /// A star farther from the target than this is no neighbour.
-const FARTHEST: Angle = Angle::from_degrees(30.0);
+const FARTHEST: Angle = Angle::from_degrees(15.0);
 
 /// The way by a neighbour is worth the detour where it adds so much to the chance (common practice, no source).
 const WORTH_THE_DETOUR: f64 = 0.1;
@@ -54,6 +54,10 @@ pub fn neighbour(
     dial: &Dial,
     stars: &[Target],
 ) -> Option<Neighbour> {
+    if moment.sun_is_up() {
+        // no star is seen to start from
+        return None;
+    }
     let latitude = moment.observer().latitude;
     let (hour, dec) = looks(setup.mount);
     let at = &dial.observed;
@@ -69,7 +73,7 @@ pub fn neighbour(
             separation(star, (at.hour_angle.angle(), at.declination)) < FARTHEST
         })
         .collect();
-    let (by_neighbour, placed, known) = bright::unmistakable(setup, moment, near, stars)
+    let ways: Vec<(f64, Placed, Covariance)> = bright::unmistakable(setup, moment, near, stars)
         .into_iter()
         .filter_map(|placed| {
             let star = &placed.observed;
@@ -78,7 +82,13 @@ pub fn neighbour(
             let known = offered.after_reading(wanted.covariance());
             Some((wanted.first_look(&known, field), placed, known))
         })
-        .max_by(|(a, ..), (b, ..)| a.total_cmp(b))?;
+        .collect();
+    let best = ways.iter().map(|(chance, ..)| *chance).fold(0.0, f64::max);
+    // of those that are as good, the brightest is found soonest
+    let (by_neighbour, placed, known) = ways
+        .into_iter()
+        .filter(|(chance, ..)| *chance > best - AS_GOOD)
+        .min_by(|(_, a, _), (_, b, _)| bright::by_brightness(&a.star, &b.star))?;
     let star = &placed.observed;
     let predicted = setup
         .estimate

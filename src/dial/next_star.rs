@@ -25,7 +25,7 @@ const USUAL_FIELD: Angle = Angle::from_degrees(1.0);
 const WORTH_READING: f64 = 0.005;
 
 /// Stars whose gains differ by less than this help alike: three points.
-const AS_GOOD: f64 = 0.03;
+pub(super) const AS_GOOD: f64 = 0.03;
 
 /// A star to read, and what it would gain.
 #[derive(Clone, Debug, PartialEq)]
@@ -114,8 +114,7 @@ fn brightest_first(stars: Vec<NextStar>) -> Vec<NextStar> {
     let (mut good, others): (Vec<NextStar>, Vec<NextStar>) = stars
         .into_iter()
         .partition(|next| next.gain() > best - AS_GOOD);
-    let magnitude = |next: &NextStar| next.placed.star.magnitude.unwrap_or(f64::INFINITY);
-    good.sort_by(|a, b| magnitude(a).total_cmp(&magnitude(b)));
+    good.sort_by(|a, b| bright::by_brightness(&a.placed.star, &b.placed.star));
     good.extend(others);
     good
 }

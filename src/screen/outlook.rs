@@ -3,6 +3,7 @@
 
 use std::rc::Rc;
 
+use crate::dial::neighbour::Neighbour;
 use crate::screen::insight::Insight;
 use crate::screen::observatory::Observatory;
 use crate::sky::{Moment, Observed, Source};
@@ -75,6 +76,7 @@ impl Outlook {
 pub struct Foresight {
     last: Option<(String, Utc, Outlook)>,
     insight: Option<(Utc, Rc<Insight>)>,
+    neighbour: Option<(String, Utc, Option<Neighbour>)>,
 }
 
 /// What was foreseen holds so long.
@@ -93,9 +95,28 @@ impl Foresight {
         insight
     }
 
+    /// The neighbour of an object by its name, worked out anew once a minute.
+    pub fn neighbour(
+        &mut self,
+        name: &str,
+        utc: Utc,
+        work_out: impl FnOnce() -> Option<Neighbour>,
+    ) -> Option<Neighbour> {
+        if let Some((last, at, neighbour)) = &self.neighbour
+            && last == name
+            && (0.0..GOOD_FOR_S).contains(&utc.seconds_since(*at))
+        {
+            return neighbour.clone();
+        }
+        let neighbour = work_out();
+        self.neighbour = Some((name.to_owned(), utc, neighbour.clone()));
+        neighbour
+    }
+
     /// The record has changed: what followed from it no longer does.
     pub fn forget(&mut self) {
         self.insight = None;
+        self.neighbour = None;
     }
 
     /// The outlook of an object by its name, worked out anew once a minute.

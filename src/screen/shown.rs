@@ -6,6 +6,7 @@ use std::rc::Rc;
 
 use crate::catalog::{Filter, Target};
 use crate::dial::bright::Placed;
+use crate::dial::neighbour::{self, Neighbour};
 use crate::dial::{self, CautionCode, Dial, NotDialled, Setup, TubePlace};
 use crate::metal::{self, Side, SideRequest};
 use crate::night::{Known, Night, Setting, State};
@@ -52,6 +53,8 @@ pub struct Shown {
     pub target: Option<Target>,
     /// Its settings.
     pub settings: Settings,
+    /// A bright star to start from, where that is worth the detour.
+    pub neighbour: Option<Neighbour>,
     /// Where it is going.
     pub outlook: Option<Outlook>,
     /// What follows from what is known of the mount, while the observer looks at that.
@@ -129,9 +132,11 @@ impl From<'_> {
             };
             foresight.insight(self.moment.utc(), work_out)
         });
+        let neighbour = self.neighbour(&settings, foresight);
         Shown {
             moment: *self.moment,
             settings,
+            neighbour,
             outlook,
             stars: match (&insight, panel.mode) {
                 (Some(insight), Mode::ChoosingStar) => Self::stars(insight, typed),
@@ -146,6 +151,23 @@ impl From<'_> {
             pretended: self.pretended(),
             target,
         }
+    }
+
+    /// A bright star to start from, where that is worth the detour.
+    fn neighbour(&self, settings: &Settings, foresight: &mut Foresight) -> Option<Neighbour> {
+        let Settings::Dialled(dial) = settings else {
+            return None;
+        };
+        if self.panel.mode != Mode::Stepping {
+            return None;
+        }
+        let work_out = || {
+            let setup = self.setup(false);
+            neighbour::neighbour(&setup, self.moment, dial, self.bright)
+        };
+        foresight
+            .neighbour(&dial.target, self.moment.utc(), work_out)
+            .filter(Neighbour::is_worth_it)
     }
 
     /// What settings are worked out from.

@@ -93,9 +93,15 @@ fn going(outlook: Outlook, zone: CivilZone) -> String {
     }
 }
 
-/// Draws the cautions, the gravest first; and if there is room, where slit and eyepiece stand, and the
-/// observer's note.
-pub fn draw_cautions(look: Look, buffer: &mut Buffer, area: Rect, dial: &Dial, note: &str) {
+/// Draws the cautions, the gravest first; and if there is room, the star to start from, where slit and eyepiece stand, and
+/// the observer's note.
+pub fn draw_cautions(
+    look: Look,
+    buffer: &mut Buffer,
+    area: Rect,
+    dial: &Dial,
+    [neighbour, note]: [&str; 2],
+) {
     let width = usize::from(area.width).saturating_sub(2);
     let mut lines: Vec<(String, Strength)> = Vec::new();
     for caution in &dial.cautions {
@@ -103,6 +109,9 @@ pub fn draw_cautions(look: Look, buffer: &mut Buffer, area: Rect, dial: &Dial, n
             let mark = if place == 0 { "!" } else { " " };
             lines.push((format!("{mark} {line}"), Strength::Strong));
         }
+    }
+    if !neighbour.is_empty() {
+        lines.push((neighbour.to_owned(), Strength::Plain));
     }
     if let Some(line) = places(dial, usize::from(area.width)) {
         let around = wrapped(&line, usize::from(area.width));

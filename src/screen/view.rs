@@ -14,6 +14,7 @@ use crate::screen::reading::{Line, TypedReading};
 use crate::screen::shown::{From, Settings, Shown};
 use crate::screen::target_line::{self, place_in_list};
 use crate::screen::update::SUN_WORD;
+use crate::screen::words::chance;
 use crate::screen::{calibration, circle, doubt, entry, help, lists, objects, stopped, truth};
 
 /// Draws the screen.
@@ -164,7 +165,27 @@ fn draw_settings(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, s
     let note = target.map_or("", |target| {
         target_line::note_cut(regions.target, target, &beside)
     });
-    truth::draw_cautions(look, buffer, cautions, dial, note);
+    let neighbour = neighbour(shown, usize::from(body.width));
+    let after = [neighbour.as_deref().unwrap_or_default(), note];
+    truth::draw_cautions(look, buffer, cautions, dial, after);
+}
+
+/// Where to start from while the mount is barely known.
+fn neighbour(shown: &Shown, width: usize) -> Option<String> {
+    let neighbour = shown.neighbour.as_ref()?;
+    let star = &neighbour.placed.star.name;
+    let chances: Vec<String> = neighbour
+        .chances
+        .iter()
+        .map(|each| format!("{} {}", each.optic, chance(each.probability)))
+        .collect();
+    let way = format!("from {star}: {}", neighbour.words);
+    let wordings = [
+        format!("{way}: {}", chances.join(", ")),
+        format!("{way}: {}", chances.last().map_or("", String::as_str)),
+        way,
+    ];
+    Some(fitting(&wordings, width).to_owned())
 }
 
 fn pretended(shown: &Shown, width: usize) -> Option<String> {

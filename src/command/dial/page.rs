@@ -6,6 +6,8 @@ use crate::catalog::Target;
 use crate::command::dial::words;
 use crate::command::dial::{Answer, Outcome};
 use crate::command::station::Station;
+use crate::dial::bright::FAINTEST_RIVAL_HP;
+use crate::dial::neighbour::{Neighbour, neighbour};
 use crate::dial::{Chance, Dial};
 use crate::sky::Moment;
 
@@ -37,7 +39,7 @@ pub(super) fn print(
     for answer in answers {
         writeln!(out)?;
         match &answer.outcome {
-            Outcome::Dialled(target, dial) => setting(station, target, dial, out)?,
+            Outcome::Dialled(target, dial) => setting(station, moment, (target, dial), out)?,
             Outcome::NotDialled(target, why) => writeln!(out, "{}: {why}", target.name)?,
             Outcome::Unknown(why) => writeln!(out, "{}: {why}", answer.asked.text)?,
         }
@@ -45,7 +47,12 @@ pub(super) fn print(
     Ok(())
 }
 
-fn setting(station: &Station, target: &Target, dial: &Dial, out: &mut dyn Write) -> io::Result<()> {
+fn setting(
+    station: &Station,
+    moment: &Moment,
+    (target, dial): (&Target, &Dial),
+    out: &mut dyn Write,
+) -> io::Result<()> {
     writeln!(out, "{}", description(target))?;
     let mut row = |label: &str, text: &str| writeln!(out, "  {label:<20}{text}");
     row("side", dial.side.in_words())?;
@@ -90,10 +97,14 @@ fn setting(station: &Station, target: &Target, dial: &Dial, out: &mut dyn Write)
         )?;
     }
     if station.estimate.is_calibrated() && !dial.chances.is_empty() {
-        let said =
-            |chance: &Chance| format!("{} {}", chance.optic, words::percent(chance.probability));
-        let chances: Vec<String> = dial.chances.iter().map(said).collect();
-        row("first look", &chances.join(", "))?;
+        row("first look", &chances(&dial.chances))?;
+    }
+    if let Some(neighbour) = neighbour_of(station, moment, dial) {
+        let from = format!("from {}", neighbour.placed.star.name);
+        let chances = chances(&neighbour.chances);
+        let way = &neighbour.words;
+        let separator = if chances.is_empty() { "" } else { ": " };
+        row(&from, &format!("{way}{separator}{chances}"))?;
     }
     if let Some(slit) = dial.slit {
         row(
@@ -129,6 +140,24 @@ fn setting(station: &Station, target: &Target, dial: &Dial, out: &mut dyn Write)
         row("caution", &caution.text)?;
     }
     Ok(())
+}
+
+fn chances(chances: &[Chance]) -> String {
+    let said = |chance: &Chance| format!("{} {}", chance.optic, words::percent(chance.probability));
+    chances.iter().map(said).collect::<Vec<_>>().join(", ")
+}
+
+/// A bright star to start from, where the circles alone may well miss and that is worth the detour.
+fn neighbour_of(station: &Station, moment: &Moment, dial: &Dial) -> Option<Neighbour> {
+    /// With a chance like this in every optic nobody makes a detour.
+    const GOOD_ENOUGH: f64 = 0.9;
+    let is_good = |chance: &Chance| chance.probability > GOOD_ENOUGH;
+    let known = station.estimate.is_calibrated() && !dial.chances.is_empty();
+    if (known && dial.chances.iter().all(is_good)) || dial.observed.altitude.degrees() < 0.0 {
+        return None;
+    }
+    let stars = station.catalogue.bright_stars(FAINTEST_RIVAL_HP);
+    neighbour(&station.setup(), moment, dial, &stars).filter(Neighbour::is_worth_it)
 }
 
 /// Name, kind, constellation, magnitude and size, as far as they are known.
