@@ -5,6 +5,7 @@ use std::rc::Rc;
 
 use crate::dial::neighbour::Neighbour;
 use crate::screen::insight::Insight;
+use crate::screen::objects::Ahead;
 use crate::screen::observatory::Observatory;
 use crate::sky::{Moment, Observed, Source};
 use crate::time::Utc;
@@ -76,6 +77,7 @@ impl Outlook {
 pub struct Foresight {
     last: Option<(String, Utc, Outlook)>,
     insight: Option<(Utc, Rc<Insight>)>,
+    ahead: Option<(Utc, Rc<Vec<Option<Ahead>>>)>,
     neighbour: Option<(String, Utc, Option<Neighbour>)>,
 }
 
@@ -113,10 +115,27 @@ impl Foresight {
         neighbour
     }
 
+    /// What there is to expect of the objects of the list, worked out anew once a minute.
+    pub fn ahead(
+        &mut self,
+        utc: Utc,
+        work_out: impl FnOnce() -> Vec<Option<Ahead>>,
+    ) -> Rc<Vec<Option<Ahead>>> {
+        if let Some((at, ahead)) = &self.ahead
+            && (0.0..GOOD_FOR_S).contains(&utc.seconds_since(*at))
+        {
+            return Rc::clone(ahead);
+        }
+        let ahead = Rc::new(work_out());
+        self.ahead = Some((utc, Rc::clone(&ahead)));
+        ahead
+    }
+
     /// The record has changed: what followed from it no longer does.
     pub fn forget(&mut self) {
         self.insight = None;
         self.neighbour = None;
+        self.ahead = None;
     }
 
     /// The outlook of an object by its name, worked out anew once a minute.

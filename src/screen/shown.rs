@@ -12,6 +12,7 @@ use crate::metal::{self, Side, SideRequest};
 use crate::night::{Known, Night, Setting, State};
 use crate::screen::insight::Insight;
 use crate::screen::keys::Mode;
+use crate::screen::objects::{self, Ahead};
 use crate::screen::observatory::Observatory;
 use crate::screen::outlook::{Foresight, Outlook};
 use crate::screen::panel::Panel;
@@ -59,6 +60,8 @@ pub struct Shown {
     pub outlook: Option<Outlook>,
     /// What follows from what is known of the mount, while the observer looks at that.
     pub insight: Option<Rc<Insight>>,
+    /// What there is to expect of the objects of the list, while the observer looks at that.
+    pub ahead: Rc<Vec<Option<Ahead>>>,
     /// The stars to choose from.
     pub stars: Vec<Placed>,
     /// The objects that match what is typed.
@@ -137,6 +140,10 @@ impl From<'_> {
             moment: *self.moment,
             settings,
             neighbour,
+            ahead: match panel.mode {
+                Mode::Objects => foresight.ahead(self.moment.utc(), || objects::ahead(self)),
+                _ => Rc::default(),
+            },
             outlook,
             stars: match (&insight, panel.mode) {
                 (Some(insight), Mode::ChoosingStar) => Self::stars(insight, typed),

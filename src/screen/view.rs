@@ -76,7 +76,7 @@ fn draw_body(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown
         Mode::Searching => lists::draw_matches(look, buffer, body, panel, &shown.matches),
         Mode::Reading => draw_reading(look, buffer, body, from, shown),
         Mode::Calibration => calibration::draw(look, buffer, body, from, shown),
-        Mode::Objects => objects::draw(look, buffer, body, from),
+        Mode::Objects => objects::draw(look, buffer, body, from, &shown.ahead),
         Mode::Doubting => doubt::draw(look, buffer, body, from),
 
         Mode::Help => help::draw(look, buffer, body, panel.help_from, panel.help_page),
