@@ -11,12 +11,13 @@ use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 
 use crate::angle::Angle;
+use crate::dial::residual_plot::{Cell, Plotted, ResidualPlot};
+use crate::estimate::{Entangled, PolarAxis};
 use crate::metal::errors::NAMES;
 use crate::night::{Known, NightReading, State};
 use crate::screen::layout;
 use crate::screen::light::Strength;
 use crate::screen::look::{Look, wrapped};
-use crate::screen::panel::Panel;
 use crate::screen::shown::{From, Shown};
 
 /// The columns of the errors: name, value, spread; fewer where the screen is narrow.
@@ -47,7 +48,11 @@ pub fn draw(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown:
         width: upper.width.saturating_sub(left.width + 1),
         ..upper
     };
-    draw_stars(look, buffer, right, from, state);
+    if from.panel.picture {
+        draw_picture(look, buffer, right, from.known);
+    } else {
+        draw_stars(look, buffer, right, from, state);
+    }
     let lower = layout::rows_of(body, upper.height, body.height);
     let words = consequences(from, shown);
     let mut rows = lower.rows();
@@ -139,6 +144,29 @@ fn draw_stars(look: Look, buffer: &mut Buffer, area: Rect, from: &From<'_>, stat
     lines(look, buffer, area, &shown, Some(chosen - first + 1));
 }
 
+/// What is left of the stars in use, in sigmas of their readings, in the order read.
+fn draw_picture(look: Look, buffer: &mut Buffer, area: Rect, known: &Known) {
+    let readings = known.sights.iter().zip(&known.fit.residuals).zip(1..);
+    let plotted: Vec<Plotted> = readings
+        .filter_map(|((sight, residual), number)| Plotted::new(number, sight, residual.as_ref()))
+        .collect();
+    let plot = ResidualPlot::new(&plotted);
+    let rows = plot.rows();
+    // where there is less room than the picture needs, its middle is kept
+    let skipped = rows.len().saturating_sub(usize::from(area.height)) / 2;
+    for (cells, row) in rows.iter().skip(skipped).zip(area.rows()) {
+        for (cell, x) in cells.iter().zip(row.x..row.right()) {
+            let strength = match cell {
+                Cell::Ring | Cell::Blank => Strength::Faint,
+                Cell::Middle | Cell::Reading(_) => Strength::Plain,
+                Cell::Stray(_) => Strength::Strong,
+            };
+            let text = cell.character().to_string();
+            look.left(buffer, Rect { x, width: 1, ..row }, &text, strength);
+        }
+    }
+}
+
 /// A line for every reading of the night: what it leaves unexplained, or why it is not used.
 fn star_lines(known: &Known, state: &State) -> Vec<String> {
     let in_use: Vec<&NightReading> = state.readings_in_use().collect();
@@ -172,7 +200,16 @@ fn consequences(from: &From<'_>, shown: &Shown) -> Vec<String> {
         said.push(insight.next_in_words());
         said.extend(insight.timing_in_words());
     }
+    let mount = &from.observatory.mount;
+    let two_sides = mount.kind.has_two_sides();
+    let covariance = from.known.estimate.covariance();
+    let entangled = Entangled::all(covariance, &from.known.sights, two_sides);
+    said.extend(entangled.iter().map(Entangled::in_words));
+    let expected = (mount.expected.polar_high, mount.expected.polar_east);
+    let latitude = from.observatory.observer.latitude;
+    let axis = PolarAxis::of(&from.known.estimate, latitude, expected);
     said.extend(earlier_night(from));
+    said.extend(axis.map(|axis| axis.in_words()).unwrap_or_default());
     said
 }
 
@@ -208,10 +245,4 @@ fn lines(look: Look, buffer: &mut Buffer, area: Rect, lines: &[String], chosen: 
             _ => look.left(buffer, row, line, Strength::Plain),
         }
     }
-}
-
-/// True if the picture stands in place of the list.
-#[must_use]
-pub const fn shows_picture(panel: &Panel) -> bool {
-    panel.picture
 }

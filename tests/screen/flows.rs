@@ -450,6 +450,7 @@ fn the_calibration_view_shows_what_is_known_and_which_star_next() {
         scene.play(&reading_of(&scene, star));
     }
     insta::assert_snapshot!("the_mount_as_known", scene.play("<space> c").text());
+    insta::assert_snapshot!("what_is_left_of_the_stars", scene.play("c p").text());
     let picture = scene.play("c <down> x");
     assert!(picture.says("Deneb is set aside"), "{}", picture.text());
     let picture = scene.play("c <down> x");
