@@ -90,9 +90,15 @@ fn error_lines(known: &Known, narrow: bool) -> Vec<String> {
 fn shortened(name: &str, narrow: bool) -> String {
     let short = name
         .replace("hour-circle", "hour")
-        .replace("declination-circle", "declination");
+        .replace("declination-circle", "declination")
+        .replace("declination eccentricity", "dec eccentricity")
+        .replace("eccentricity, sine", "eccentr. sin")
+        .replace("eccentricity, cosine", "eccentr. cos");
     if narrow {
-        short.replace("declination", "dec").replace("polar ", "")
+        short
+            .replace("declination", "dec")
+            .replace("polar ", "")
+            .replace("eccentr.", "e")
     } else {
         short
     }
