@@ -2,6 +2,7 @@
 
 use std::path::Path;
 
+use crate::catalog::Target;
 use crate::command::station::Station;
 use crate::dial::{Sighting, TubePlace};
 use crate::estimate::{Fit, Sight, fit};
@@ -24,6 +25,12 @@ pub struct Row {
     pub star: String,
     /// When it was centred.
     pub utc: Utc,
+    /// The sky at that moment.
+    pub moment: Moment,
+    /// The star.
+    pub target: Target,
+    /// What was read.
+    pub sighting: Sighting,
     /// What it tells the estimate.
     pub sight: Sight,
 }
@@ -63,9 +70,12 @@ fn row(raw: &RawReading, station: &Station, faults: &mut Vec<Fault>) -> Option<R
     };
     let moment = Moment::new(&station.site.observer(), raw.utc);
     Some(Row {
-        star: target.name,
+        star: target.name.clone(),
         utc: raw.utc,
         sight: sighting.sight(&station.mount, &moment, &target.source),
+        moment,
+        target,
+        sighting,
     })
 }
 

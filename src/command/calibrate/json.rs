@@ -3,9 +3,11 @@
 use serde::Serialize;
 
 use crate::angle::Angle;
+use crate::command::calibrate::suspicions::SuspicionRow;
 use crate::command::calibrate::{in_question, terms};
 use crate::command::readings::Readings;
 use crate::command::station::Station;
+use crate::dial::doubt::Suspected;
 use crate::estimate::{Fit, Residual};
 
 /// What `calibrate --json` prints.
@@ -19,7 +21,7 @@ pub struct Report<'a> {
     covariance_arcmin2: Vec<Vec<f64>>,
     residuals: Vec<ResidualRow<'a>>,
     spread_arcmin: f64,
-    suspicions: [(); 0],
+    suspicions: Vec<SuspicionRow>,
     next_star: Option<()>,
 }
 
@@ -42,7 +44,12 @@ struct ResidualRow<'a> {
 
 impl<'a> Report<'a> {
     /// Of a fit to a file of readings.
-    pub fn new(station: &'a Station, readings: &'a Readings, fit: &Fit) -> Self {
+    pub fn new(
+        station: &'a Station,
+        readings: &'a Readings,
+        fit: &Fit,
+        suspected: &[Suspected],
+    ) -> Self {
         let minutes = |radians: f64| Angle::from_radians(radians).arcminutes();
         let residuals =
             readings
@@ -79,7 +86,7 @@ impl<'a> Report<'a> {
                 .collect(),
             residuals: residuals.collect(),
             spread_arcmin: fit.spread.arcminutes(),
-            suspicions: [],
+            suspicions: SuspicionRow::all(suspected),
             next_star: None,
         }
     }

@@ -3,6 +3,7 @@
 mod advice;
 mod json;
 mod picture;
+mod suspicions;
 mod table;
 
 use std::io::Write;
@@ -29,11 +30,14 @@ pub fn run(args: &CalibrateArgs, common: &Common, out: &mut dyn Write) -> anyhow
     let station = Station::open(common)?;
     let readings = readings::load(&args.file, &station)?;
     let fit = readings.fit(&station);
+    let suspected = suspicions::of(&readings, &station);
     if common.json {
-        serde_json::to_writer(&mut *out, &json::Report::new(&station, &readings, &fit))?;
+        let report = json::Report::new(&station, &readings, &fit, &suspected);
+        serde_json::to_writer(&mut *out, &report)?;
         return Ok(writeln!(out)?);
     }
     table::write(&station, &readings, &fit, out)?;
+    suspicions::paragraphs(&readings, &suspected, out)?;
     picture::draw(&readings, &fit, out)?;
     advice::write(&station, &readings, &fit, out)
 }

@@ -11,6 +11,9 @@ use crate::metal::{Misreading, Mistake, Ring, Side};
 /// A clock still on or already off daylight time, in seconds.
 const AN_HOUR_S: f64 = 3600.0;
 
+/// Clock errors nearer to each other than this are one.
+const SAME_CLOCK_S: f64 = 1.0;
+
 /// What may have gone wrong.
 #[derive(Clone, Debug, PartialEq)]
 pub(super) enum What {
@@ -26,26 +29,11 @@ pub(super) enum What {
     Clock(f64),
 }
 
-/// What may have gone wrong, with what the reading then says.
-pub(super) struct Account {
-    pub what: What,
-    /// The reading put right; as it was, where a circle has slipped.
-    pub sight: Sight,
-    /// How often it happens.
-    pub prior: f64,
-}
-
-impl Account {
-    pub fn slipped(&self) -> Slipped {
-        match self.what {
-            What::Slipped(slipped) => slipped,
-            _ => Slipped::default(),
-        }
-    }
-
+impl What {
+    /// The kind of explanation it is.
     pub const fn kind(&self) -> Kind {
-        match &self.what {
-            What::Misread(circle, misreading) => match (misreading.mistake, circle) {
+        match self {
+            Self::Misread(circle, misreading) => match (misreading.mistake, circle) {
                 (
                     Mistake::Letter
                     | Mistake::Sign
@@ -57,10 +45,32 @@ impl Account {
                 (_, Circle::Hour | Circle::HourOpposite) => Kind::HourMisread,
                 (_, Circle::Dec | Circle::DecOpposite) => Kind::DecMisread,
             },
-            What::Star(_) => Kind::OtherStar,
-            What::Side(_) => Kind::OtherSide,
-            What::Slipped(_) => Kind::RingSlipped,
-            What::Clock(_) => Kind::Clock,
+            Self::Star(_) => Kind::OtherStar,
+            Self::Side(_) => Kind::OtherSide,
+            Self::Slipped(_) => Kind::RingSlipped,
+            Self::Clock(_) => Kind::Clock,
+        }
+    }
+}
+
+/// What may have gone wrong, with what the reading then says.
+#[derive(Clone, Debug)]
+pub(super) struct Account {
+    pub what: What,
+    /// The reading put right; as it was, where a circle has slipped.
+    pub sight: Sight,
+    /// How often it happens.
+    pub prior: f64,
+}
+
+impl Account {
+    pub const fn slipped(&self) -> Slipped {
+        match self.what {
+            What::Slipped(slipped) => slipped,
+            _ => Slipped {
+                hour: false,
+                dec: false,
+            },
         }
     }
 }
@@ -89,7 +99,16 @@ fn other_side(questioned: &Questioned<'_>) -> Option<Account> {
 }
 
 fn slipped(questioned: &Questioned<'_>, said: &Sight) -> [Account; 3] {
-    let prior = |loose: bool| {
+    slips(questioned).map(|(slipped, prior)| Account {
+        what: What::Slipped(slipped),
+        sight: said.clone(),
+        prior,
+    })
+}
+
+/// The circles that may have slipped, and how often they do.
+pub(super) fn slips(questioned: &Questioned<'_>) -> [(Slipped, f64); 3] {
+    let often = |loose: bool| {
         if loose {
             weights::LOOSE_RING_SLIPPED
         } else {
@@ -97,48 +116,45 @@ fn slipped(questioned: &Questioned<'_>, said: &Sight) -> [Account; 3] {
         }
     };
     let mount = questioned.mount;
-    let hour_prior = prior(mount.hour_circle.ring != Ring::Fixed);
-    let dec_prior = prior(mount.declination_circle.slips);
-    let both_prior = hour_prior.min(dec_prior) * weights::OF_BOTH;
+    let hour_slips = often(mount.hour_circle.ring != Ring::Fixed);
+    let dec_slips = often(mount.declination_circle.slips);
+    let both_slip = hour_slips.min(dec_slips) * weights::OF_BOTH;
     [
-        (true, false, hour_prior),
-        (false, true, dec_prior),
-        (true, true, both_prior),
+        (true, false, hour_slips),
+        (false, true, dec_slips),
+        (true, true, both_slip),
     ]
-    .map(|(hour, dec, prior)| Account {
-        what: What::Slipped(Slipped { hour, dec }),
-        sight: said.clone(),
-        prior,
-    })
+    .map(|(hour, dec, often)| (Slipped { hour, dec }, often))
 }
 
-fn clock(questioned: &Questioned<'_>) -> Vec<Account> {
+/// The seconds that may be to be added to the clock, and how often they are.
+pub(super) fn clock_errors(questioned: &Questioned<'_>) -> Vec<(f64, f64)> {
     let circumstances = questioned.circumstances;
     let an_hour_out = if circumstances.clock_agreed {
         weights::CLOCK_HAD_AGREED
     } else {
         weights::CLOCK_AN_HOUR_OUT
     };
-    let mut shifts = vec![
+    let mut errors = vec![
         (AN_HOUR_S, an_hour_out / 2.0),
         (-AN_HOUR_S, an_hour_out / 2.0),
     ];
     if let Some(leapt) = circumstances.clock_leapt_s {
-        shifts.retain(|(shift, _)| (shift + leapt).abs() > 1.0);
-        shifts.push((-leapt, weights::CLOCK_LEAPT));
+        errors.retain(|(seconds, _)| (seconds + leapt).abs() > SAME_CLOCK_S);
+        errors.push((-leapt, weights::CLOCK_LEAPT));
     }
-    shifts
-        .into_iter()
-        .map(|(seconds, prior)| Account {
-            what: What::Clock(seconds),
-            sight: at_clock(questioned, seconds),
-            prior,
-        })
-        .collect()
+    errors
 }
 
-/// What the reading says if so many seconds are added to its moment.
-pub(super) fn at_clock(questioned: &Questioned<'_>, seconds: f64) -> Sight {
-    let moment = questioned.moment.later(seconds);
-    questioned.sight_of(questioned.sighting, &moment, questioned.target)
+fn clock<'a>(questioned: &'a Questioned<'_>) -> impl Iterator<Item = Account> + 'a {
+    clock_errors(questioned)
+        .into_iter()
+        .map(|(seconds, prior)| {
+            let moment = questioned.moment.later(seconds);
+            Account {
+                what: What::Clock(seconds),
+                sight: questioned.sight_of(questioned.sighting, &moment, questioned.target),
+                prior,
+            }
+        })
 }

@@ -44,7 +44,7 @@ pub(super) fn misread(questioned: &Questioned<'_>) -> Vec<Account> {
         (Kind::DecMisread, weights::DEC_MISREAD),
         (Kind::WrongSign, weights::WRONG_SIGN),
     ] {
-        let of_kind = |account: &&mut Account| account.kind() == kind;
+        let of_kind = |account: &&mut Account| account.what.kind() == kind;
         let sum: f64 = accounts
             .iter_mut()
             .filter(of_kind)

@@ -134,6 +134,24 @@ impl Weighed {
         ln_sum(&[self.sound_ln, mistaken])
     }
 
+    /// A suspicion of the same reading with explanations from elsewhere, which it ranks.
+    pub(super) fn with(&self, mut explanations: Vec<Explanation>) -> Suspicion {
+        explanations.sort_by(|a, b| b.share.total_cmp(&a.share));
+        let least = explanations
+            .first()
+            .map_or(0.0, |best| best.share.min(LEAST_SHARE));
+        explanations.retain(|one| one.share >= least);
+        let sum: f64 = explanations.iter().map(|one| one.share).sum();
+        Suspicion {
+            improbability: self.held.improbability(),
+            hour_off: self.held.hour_off,
+            dec_off: self.held.dec_off,
+            sound: 0.0,
+            unexplained: (1.0 - sum).max(0.0),
+            explanations,
+        }
+    }
+
     /// Ranks the accounts by their share.
     pub(super) fn suspicion(&self, questioned: &Questioned<'_>) -> Suspicion {
         let whole = self.ln_all();
@@ -145,11 +163,8 @@ impl Weighed {
             .enumerate()
             .map(|(rank, (account, held, ln))| (rank, account, held, share(*ln)))
             .filter(|(rank, _, _, share)| *rank == 0 || *share >= LEAST_SHARE)
-            .map(|(_, account, held, share)| Explanation {
-                kind: account.kind(),
-                text: words::of(questioned, &account.what, held),
-                share,
-                correction: correction(questioned, &account.what, held),
+            .map(|(_, account, held, share)| {
+                Explanation::of(questioned, &account.what, Off::from(held), share)
             })
             .collect();
         Suspicion {
@@ -163,7 +178,49 @@ impl Weighed {
     }
 }
 
-fn correction(questioned: &Questioned<'_>, what: &What, held: &Held) -> Correction {
+impl Suspicion {
+    /// As it is if the reading is the wrong one only so often, 0 to 1.
+    pub(super) fn scaled(mut self, share: f64) -> Self {
+        self.sound = 1.0 - share * (1.0 - self.sound);
+        self.unexplained *= share;
+        for explanation in &mut self.explanations {
+            explanation.share *= share;
+        }
+        self
+    }
+}
+
+/// How far a reading is off, or an index has moved.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Off {
+    /// On the hour axis, positive west.
+    pub hour: Angle,
+    /// On the declination axis, positive north.
+    pub dec: Angle,
+}
+
+impl From<&Held> for Off {
+    fn from(held: &Held) -> Self {
+        Self {
+            hour: held.hour_off,
+            dec: held.dec_off,
+        }
+    }
+}
+
+impl Explanation {
+    /// What may have gone wrong with a reading that is off by so much.
+    pub(super) fn of(questioned: &Questioned<'_>, what: &What, off: Off, share: f64) -> Self {
+        Self {
+            kind: what.kind(),
+            text: words::of(questioned, what, off),
+            share,
+            correction: correction(questioned, what, off),
+        }
+    }
+}
+
+fn correction(questioned: &Questioned<'_>, what: &What, off: Off) -> Correction {
     match what {
         What::Misread(circle, misreading) => Correction::Reading {
             circle: *circle,
@@ -173,8 +230,8 @@ fn correction(questioned: &Questioned<'_>, what: &What, held: &Held) -> Correcti
         What::Star(star) => Correction::Star(star.clone()),
         What::Side(side) => Correction::Side(*side),
         What::Slipped(slipped) => Correction::Slipped {
-            hour: slipped.hour.then_some(held.hour_off),
-            dec: slipped.dec.then_some(held.dec_off),
+            hour: slipped.hour.then_some(off.hour),
+            dec: slipped.dec.then_some(off.dec),
         },
         What::Clock(seconds) => Correction::Clock { seconds: *seconds },
     }

@@ -4,6 +4,7 @@
 //! readings, of which any may be the wrong one. Nothing is taken or dropped here: the observer chooses.
 
 mod account;
+mod change;
 mod circles;
 mod earlier;
 mod explanation;
@@ -53,6 +54,7 @@ pub struct Questioned<'a> {
 }
 
 /// All accounts of a reading, weighed: natural logarithms of prior times density.
+#[derive(Clone, Debug)]
 struct Weighed {
     held: Held,
     sound_ln: f64,
@@ -117,10 +119,13 @@ impl Questioned<'_> {
     /// A sight as uncertain as the looks and the rounding make it; a timed hour is not rounded.
     fn with_rounding(&self, mut sight: Sight, timed: bool) -> Sight {
         let (hour, dec) = (&self.mount.hour_circle, &self.mount.declination_circle);
-        if !timed {
+        // an error the mount file states is that of the number as written down
+        if !timed && hour.reading_error.is_none() {
             sight.sigma_hour = with_rounding(sight.sigma_hour, &hour.scale());
         }
-        sight.sigma_dec = with_rounding(sight.sigma_dec, &dec.scale());
+        if dec.reading_error.is_none() {
+            sight.sigma_dec = with_rounding(sight.sigma_dec, &dec.scale());
+        }
         sight
     }
 

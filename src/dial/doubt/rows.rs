@@ -1,7 +1,24 @@
 //! Which of a set of readings are wrong, when any may be.
+//!
+//! Two stories are told of a set and weighed against each other: that some readings are wrong each by itself, and that from
+//! one of them on something had changed for all that follow, a ring or the clock ([`change`]).
+//!
+//! A reading is held against the estimate of the others. That of a wrong one among them drags nothing along as long as
+//! there are enough sound ones; with two readings that disagree either may be the wrong one, and both are named.
 
-use crate::dial::doubt::{Earlier, Questioned, Suspicion};
-use crate::estimate::{Estimate, Prior, Sight};
+use crate::angle::Latitude;
+use crate::dial::doubt::change::{self, Change};
+use crate::dial::doubt::{Earlier, Questioned, Suspicion, Weighed, weights};
+use crate::estimate::{Estimate, Prior, Residual, Sight, fit, ln_sum};
+
+/// Another row is named beside the likeliest culprit if it is the wrong one at least so often.
+const RIVAL_SHARE: f64 = 0.1;
+
+/// Among so few readings each may pull the others along, and each is held against the others.
+const FEW: usize = 12;
+
+/// Among more, one this near to a fit that contains it is not far off one that does not.
+const NEAR_SIGMAS: f64 = 2.0;
 
 /// A suspicious reading of a set.
 #[derive(Clone, Debug, PartialEq)]
@@ -12,73 +29,242 @@ pub struct Suspected {
     pub suspicion: Suspicion,
 }
 
-/// The suspicious readings of a set, in its order. Each is held against the estimate that the readings not suspected
-/// make without it; the one against which most is to be said is set aside first.
+/// The suspicious readings of a set, which must be in the order of time.
 #[must_use]
 pub fn suspicions(prior: &Prior, rows: &[Questioned<'_>]) -> Vec<Suspected> {
-    let sights: Vec<Sight> = rows
-        .iter()
-        .map(|row| {
-            row.sighting
-                .sight(row.mount, row.moment, &row.target.source)
-        })
-        .collect();
-    let mut aside: Vec<usize> = Vec::new();
-    while let Some(worst) = worst(prior, rows, &sights, &aside) {
-        aside.push(worst);
+    let set = Set::new(prior, rows);
+    let (aside, rivals) = set.set_aside();
+    if aside.is_empty() {
+        return Vec::new();
     }
-    let mut found: Vec<Suspected> = aside
+    let singly = set.told(&aside, rivals);
+    let changes = change::possible(prior, rows, &singly);
+    let mut lns: Vec<f64> = changes.iter().map(|change| change.ln).collect();
+    lns.push(singly.ln);
+    let whole = ln_sum(&lns);
+    let likeliest = changes
         .iter()
-        .filter_map(|&row| {
-            let questioned = rows.get(row)?;
-            let estimate = without(prior, rows, &sights, &aside, row)?;
-            let suspicion = questioned.suspicion_against(&estimate)?;
-            Some(Suspected { row, suspicion })
-        })
-        .collect();
-    found.sort_by_key(|one| one.row);
+        .filter(|change| change.ln > singly.ln)
+        .max_by(|a, b| a.ln.total_cmp(&b.ln));
+    match likeliest {
+        Some(change) => changed(rows, &singly, &changes, change, whole),
+        None => singly.suspected,
+    }
+}
+
+/// What is said of a set that something changed in: every reading from then on is suspicious for the same reason.
+fn changed(
+    rows: &[Questioned<'_>],
+    singly: &Told,
+    changes: &[Change],
+    likeliest: &Change,
+    whole: f64,
+) -> Vec<Suspected> {
+    let mut found = likeliest.before.suspected.clone();
+    for (row, questioned) in rows.iter().enumerate().skip(likeliest.from) {
+        let alone = likeliest.after.suspected.iter();
+        let alone = alone.filter(|one| one.row + likeliest.from == row);
+        if let Some(suspected) = alone.clone().next() {
+            // wrong by itself, whatever else had changed
+            found.push(Suspected {
+                row,
+                suspicion: suspected.suspicion.clone(),
+            });
+            continue;
+        }
+        let Some(weighed) = questioned.weighed(&likeliest.before.estimate) else {
+            continue;
+        };
+        let mut explanations = change::explanations(changes, row, questioned, whole);
+        let by_itself = (singly.ln - whole).exp();
+        let single = singly.suspected.iter().find(|one| one.row == row);
+        if let Some(single) = single {
+            explanations.extend(single.suspicion.clone().scaled(by_itself).explanations);
+        }
+        found.push(Suspected {
+            row,
+            suspicion: weighed.with(explanations),
+        });
+    }
     found
 }
 
-/// The row against which most is to be said, if it is suspicious.
-fn worst(
-    prior: &Prior,
-    rows: &[Questioned<'_>],
-    sights: &[Sight],
-    aside: &[usize],
-) -> Option<usize> {
-    rows.iter()
-        .enumerate()
-        .filter(|(row, _)| !aside.contains(row))
-        .filter_map(|(row, questioned)| {
-            let estimate = without(prior, rows, sights, aside, row)?;
-            let held = questioned.held(&estimate)?;
-            if !held.is_suspicious() {
-                return None;
-            }
-            Some((row, questioned.weighed(&estimate)?.ln_mistaken()))
-        })
-        .max_by(|(_, a), (_, b)| a.total_cmp(b))
-        .map(|(row, _)| row)
+/// The story that some readings are wrong, each by itself.
+#[derive(Clone, Debug)]
+pub(super) struct Told {
+    /// The natural logarithm of how likely the readings are so.
+    pub ln: f64,
+    /// Which are suspicious.
+    pub suspected: Vec<Suspected>,
+    /// What the others tell of the mount.
+    pub estimate: Estimate,
 }
 
-/// The estimate from all readings but one and those set aside, to hold that one against.
-fn without(
-    prior: &Prior,
-    rows: &[Questioned<'_>],
-    sights: &[Sight],
-    aside: &[usize],
+/// A suspicious reading with all that weighs against it.
+struct Against {
     row: usize,
-) -> Option<Estimate> {
-    let others: Vec<Sight> = sights
-        .iter()
-        .enumerate()
-        .filter(|(other, _)| *other != row && !aside.contains(other))
-        .map(|(_, sight)| sight.clone())
-        .collect();
-    let earlier = Earlier {
-        prior,
-        sights: &others,
-    };
-    Some(rows.get(row)?.estimate(&earlier))
+    weighed: Weighed,
+}
+
+impl Against {
+    fn ln(&self) -> f64 {
+        self.weighed.ln_mistaken()
+    }
+}
+
+impl Told {
+    /// The story of a set.
+    pub(super) fn of(prior: &Prior, rows: &[Questioned<'_>]) -> Self {
+        let set = Set::new(prior, rows);
+        let (aside, rivals) = set.set_aside();
+        set.told(&aside, rivals)
+    }
+}
+
+/// A set of readings in the order of time.
+struct Set<'a> {
+    prior: &'a Prior,
+    rows: &'a [Questioned<'a>],
+    sights: Vec<Sight>,
+}
+
+impl<'a> Set<'a> {
+    fn new(prior: &'a Prior, rows: &'a [Questioned<'a>]) -> Self {
+        let sight = |row: &Questioned<'_>| {
+            row.sighting
+                .sight(row.mount, row.moment, &row.target.source)
+        };
+        Self {
+            prior,
+            rows,
+            sights: rows.iter().map(sight).collect(),
+        }
+    }
+
+    /// Sets the readings aside one by one against which most is to be said, until those that are left agree. With them,
+    /// those that may as well be the wrong ones instead of the last.
+    fn set_aside(&self) -> (Vec<usize>, Vec<Suspected>) {
+        let mut aside: Vec<usize> = Vec::new();
+        let mut rivals: Vec<Suspected> = Vec::new();
+        loop {
+            let mut against = self.against(&aside);
+            against.sort_by(|a, b| b.ln().total_cmp(&a.ln()));
+            let lns: Vec<f64> = against.iter().map(Against::ln).collect();
+            let whole = ln_sum(&lns);
+            let mut against = against.into_iter();
+            let Some(worst) = against.next() else {
+                return (aside, rivals);
+            };
+            aside.push(worst.row);
+            rivals = against
+                .map(|one| (one.row, (one.ln() - whole).exp(), one.weighed))
+                .filter(|(_, share, _)| *share > RIVAL_SHARE)
+                .filter_map(|(row, share, weighed)| {
+                    let suspicion = weighed.suspicion(self.rows.get(row)?).scaled(share);
+                    Some(Suspected { row, suspicion })
+                })
+                .collect();
+        }
+    }
+
+    /// The rows not yet set aside that a fit of them all does not leave near enough to be sound without a question.
+    fn doubtful(&self, aside: &[usize]) -> Vec<usize> {
+        let left: Vec<usize> = (0..self.rows.len())
+            .filter(|row| !aside.contains(row))
+            .collect();
+        if left.len() <= FEW {
+            return left;
+        }
+        let sights = self.sights(|row| !aside.contains(&row));
+        let Some(latitude) = self.latitude() else {
+            return left;
+        };
+        let residuals = fit(latitude, self.prior, &sights).residuals;
+        let is_near = |sight: &Sight, residual: &Residual| {
+            let hour = residual.hour / sight.sigma_hour;
+            let dec = residual.dec / sight.sigma_dec;
+            hour.hypot(dec) < NEAR_SIGMAS
+        };
+        left.into_iter()
+            .zip(sights.iter().zip(&residuals))
+            .filter(|(_, (sight, residual))| {
+                residual
+                    .as_ref()
+                    .is_none_or(|residual| !is_near(sight, residual))
+            })
+            .map(|(row, _)| row)
+            .collect()
+    }
+
+    fn latitude(&self) -> Option<Latitude> {
+        self.rows.first().map(|row| row.moment.observer().latitude)
+    }
+
+    /// What weighs against each suspicious reading not yet set aside.
+    fn against(&self, aside: &[usize]) -> Vec<Against> {
+        let doubtful = self.doubtful(aside).into_iter();
+        doubtful
+            .filter_map(|row| {
+                let questioned = self.rows.get(row)?;
+                let others = self.sights(|other| other != row && !aside.contains(&other));
+                let estimate = questioned.estimate(&Earlier {
+                    prior: self.prior,
+                    sights: &others,
+                });
+                let held = questioned.held(&estimate)?;
+                let weighed = held
+                    .is_suspicious()
+                    .then(|| questioned.weighed(&estimate))??;
+                Some(Against { row, weighed })
+            })
+            .collect()
+    }
+
+    /// The whole story, once it is known which are set aside: the others told one after the other, each by those before
+    /// it, and those aside by all the others.
+    fn told(&self, aside: &[usize], rivals: Vec<Suspected>) -> Told {
+        let mut ln = 0.0;
+        let mut suspected = Vec::new();
+        for (row, questioned) in self.rows.iter().enumerate() {
+            let is_aside = aside.contains(&row);
+            let others = self.sights(|other| !aside.contains(&other) && (is_aside || other < row));
+            let estimate = questioned.estimate(&Earlier {
+                prior: self.prior,
+                sights: &others,
+            });
+            if is_aside {
+                let Some(weighed) = questioned.weighed(&estimate) else {
+                    continue;
+                };
+                ln += weighed.ln_all();
+                suspected.push(Suspected {
+                    row,
+                    suspicion: weighed.suspicion(questioned),
+                });
+            } else if let Some(held) = questioned.held(&estimate) {
+                ln += weights::SOUND.ln() + held.ln_density;
+            }
+        }
+        suspected.extend(rivals);
+        suspected.sort_by_key(|one| one.row);
+        let left = self.sights(|row| !aside.contains(&row));
+        let estimate = self.latitude().map_or_else(
+            || Estimate::from_prior(self.prior),
+            |latitude| Estimate::from(&fit(latitude, self.prior, &left)),
+        );
+        Told {
+            ln,
+            suspected,
+            estimate,
+        }
+    }
+
+    fn sights(&self, wanted: impl Fn(usize) -> bool) -> Vec<Sight> {
+        self.sights
+            .iter()
+            .enumerate()
+            .filter(|(row, _)| wanted(*row))
+            .map(|(_, sight)| sight.clone())
+            .collect()
+    }
 }

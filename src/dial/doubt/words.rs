@@ -3,13 +3,12 @@
 use crate::angle::Angle;
 use crate::dial::doubt::Questioned;
 use crate::dial::doubt::account::What;
-use crate::dial::doubt::explanation::Circle;
-use crate::estimate::Held;
+use crate::dial::doubt::explanation::{Circle, Off};
 use crate::metal::{Misreading, Mistake, Mount, Reading, Scale, Side, Step};
 use crate::sexagesimal::{Notation, Unit};
 
 /// What may have gone wrong, in plain words.
-pub(super) fn of(questioned: &Questioned<'_>, what: &What, held: &Held) -> String {
+pub(super) fn of(questioned: &Questioned<'_>, what: &What, off: Off) -> String {
     let mount = questioned.mount;
     match what {
         What::Misread(circle, misreading) => misread(questioned, *circle, misreading),
@@ -17,8 +16,8 @@ pub(super) fn of(questioned: &Questioned<'_>, what: &What, held: &Held) -> Strin
         What::Side(Side::TubeEast) => "the tube stood east of the pier".to_owned(),
         What::Side(_) => "the tube stood west of the pier".to_owned(),
         What::Slipped(slipped) => {
-            let hour = size(&mount.hour_circle.scale(), held.hour_off);
-            let dec = size(&mount.declination_circle.scale(), held.dec_off);
+            let hour = size(&mount.hour_circle.scale(), off.hour);
+            let dec = size(&mount.declination_circle.scale(), off.dec);
             match (slipped.hour, slipped.dec) {
                 (true, true) => {
                     format!("both circles have slipped, by {hour} and {dec}")
