@@ -20,6 +20,12 @@ mod rates;
 /// Sound readings after each number of readings before.
 const SOUND_OF_EACH: usize = 2000;
 
+/// Sets with each kind of fault.
+const SETS_OF_EACH: usize = 100;
+
+/// Sets of sound readings.
+const SOUND_SETS: usize = 1200;
+
 /// Spoilt readings of each kind.
 const SPOILT_OF_EACH: usize = 400;
 
@@ -46,6 +52,21 @@ fn main() -> ExitCode {
         right += tally.right;
     }
     println!("{suspected} of {sound} sound readings suspected; {right} of {spoilt} explained");
+    let (mut set_spoilt, mut set_right) = (0, 0);
+    for (name, tally) in rates::explained_in_sets(3, &stars, SETS_OF_EACH) {
+        let rates::Tally {
+            spoilt: of,
+            suspected,
+            right: named,
+        } = tally;
+        println!("{name:<24}{of} sets, {suspected} with the right rows, {named} explained");
+        set_spoilt += of;
+        set_right += named;
+    }
+    let (in_sets, alarms) = rates::false_alarms_in_sets(4, &stars, SOUND_SETS);
+    println!(
+        "{alarms} of {in_sets} sound readings of sets suspected; {set_right} of {set_spoilt} sets explained"
+    );
     let good = suspected * 500 <= sound && right * 10 >= spoilt * 9;
     if good {
         ExitCode::SUCCESS

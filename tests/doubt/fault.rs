@@ -1,5 +1,7 @@
 //! A reading spoilt in one way, and whether an explanation names it.
 
+use std::ops::Range;
+
 use nonius::angle::Angle;
 use nonius::catalog::Target;
 use nonius::dial::doubt::{Circle, Correction, Explanation, Kind};
@@ -82,6 +84,63 @@ impl Truth {
                 _ => false,
             }
     }
+}
+
+/// Readings of a night in the order of time, of which some were spoilt.
+pub struct SpoiltSet {
+    pub reads: Vec<Read>,
+    /// Which.
+    pub rows: Range<usize>,
+    pub truth: Truth,
+}
+
+/// A set in which one reading is spoilt in that way.
+pub fn spoil_one(chance: &mut Chance, night: &Night<'_>, kind: Kind) -> Option<SpoiltSet> {
+    let Spoilt { read, truth, .. } = spoil(chance, night, kind)?;
+    let reads = in_order(night.some_readings(chance, 5), Some(&read));
+    let row = reads.iter().position(|one| one.sighting == read.sighting)?;
+    Some(SpoiltSet {
+        reads,
+        rows: row..row + 1,
+        truth,
+    })
+}
+
+/// A set in which the clock was set an hour wrong, or a ring slipped, for the last two or three.
+pub fn spoil_the_rest(chance: &mut Chance, night: &Night<'_>, kind: Kind) -> Option<SpoiltSet> {
+    let mut reads = in_order(night.some_readings(chance, 6), None);
+    let from = 3 + chance.one_of(2);
+    let truth = if kind == Kind::Clock {
+        if night.mount.hour_circle.ring == Ring::Driven {
+            return None;
+        }
+        let ahead = pick(chance, &[3600.0, -3600.0]);
+        for read in reads.iter_mut().skip(from) {
+            *read = wrong_clock(read, ahead);
+        }
+        Truth::Clock(-ahead)
+    } else {
+        let (turned, truth) = turned(chance, night)?;
+        for read in reads.iter_mut().skip(from) {
+            let side = read.sighting.side;
+            *read = turned.read(chance, &read.moment, &read.target, side)?;
+        }
+        truth
+    };
+    // by the clock as it was
+    let in_order = reads.windows(2).all(|two| is_before(&two[0], &two[1]));
+    let rows = from..reads.len();
+    in_order.then_some(SpoiltSet { reads, rows, truth })
+}
+
+fn is_before(a: &Read, b: &Read) -> bool {
+    a.moment.utc() <= b.moment.utc()
+}
+
+fn in_order(mut reads: Vec<Read>, more: Option<&Read>) -> Vec<Read> {
+    reads.extend(more.cloned());
+    reads.sort_by_key(|read| read.moment.utc());
+    reads
 }
 
 /// Spoils a reading of a night in that way, if that can happen with such a mount and star.
@@ -286,6 +345,16 @@ fn turned_round(
 }
 
 fn slipped(chance: &mut Chance, night: &Night<'_>) -> Option<Spoilt> {
+    let (turned, truth) = turned(chance, night)?;
+    Some(Spoilt {
+        read: turned.some_reading(chance),
+        circumstances: agreed(),
+        truth,
+    })
+}
+
+/// The night with a ring that has slipped.
+fn turned<'a>(chance: &mut Chance, night: &Night<'a>) -> Option<(Night<'a>, Truth)> {
     let (hour_loose, dec_loose) = (
         night.mount.hour_circle.ring != Ring::Fixed,
         night.mount.declination_circle.slips,
@@ -311,11 +380,7 @@ fn slipped(chance: &mut Chance, night: &Night<'_>) -> Option<Spoilt> {
     if dec {
         turned.truth.dec_index += by(night.mount.declination_circle.division);
     }
-    Some(Spoilt {
-        read: turned.some_reading(chance),
-        circumstances: agreed(),
-        truth: Truth::Slipped { hour, dec },
-    })
+    Some((turned, Truth::Slipped { hour, dec }))
 }
 
 /// The clock has leapt, and that is known.

@@ -194,6 +194,11 @@ impl<'a> Night<'a> {
         }
     }
 
+    /// So many of them.
+    pub fn some_readings(&self, chance: &mut Chance, count: usize) -> Vec<Read> {
+        (0..count).map(|_| self.some_reading(chance)).collect()
+    }
+
     /// As typed: rounded as engraved.
     pub fn typed_hour(&self, reading: Reading) -> Reading {
         let circle = &self.mount.hour_circle;

@@ -117,7 +117,7 @@ pub fn paragraphs(
         }
         for (share, text) in [
             (*unexplained, "none of these"),
-            (*sound, "as it was, by chance"),
+            (*sound, "sound all the same"),
         ] {
             if share >= LEAST_SHARE {
                 writeln!(out, "  {}  {text}", percent(share))?;
@@ -147,6 +147,6 @@ fn rarity(suspicion: &Suspicion) -> String {
     if once_in < HARDLY_EVER {
         format!("further off than one sound reading in {once_in:.0}")
     } else {
-        "further off than any sound reading".to_owned()
+        "further off than any sound reading would be".to_owned()
     }
 }

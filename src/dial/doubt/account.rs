@@ -4,7 +4,7 @@ use crate::catalog::Target;
 use crate::dial::Sighting;
 use crate::dial::doubt::explanation::{Circle, Kind};
 use crate::dial::doubt::weights;
-use crate::dial::doubt::{Questioned, circles, stars};
+use crate::dial::doubt::{Circumstances, Questioned, circles, stars};
 use crate::estimate::{Sight, Slipped};
 use crate::metal::{Misreading, Mistake, Ring, Side};
 
@@ -128,8 +128,7 @@ pub(super) fn slips(questioned: &Questioned<'_>) -> [(Slipped, f64); 3] {
 }
 
 /// The seconds that may be to be added to the clock, and how often they are.
-pub(super) fn clock_errors(questioned: &Questioned<'_>) -> Vec<(f64, f64)> {
-    let circumstances = questioned.circumstances;
+pub(super) fn clock_errors(circumstances: &Circumstances) -> Vec<(f64, f64)> {
     let an_hour_out = if circumstances.clock_agreed {
         weights::CLOCK_HAD_AGREED
     } else {
@@ -147,7 +146,7 @@ pub(super) fn clock_errors(questioned: &Questioned<'_>) -> Vec<(f64, f64)> {
 }
 
 fn clock<'a>(questioned: &'a Questioned<'_>) -> impl Iterator<Item = Account> + 'a {
-    clock_errors(questioned)
+    clock_errors(&questioned.circumstances)
         .into_iter()
         .map(|(seconds, prior)| {
             let moment = questioned.moment.later(seconds);

@@ -5,9 +5,10 @@
 
 use crate::angle::Angle;
 use crate::dial::doubt::account::{self, What};
+use crate::dial::doubt::case::Case;
 use crate::dial::doubt::explanation::Off;
 use crate::dial::doubt::rows::Told;
-use crate::dial::doubt::{Explanation, Questioned};
+use crate::dial::doubt::{Circumstances, Explanation, Questioned};
 use crate::estimate::Prior;
 use crate::metal::errors::COUNT;
 use crate::sky::Moment;
@@ -71,14 +72,14 @@ pub(super) fn explanations(
 }
 
 /// What may have changed in a set, as the readings that seem wrong by themselves suggest.
-pub(super) fn possible(prior: &Prior, rows: &[Questioned<'_>], singly: &Told) -> Vec<Change> {
+pub(super) fn possible(prior: &Prior, rows: &[Case<'_>], singly: &Told) -> Vec<Change> {
     places(singly, rows.len())
         .into_iter()
         .filter_map(|from| rows.split_at_checked(from))
         .flat_map(|(before, after)| {
             let told = Told::of(prior, before);
             let first = after.first();
-            let changes = first.map_or_else(Vec::new, |first| whats(first));
+            let changes = first.map_or_else(Vec::new, |first| whats(&first.questioned));
             changes.into_iter().map(move |(what, often)| {
                 let after = tell_after(&told, &what, after);
                 Change {
@@ -106,7 +107,11 @@ fn places(singly: &Told, rows: usize) -> Vec<usize> {
 /// What may change for good before a reading, and how often it does.
 fn whats(first: &Questioned<'_>) -> Vec<(What, f64)> {
     let slipped = account::slips(first);
-    let clock = account::clock_errors(first);
+    // one clock may well have been right before
+    let clock = account::clock_errors(&Circumstances {
+        clock_agreed: false,
+        ..first.circumstances
+    });
     let slipped = slipped
         .into_iter()
         .map(|(slipped, often)| (What::Slipped(slipped), often));
@@ -117,7 +122,7 @@ fn whats(first: &Questioned<'_>) -> Vec<(What, f64)> {
 }
 
 /// The readings after a change, by what was learnt before it.
-fn tell_after(before: &Told, what: &What, after: &[Questioned<'_>]) -> Told {
+fn tell_after(before: &Told, what: &What, after: &[Case<'_>]) -> Told {
     let free = |is_free: bool| if is_free { SLIP } else { Angle::ZERO };
     let mut widened_by = [Angle::ZERO; COUNT];
     if let (What::Slipped(slipped), [hour, dec, ..]) = (what, &mut widened_by) {
@@ -127,11 +132,19 @@ fn tell_after(before: &Told, what: &What, after: &[Questioned<'_>]) -> Told {
     let What::Clock(seconds) = what else {
         return Told::of(&prior, after);
     };
-    let moments: Vec<Moment> = after.iter().map(|row| row.moment.later(*seconds)).collect();
-    let right: Vec<Questioned<'_>> = after
+    let moments: Vec<Moment> = after
+        .iter()
+        .map(|row| row.questioned.moment.later(*seconds))
+        .collect();
+    let right: Vec<Case<'_>> = after
         .iter()
         .zip(&moments)
-        .map(|(row, moment)| Questioned { moment, ..*row })
+        .map(|(row, moment)| {
+            Case::new(Questioned {
+                moment,
+                ..row.questioned
+            })
+        })
         .collect();
     Told::of(&prior, &right)
 }

@@ -3,12 +3,12 @@
 use crate::angle::Angle;
 use crate::catalog::Target;
 use crate::dial::doubt::account::What;
-use crate::dial::doubt::{Questioned, Weighed, words};
-use crate::estimate::{Held, ln_sum};
+use crate::dial::doubt::{Questioned, words};
+use crate::estimate::Held;
 use crate::metal::{Reading, Side};
 
 /// Explanations of a smaller share are not worth reading, beside the best.
-const LEAST_SHARE: f64 = 0.005;
+pub(super) const LEAST_SHARE: f64 = 0.005;
 
 /// A kind of explanation.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash, serde::Serialize)]
@@ -118,64 +118,6 @@ pub struct Suspicion {
     pub unexplained: f64,
     /// What may have happened, the likeliest first, at least one where there is any account at all.
     pub explanations: Vec<Explanation>,
-}
-
-impl Weighed {
-    /// How much likelier some mistake is than a sound reading, as the natural logarithm of the ratio.
-    pub(super) fn ln_mistaken(&self) -> f64 {
-        let mut parts: Vec<f64> = self.accounts.iter().map(|(_, _, ln)| *ln).collect();
-        parts.push(self.unexplained_ln);
-        ln_sum(&parts) - self.sound_ln
-    }
-
-    /// The likelihood of the reading under all accounts together, a natural logarithm.
-    pub(super) fn ln_all(&self) -> f64 {
-        let mistaken = self.sound_ln + self.ln_mistaken();
-        ln_sum(&[self.sound_ln, mistaken])
-    }
-
-    /// A suspicion of the same reading with explanations from elsewhere, which it ranks.
-    pub(super) fn with(&self, mut explanations: Vec<Explanation>) -> Suspicion {
-        explanations.sort_by(|a, b| b.share.total_cmp(&a.share));
-        let least = explanations
-            .first()
-            .map_or(0.0, |best| best.share.min(LEAST_SHARE));
-        explanations.retain(|one| one.share >= least);
-        let sum: f64 = explanations.iter().map(|one| one.share).sum();
-        Suspicion {
-            improbability: self.held.improbability(),
-            hour_off: self.held.hour_off,
-            dec_off: self.held.dec_off,
-            sound: 0.0,
-            unexplained: (1.0 - sum).max(0.0),
-            explanations,
-        }
-    }
-
-    /// Ranks the accounts by their share.
-    pub(super) fn suspicion(&self, questioned: &Questioned<'_>) -> Suspicion {
-        let whole = self.ln_all();
-        let share = |ln: f64| (ln - whole).exp();
-        let mut ranked: Vec<_> = self.accounts.iter().collect();
-        ranked.sort_by(|(_, _, a), (_, _, b)| b.total_cmp(a));
-        let explanations = ranked
-            .into_iter()
-            .enumerate()
-            .map(|(rank, (account, held, ln))| (rank, account, held, share(*ln)))
-            .filter(|(rank, _, _, share)| *rank == 0 || *share >= LEAST_SHARE)
-            .map(|(_, account, held, share)| {
-                Explanation::of(questioned, &account.what, Off::from(held), share)
-            })
-            .collect();
-        Suspicion {
-            improbability: self.held.improbability(),
-            hour_off: self.held.hour_off,
-            dec_off: self.held.dec_off,
-            sound: share(self.sound_ln),
-            unexplained: share(self.unexplained_ln),
-            explanations,
-        }
-    }
 }
 
 impl Suspicion {

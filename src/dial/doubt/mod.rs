@@ -4,6 +4,7 @@
 //! readings, of which any may be the wrong one. Nothing is taken or dropped here: the observer chooses.
 
 mod account;
+mod case;
 mod change;
 mod circles;
 mod earlier;
@@ -16,7 +17,7 @@ mod words;
 use crate::angle::Angle;
 use crate::catalog::Target;
 use crate::dial::Sighting;
-use crate::estimate::{Estimate, Held, Sight, Slipped};
+use crate::estimate::{Estimate, Sight};
 use crate::metal::{Mount, Scale};
 use crate::sky::Moment;
 
@@ -24,8 +25,7 @@ pub use earlier::Earlier;
 pub use explanation::{Circle, Correction, Explanation, Kind, Suspicion};
 pub use rows::{Suspected, suspicions};
 
-use account::Account;
-use weights::{SOUND, UNEXPLAINED};
+use case::Case;
 
 /// What is known of the circumstances of a reading beside the reading itself.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
@@ -53,60 +53,28 @@ pub struct Questioned<'a> {
     pub circumstances: Circumstances,
 }
 
-/// All accounts of a reading, weighed: natural logarithms of prior times density.
-#[derive(Clone, Debug)]
-struct Weighed {
-    held: Held,
-    sound_ln: f64,
-    unexplained_ln: f64,
-    accounts: Vec<(Account, Held, f64)>,
-}
-
 impl Questioned<'_> {
     /// What there is to say against a reading after those before it, if it is suspicious. Nothing too for a place nearer
     /// the pole of the mount than the tube can come.
     #[must_use]
     pub fn suspicion(&self, earlier: &Earlier<'_>) -> Option<Suspicion> {
-        self.suspicion_against(&self.estimate(earlier))
-    }
-
-    /// The same against an estimate, which must not rest on the reading.
-    #[must_use]
-    pub fn suspicion_against(&self, estimate: &Estimate) -> Option<Suspicion> {
-        self.held(estimate)
-            .filter(Held::is_suspicious)
-            .and_then(|_| self.weighed(estimate))
-            .map(|weighed| weighed.suspicion(self))
-    }
-
-    /// The estimate of the readings before, by the meaning of theirs that goes best with this one.
-    fn estimate(&self, earlier: &Earlier<'_>) -> Estimate {
-        let latitude = self.moment.observer().latitude;
         let sights: Vec<Sight> = earlier
             .sights
             .iter()
             .map(|sight| self.with_rounding(sight.clone(), false))
             .collect();
-        let earlier = Earlier {
+        let case = Case::new(*self);
+        let estimate = case.estimate(&Earlier {
             sights: &sights,
             ..*earlier
-        };
-        earlier.estimate(latitude, &self.sight(), |estimate| self.held(estimate))
+        });
+        case.suspicion(&estimate)
     }
 
-    /// The reading held against an estimate that does not rest on it.
-    fn held(&self, estimate: &Estimate) -> Option<Held> {
-        self.hold(estimate, &self.sight(), Slipped::default())
-    }
-
-    fn hold(&self, estimate: &Estimate, sight: &Sight, slipped: Slipped) -> Option<Held> {
-        let latitude = self.moment.observer().latitude;
-        estimate.hold(latitude, sight, slipped).ok().flatten()
-    }
-
-    /// What the reading says as it was given.
-    fn sight(&self) -> Sight {
-        self.sight_of(self.sighting, self.moment, self.target)
+    /// The same against an estimate, which must not rest on the reading.
+    #[must_use]
+    pub fn suspicion_against(&self, estimate: &Estimate) -> Option<Suspicion> {
+        Case::new(*self).suspicion(estimate)
     }
 
     /// What a reading would have said of that star at that moment: as uncertain as the look and the rounding to what the
@@ -116,10 +84,10 @@ impl Questioned<'_> {
         self.with_rounding(sight, sighting.timed)
     }
 
-    /// A sight as uncertain as the looks and the rounding make it; a timed hour is not rounded.
+    /// A sight as uncertain as the looks and the rounding make it; a timed hour is not rounded, and an error the mount
+    /// file states is that of the number as written down.
     fn with_rounding(&self, mut sight: Sight, timed: bool) -> Sight {
         let (hour, dec) = (&self.mount.hour_circle, &self.mount.declination_circle);
-        // an error the mount file states is that of the number as written down
         if !timed && hour.reading_error.is_none() {
             sight.sigma_hour = with_rounding(sight.sigma_hour, &hour.scale());
         }
@@ -127,31 +95,6 @@ impl Questioned<'_> {
             sight.sigma_dec = with_rounding(sight.sigma_dec, &dec.scale());
         }
         sight
-    }
-
-    /// Weighs every account of the reading.
-    fn weighed(&self, estimate: &Estimate) -> Option<Weighed> {
-        let sight = self.sight();
-        let held = self.hold(estimate, &sight, Slipped::default())?;
-        let blunders = [(true, false), (false, true)].map(|(hour, dec)| {
-            let slipped = Slipped { hour, dec };
-            let density = self.hold(estimate, &sight, slipped);
-            density.map_or(f64::NEG_INFINITY, |held| held.ln_density)
-        });
-        let accounts = account::all(self, &sight)
-            .into_iter()
-            .filter_map(|account| {
-                let held = self.hold(estimate, &account.sight, account.slipped())?;
-                let ln = account.prior.ln() + held.ln_density;
-                Some((account, held, ln))
-            })
-            .collect();
-        Some(Weighed {
-            held,
-            sound_ln: SOUND.ln() + held.ln_density,
-            unexplained_ln: UNEXPLAINED.ln() + crate::estimate::ln_sum(&blunders),
-            accounts,
-        })
     }
 }
 

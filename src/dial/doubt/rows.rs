@@ -7,8 +7,9 @@
 //! there are enough sound ones; with two readings that disagree either may be the wrong one, and both are named.
 
 use crate::angle::Latitude;
+use crate::dial::doubt::case::{Case, Weighed};
 use crate::dial::doubt::change::{self, Change};
-use crate::dial::doubt::{Earlier, Questioned, Suspicion, Weighed, weights};
+use crate::dial::doubt::{Earlier, Questioned, Suspicion, weights};
 use crate::estimate::{Estimate, Prior, Residual, Sight, fit, ln_sum};
 
 /// Another row is named beside the likeliest culprit if it is the wrong one at least so often.
@@ -32,13 +33,14 @@ pub struct Suspected {
 /// The suspicious readings of a set, which must be in the order of time.
 #[must_use]
 pub fn suspicions(prior: &Prior, rows: &[Questioned<'_>]) -> Vec<Suspected> {
-    let set = Set::new(prior, rows);
-    let (aside, rivals) = set.set_aside();
-    if aside.is_empty() {
+    let rows: Vec<Case<'_>> = rows.iter().copied().map(Case::new).collect();
+    let set = Set { prior, rows: &rows };
+    let apart = set.set_apart();
+    if apart.aside.is_empty() {
         return Vec::new();
     }
-    let singly = set.told(&aside, rivals);
-    let changes = change::possible(prior, rows, &singly);
+    let singly = set.told(apart);
+    let changes = change::possible(prior, &rows, &singly);
     let mut lns: Vec<f64> = changes.iter().map(|change| change.ln).collect();
     lns.push(singly.ln);
     let whole = ln_sum(&lns);
@@ -47,21 +49,21 @@ pub fn suspicions(prior: &Prior, rows: &[Questioned<'_>]) -> Vec<Suspected> {
         .filter(|change| change.ln > singly.ln)
         .max_by(|a, b| a.ln.total_cmp(&b.ln));
     match likeliest {
-        Some(change) => changed(rows, &singly, &changes, change, whole),
+        Some(change) => changed(&rows, &singly, &changes, change, whole),
         None => singly.suspected,
     }
 }
 
 /// What is said of a set that something changed in: every reading from then on is suspicious for the same reason.
 fn changed(
-    rows: &[Questioned<'_>],
+    rows: &[Case<'_>],
     singly: &Told,
     changes: &[Change],
     likeliest: &Change,
     whole: f64,
 ) -> Vec<Suspected> {
     let mut found = likeliest.before.suspected.clone();
-    for (row, questioned) in rows.iter().enumerate().skip(likeliest.from) {
+    for (row, case) in rows.iter().enumerate().skip(likeliest.from) {
         let alone = likeliest.after.suspected.iter();
         let alone = alone.filter(|one| one.row + likeliest.from == row);
         if let Some(suspected) = alone.clone().next() {
@@ -72,10 +74,10 @@ fn changed(
             });
             continue;
         }
-        let Some(weighed) = questioned.weighed(&likeliest.before.estimate) else {
+        let Some(weighed) = case.weighed(&likeliest.before.estimate) else {
             continue;
         };
-        let mut explanations = change::explanations(changes, row, questioned, whole);
+        let mut explanations = change::explanations(changes, row, &case.questioned, whole);
         let by_itself = (singly.ln - whole).exp();
         let single = singly.suspected.iter().find(|one| one.row == row);
         if let Some(single) = single {
@@ -101,12 +103,12 @@ pub(super) struct Told {
 }
 
 /// A suspicious reading with all that weighs against it.
-struct Against {
+struct Against<'a> {
     row: usize,
-    weighed: Weighed,
+    weighed: Weighed<'a>,
 }
 
-impl Against {
+impl Against<'_> {
     fn ln(&self) -> f64 {
         self.weighed.ln_mistaken()
     }
@@ -114,56 +116,59 @@ impl Against {
 
 impl Told {
     /// The story of a set.
-    pub(super) fn of(prior: &Prior, rows: &[Questioned<'_>]) -> Self {
-        let set = Set::new(prior, rows);
-        let (aside, rivals) = set.set_aside();
-        set.told(&aside, rivals)
+    pub(super) fn of(prior: &Prior, rows: &[Case<'_>]) -> Self {
+        let set = Set { prior, rows };
+        set.told(set.set_apart())
     }
+}
+
+/// Those set aside of a set.
+struct Apart {
+    /// The rows, in the order in which they were set aside.
+    aside: Vec<usize>,
+    /// How likely the last of them is the wrong one, rather than one of its rivals.
+    share_of_last: f64,
+    /// Those that may as well be the wrong ones instead of the last.
+    rivals: Vec<Suspected>,
 }
 
 /// A set of readings in the order of time.
 struct Set<'a> {
     prior: &'a Prior,
-    rows: &'a [Questioned<'a>],
-    sights: Vec<Sight>,
+    rows: &'a [Case<'a>],
 }
 
-impl<'a> Set<'a> {
-    fn new(prior: &'a Prior, rows: &'a [Questioned<'a>]) -> Self {
-        let sight = |row: &Questioned<'_>| {
-            row.sighting
-                .sight(row.mount, row.moment, &row.target.source)
+impl Set<'_> {
+    /// Sets the readings aside one by one against which most is to be said, until those that are left agree.
+    fn set_apart(&self) -> Apart {
+        let mut apart = Apart {
+            aside: Vec::new(),
+            share_of_last: 1.0,
+            rivals: Vec::new(),
         };
-        Self {
-            prior,
-            rows,
-            sights: rows.iter().map(sight).collect(),
-        }
-    }
-
-    /// Sets the readings aside one by one against which most is to be said, until those that are left agree. With them,
-    /// those that may as well be the wrong ones instead of the last.
-    fn set_aside(&self) -> (Vec<usize>, Vec<Suspected>) {
-        let mut aside: Vec<usize> = Vec::new();
-        let mut rivals: Vec<Suspected> = Vec::new();
         loop {
-            let mut against = self.against(&aside);
+            let mut against = self.against(&apart.aside);
             against.sort_by(|a, b| b.ln().total_cmp(&a.ln()));
             let lns: Vec<f64> = against.iter().map(Against::ln).collect();
             let whole = ln_sum(&lns);
             let mut against = against.into_iter();
             let Some(worst) = against.next() else {
-                return (aside, rivals);
+                return apart;
             };
-            aside.push(worst.row);
-            rivals = against
+            apart.aside.push(worst.row);
+            apart.rivals = against
                 .map(|one| (one.row, (one.ln() - whole).exp(), one.weighed))
                 .filter(|(_, share, _)| *share > RIVAL_SHARE)
-                .filter_map(|(row, share, weighed)| {
-                    let suspicion = weighed.suspicion(self.rows.get(row)?).scaled(share);
-                    Some(Suspected { row, suspicion })
+                .map(|(row, share, weighed)| {
+                    let suspicion = weighed.suspicion().scaled(share);
+                    Suspected { row, suspicion }
                 })
                 .collect();
+            apart.share_of_last = if apart.rivals.is_empty() {
+                1.0
+            } else {
+                (lns.first().copied().unwrap_or(whole) - whole).exp()
+            };
         }
     }
 
@@ -197,24 +202,23 @@ impl<'a> Set<'a> {
     }
 
     fn latitude(&self) -> Option<Latitude> {
-        self.rows.first().map(|row| row.moment.observer().latitude)
+        self.rows
+            .first()
+            .map(|row| row.questioned.moment.observer().latitude)
     }
 
     /// What weighs against each suspicious reading not yet set aside.
-    fn against(&self, aside: &[usize]) -> Vec<Against> {
+    fn against(&self, aside: &[usize]) -> Vec<Against<'_>> {
         let doubtful = self.doubtful(aside).into_iter();
         doubtful
             .filter_map(|row| {
-                let questioned = self.rows.get(row)?;
+                let case = self.rows.get(row)?;
                 let others = self.sights(|other| other != row && !aside.contains(&other));
-                let estimate = questioned.estimate(&Earlier {
+                let estimate = case.estimate(&Earlier {
                     prior: self.prior,
                     sights: &others,
                 });
-                let held = questioned.held(&estimate)?;
-                let weighed = held
-                    .is_suspicious()
-                    .then(|| questioned.weighed(&estimate))??;
+                let weighed = case.suspicious(&estimate)?;
                 Some(Against { row, weighed })
             })
             .collect()
@@ -222,26 +226,37 @@ impl<'a> Set<'a> {
 
     /// The whole story, once it is known which are set aside: the others told one after the other, each by those before
     /// it, and those aside by all the others.
-    fn told(&self, aside: &[usize], rivals: Vec<Suspected>) -> Told {
+    fn told(&self, apart: Apart) -> Told {
+        let Apart {
+            aside,
+            share_of_last,
+            rivals,
+        } = apart;
         let mut ln = 0.0;
         let mut suspected = Vec::new();
-        for (row, questioned) in self.rows.iter().enumerate() {
+        for (row, case) in self.rows.iter().enumerate() {
             let is_aside = aside.contains(&row);
             let others = self.sights(|other| !aside.contains(&other) && (is_aside || other < row));
-            let estimate = questioned.estimate(&Earlier {
+            let estimate = case.estimate(&Earlier {
                 prior: self.prior,
                 sights: &others,
             });
             if is_aside {
-                let Some(weighed) = questioned.weighed(&estimate) else {
+                let Some(weighed) = case.weighed(&estimate) else {
                     continue;
                 };
                 ln += weighed.ln_all();
+                let suspicion = weighed.suspicion();
+                let share = if aside.last() == Some(&row) {
+                    share_of_last
+                } else {
+                    1.0
+                };
                 suspected.push(Suspected {
                     row,
-                    suspicion: weighed.suspicion(questioned),
+                    suspicion: suspicion.scaled(share),
                 });
-            } else if let Some(held) = questioned.held(&estimate) {
+            } else if let Some(held) = case.held(&estimate) {
                 ln += weights::SOUND.ln() + held.ln_density;
             }
         }
@@ -260,11 +275,11 @@ impl<'a> Set<'a> {
     }
 
     fn sights(&self, wanted: impl Fn(usize) -> bool) -> Vec<Sight> {
-        self.sights
+        self.rows
             .iter()
             .enumerate()
             .filter(|(row, _)| wanted(*row))
-            .map(|(_, sight)| sight.clone())
+            .map(|(_, case)| case.sight.clone())
             .collect()
     }
 }
