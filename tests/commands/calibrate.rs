@@ -377,3 +377,40 @@ fn minutes_of(line: &str) -> Vec<f64> {
         })
         .collect()
 }
+
+#[test]
+fn an_hour_misread_in_a_file_is_suspected_and_explained() {
+    let home = Home::new();
+    let sound = readings(&TARN_HOLLOW, &NORTHERN, AS_ENGRAVED);
+    let file = home.write("sound.csv", &sound);
+    let report = calibrated(&home, &TARN_HOLLOW, "six-inch", &file);
+    assert_eq!(report["suspicions"], json!([]));
+
+    // the third star's hour, one more than it was
+    let line = sound.lines().nth(3).unwrap();
+    let cells: Vec<&str> = line.split(',').collect();
+    let (hour, rest) = cells[2].split_once(' ').unwrap();
+    let wrong = format!("{} {rest}", (hour.parse::<u32>().unwrap() + 1) % 24);
+    let misread = line.replace(cells[2], &wrong);
+    let file = home.write("misread.csv", &sound.replace(line, &misread));
+    let report = calibrated(&home, &TARN_HOLLOW, "six-inch", &file);
+    let suspicions = report["suspicions"].as_array().unwrap();
+    assert_eq!(suspicions.len(), 1, "{report}");
+    assert_eq!(suspicions[0]["row"], 3);
+    assert!(number(&suspicions[0], "/improbability") < 1e-6);
+    let explanations = suspicions[0]["explanations"].as_array().unwrap();
+    assert_eq!(explanations[0]["kind"], "hour-misread");
+    assert!(number(&explanations[0], "/share") > 0.9);
+    let shares: f64 = explanations.iter().map(|one| number(one, "/share")).sum();
+    assert!(shares <= 1.0 + 1e-9, "{report}");
+    for one in explanations {
+        assert_shape(one, &json!({"text": "", "kind": "", "share": 0.0}));
+    }
+    let said = text(&explanations[0], "/text");
+    assert!(
+        said.starts_with("hour circle misread by one hour: "),
+        "{said}"
+    );
+    let table = home.out(&["calibrate", &file, "--site", "tarn-hollow"]);
+    assert!(table.contains(said) && table.contains("row 3, "), "{table}");
+}

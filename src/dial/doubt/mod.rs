@@ -8,6 +8,8 @@ mod case;
 mod change;
 mod circles;
 mod earlier;
+#[cfg(test)]
+mod engravings;
 mod explanation;
 mod rows;
 mod stars;
