@@ -22,8 +22,19 @@ const BEFORE: [(&str, Side); 5] = [
 
 const EVENING: &str = "2026-12-01T22:30:00Z";
 
-/// The errors of the mount in minutes of arc.
-const TRUE_ARCMIN: [f64; 7] = [205.0, -94.0, 14.0, -22.0, 9.0, -4.0, 1.5];
+/// The errors of the mount.
+fn true_errors() -> MountErrors {
+    MountErrors {
+        hour_index: Angle::from_arcminutes(205.0),
+        dec_index: Angle::from_arcminutes(-94.0),
+        polar_high: Angle::from_arcminutes(14.0),
+        polar_east: Angle::from_arcminutes(-22.0),
+        cone: Angle::from_arcminutes(9.0),
+        skew: Angle::from_arcminutes(-4.0),
+        sag: Angle::from_arcminutes(1.5),
+        ..MountErrors::default()
+    }
+}
 
 /// A mount with its circles and what they have shown.
 struct Engraved {
@@ -88,7 +99,7 @@ impl Engraved {
     /// What the circles show of a star, rounded to the vernier.
     fn read(&self, moment: &Moment, name: &str, side: Side, slipped: Angle) -> Sighting {
         let place = moment.observed(&moment.apparent(&target(name).source));
-        let errors = MountErrors::from_array(TRUE_ARCMIN.map(Angle::from_arcminutes));
+        let errors = true_errors();
         let latitude = moment.observer().latitude;
         let axes = to_axes(place.hour_angle, place.declination, latitude, &errors, side).unwrap();
         let (hour, dec) = (self.hour(), &self.trial.mount.declination_circle);
