@@ -14,7 +14,7 @@ use nalgebra::{Matrix2, Vector2};
 use crate::angle::{Angle, Latitude};
 use crate::estimate::descent::sigma_rad;
 use crate::estimate::prediction::Estimate;
-use crate::estimate::sight::{Sight, off};
+use crate::estimate::sight::{Residual, Sight, off};
 use crate::metal::TooNearPole;
 
 /// A sight of which sound ones come farther off only once in a thousand is suspicious.
@@ -101,6 +101,29 @@ impl Estimate {
             squared,
             ln_density: ln_sum(&ln_densities),
         }))
+    }
+}
+
+impl Estimate {
+    /// The squared distance in sigmas that a sight this estimate rests on would have from the estimate of the others, to
+    /// first order: what is left unexplained of it, by the spread that leaves (R. D. Cook, *Technometrics* 19, 1977; from
+    /// memory). Nothing for a sight not trusted in full, of which the estimate hardly knows.
+    #[must_use]
+    pub fn squared_without(
+        &self,
+        latitude: Latitude,
+        sight: &Sight,
+        residual: &Residual,
+    ) -> Option<f64> {
+        if residual.weight() < 1.0 {
+            return None;
+        }
+        let (hour, dec) = (sigma_rad(sight.sigma_hour), sigma_rad(sight.sigma_dec));
+        let looks = Matrix2::new(hour * hour, 0.0, 0.0, dec * dec);
+        let left = looks - self.predict_sight(latitude, sight).ok()?.covariance;
+        let away = Vector2::new(residual.hour.radians(), residual.dec.radians());
+        let inverse = left.cholesky()?.inverse();
+        Some(away.dot(&(inverse * away)))
     }
 }
 
@@ -254,6 +277,43 @@ mod tests {
         // of what has not slipped, sound is the likelier account
         let sound = sight(&[-30.0], &[20.0]);
         assert!(held(&sound, Slipped::default()).ln_density > held(&sound, hour).ln_density + 2.0);
+    }
+
+    #[test]
+    fn the_distance_from_the_others_follows_from_what_is_left_unexplained() {
+        /// Bent by the second order of errors of a degree.
+        const OF_FIRST_ORDER: f64 = 0.05;
+        let latitude = Latitude::from_degrees(LATITUDE_DEG);
+        let prior = Prior::from_expected(&ExpectedErrors::default());
+        let places = [(-50.0, 20.0), (40.0, -5.0), (-20.0, 55.0), (25.0, 35.0)];
+        let sights: Vec<Sight> = places
+            .into_iter()
+            .enumerate()
+            .map(|(n, (hour_angle, declination))| Sight {
+                hour_angle: HourAngle::from_degrees(hour_angle),
+                declination: Declination::from_degrees(declination),
+                // off by up to 5' and 6'
+                ..sight(
+                    &[hour_angle + (n as f64).sin() / 12.0],
+                    &[declination + (2.0 * n as f64).cos() / 10.0],
+                )
+            })
+            .collect();
+        let all = fit(latitude, &prior, &sights);
+        for (left_out, one) in sights.iter().enumerate() {
+            let mut others = sights.clone();
+            others.remove(left_out);
+            let others = Estimate::from(&fit(latitude, &prior, &others));
+            let held = others.hold(latitude, one, Slipped::default());
+            let squared = held.unwrap().unwrap().squared;
+            let residual = all.residuals[left_out].unwrap();
+            let followed = Estimate::from(&all).squared_without(latitude, one, &residual);
+            let followed = followed.unwrap();
+            assert!(
+                (followed - squared).abs() < OF_FIRST_ORDER * squared.max(0.1),
+                "{followed} {squared}"
+            );
+        }
     }
 
     #[test]

@@ -9,12 +9,15 @@ use crate::dial::doubt::case::Case;
 use crate::dial::doubt::explanation::Off;
 use crate::dial::doubt::rows::Told;
 use crate::dial::doubt::{Circumstances, Explanation, Questioned};
-use crate::estimate::Prior;
+use crate::estimate::{Prior, Residual, Sight, fit};
 use crate::metal::errors::COUNT;
 use crate::sky::Moment;
 
 /// A ring that slipped between two readings may have done so by about this, 1 sigma (common practice, no source).
 const SLIP: Angle = Angle::from_degrees(20.0);
+
+/// Of the readings after a change one in so many may be wrong for all that.
+const ONE_WRONG_IN: usize = 4;
 
 /// So many places at which something may have changed are looked at.
 const MOST_PLACES: usize = 4;
@@ -80,15 +83,15 @@ pub(super) fn possible(prior: &Prior, rows: &[Case<'_>], singly: &Told) -> Vec<C
             let told = Told::of(prior, before);
             let first = after.first();
             let changes = first.map_or_else(Vec::new, |first| whats(&first.questioned));
-            changes.into_iter().map(move |(what, often)| {
-                let after = tell_after(&told, &what, after);
-                Change {
+            changes.into_iter().filter_map(move |(what, often)| {
+                let after = tell_after(&told, &what, after)?;
+                Some(Change {
                     from: before.len(),
                     ln: often.ln() + told.ln + after.ln,
                     before: told.clone(),
                     after,
                     what,
-                }
+                })
             })
         })
         .collect()
@@ -121,8 +124,8 @@ fn whats(first: &Questioned<'_>) -> Vec<(What, f64)> {
     slipped.chain(clock).collect()
 }
 
-/// The readings after a change, by what was learnt before it.
-fn tell_after(before: &Told, what: &What, after: &[Case<'_>]) -> Told {
+/// The readings after a change, by what was learnt before it; nothing if they do not agree by it either.
+fn tell_after(before: &Told, what: &What, after: &[Case<'_>]) -> Option<Told> {
     let free = |is_free: bool| if is_free { SLIP } else { Angle::ZERO };
     let mut widened_by = [Angle::ZERO; COUNT];
     if let (What::Slipped(slipped), [hour, dec, ..]) = (what, &mut widened_by) {
@@ -130,7 +133,7 @@ fn tell_after(before: &Told, what: &What, after: &[Case<'_>]) -> Told {
     }
     let prior = Prior::from_estimate(&before.estimate, widened_by);
     let What::Clock(seconds) = what else {
-        return Told::of(&prior, after);
+        return told_if_agreed(&prior, after);
     };
     let moments: Vec<Moment> = after
         .iter()
@@ -146,5 +149,20 @@ fn tell_after(before: &Told, what: &What, after: &[Case<'_>]) -> Told {
             })
         })
         .collect();
-    Told::of(&prior, &right)
+    told_if_agreed(&prior, &right)
+}
+
+/// The story of readings of which a fit trusts all in full, but for one in so many.
+fn told_if_agreed(prior: &Prior, rows: &[Case<'_>]) -> Option<Told> {
+    let latitude = rows.first()?.questioned.moment.observer().latitude;
+    let sights: Vec<Sight> = rows.iter().map(|case| case.sight.clone()).collect();
+    let residuals = fit(latitude, prior, &sights).residuals;
+    let trusted = |residual: &Residual| residual.weight() >= 1.0;
+    let agreed = residuals
+        .iter()
+        .flatten()
+        .filter(|one| trusted(one))
+        .count();
+    let wrong = rows.len() - agreed;
+    (wrong * ONE_WRONG_IN < rows.len()).then(|| Told::of(prior, rows))
 }

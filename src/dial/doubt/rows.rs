@@ -15,11 +15,9 @@ use crate::estimate::{Estimate, Prior, Residual, Sight, fit, ln_sum};
 /// Another row is named beside the likeliest culprit if it is the wrong one at least so often.
 const RIVAL_SHARE: f64 = 0.1;
 
-/// Among so few readings each may pull the others along, and each is held against the others.
-const FEW: usize = 12;
-
-/// Among more, one this near to a fit that contains it is not far off one that does not.
-const NEAR_SIGMAS: f64 = 2.0;
+/// A reading whose squared distance from the others, in sigmas, comes to less than this to first order is held against
+/// them no further: suspicious ones are beyond 13.8.
+const NEAR_SQUARED: f64 = 6.0;
 
 /// A suspicious reading of a set.
 #[derive(Clone, Debug, PartialEq)]
@@ -146,14 +144,16 @@ impl Set<'_> {
             share_of_last: 1.0,
             rivals: Vec::new(),
         };
-        loop {
+        // more than half cannot all be wrong each by itself: then it is the mount that is not as the model has it
+        let most = (self.rows.len() / 2).max(1);
+        while apart.aside.len() < most {
             let mut against = self.against(&apart.aside);
             against.sort_by(|a, b| b.ln().total_cmp(&a.ln()));
             let lns: Vec<f64> = against.iter().map(Against::ln).collect();
             let whole = ln_sum(&lns);
             let mut against = against.into_iter();
             let Some(worst) = against.next() else {
-                return apart;
+                break;
             };
             apart.aside.push(worst.row);
             apart.rivals = against
@@ -170,33 +170,25 @@ impl Set<'_> {
                 (lns.first().copied().unwrap_or(whole) - whole).exp()
             };
         }
+        apart
     }
 
-    /// The rows not yet set aside that a fit of them all does not leave near enough to be sound without a question.
+    /// The rows not yet set aside that may be suspicious, by a fit of them all.
     fn doubtful(&self, aside: &[usize]) -> Vec<usize> {
-        let left: Vec<usize> = (0..self.rows.len())
-            .filter(|row| !aside.contains(row))
-            .collect();
-        if left.len() <= FEW {
-            return left;
-        }
-        let sights = self.sights(|row| !aside.contains(&row));
         let Some(latitude) = self.latitude() else {
-            return left;
+            return Vec::new();
         };
-        let residuals = fit(latitude, self.prior, &sights).residuals;
-        let is_near = |sight: &Sight, residual: &Residual| {
-            let hour = residual.hour / sight.sigma_hour;
-            let dec = residual.dec / sight.sigma_dec;
-            hour.hypot(dec) < NEAR_SIGMAS
+        let left = (0..self.rows.len()).filter(|row| !aside.contains(row));
+        let sights = self.sights(|row| !aside.contains(&row));
+        let all = fit(latitude, self.prior, &sights);
+        let estimate = Estimate::from(&all);
+        let is_near = |sight: &Sight, residual: &Option<Residual>| {
+            let residual = residual.as_ref()?;
+            let squared = estimate.squared_without(latitude, sight, residual)?;
+            Some(squared < NEAR_SQUARED)
         };
-        left.into_iter()
-            .zip(sights.iter().zip(&residuals))
-            .filter(|(_, (sight, residual))| {
-                residual
-                    .as_ref()
-                    .is_none_or(|residual| !is_near(sight, residual))
-            })
+        left.zip(sights.iter().zip(&all.residuals))
+            .filter(|(_, (sight, residual))| is_near(sight, residual) != Some(true))
             .map(|(row, _)| row)
             .collect()
     }
