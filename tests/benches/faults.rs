@@ -67,7 +67,9 @@ fn main() -> ExitCode {
     println!(
         "{alarms} of {in_sets} sound readings of sets suspected; {set_right} of {set_spoilt} sets explained"
     );
-    let good = suspected * 500 <= sound && right * 10 >= spoilt * 9;
+    let rarely = suspected * 500 <= sound && alarms * 500 <= in_sets;
+    let mostly = right * 10 >= spoilt * 9 && set_right * 10 >= set_spoilt * 9;
+    let good = rarely && mostly;
     if good {
         ExitCode::SUCCESS
     } else {
