@@ -9,6 +9,8 @@
 //! A mark right across reads the opposite of it, and the mean of two opposite verniers is free of it (common practice, no
 //! source). A ring that rides with the clock drive turns under its index, so nothing of this belongs to its axis angle.
 
+use serde::{Deserialize, Serialize};
+
 use nalgebra::SMatrix;
 
 use crate::angle::Angle;
@@ -87,7 +89,7 @@ impl Eccentricity {
 }
 
 /// Which circles were read at two opposite marks or verniers, and the mean taken.
-#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Serialize, Deserialize)]
 pub struct OppositeVerniers {
     /// The hour circle.
     pub hour: bool,

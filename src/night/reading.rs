@@ -65,12 +65,9 @@ pub struct StarReading {
     /// The star was timed as it crossed the middle, with the circle set on a mark.
     #[serde(default)]
     pub timed: bool,
-    /// Both opposite verniers of the hour circle were read, and their mean taken.
+    /// The circles of which both opposite verniers were read, and their mean taken.
     #[serde(default)]
-    pub hour_opposite: bool,
-    /// The same of the declination circle.
-    #[serde(default)]
-    pub dec_opposite: bool,
+    pub opposite: OppositeVerniers,
     /// What was typed at first and what it was then taken for, where the reading was doubted.
     #[serde(default)]
     pub doubted: String,
@@ -102,8 +99,7 @@ impl StarReading {
             dec_sigma_deg: sight.sigma_dec.degrees(),
             driven: false,
             timed: false,
-            hour_opposite: sight.opposite.hour,
-            dec_opposite: sight.opposite.dec,
+            opposite: sight.opposite,
             doubted: String::new(),
             off_arcmin: None,
             used: true,
@@ -140,10 +136,7 @@ impl StarReading {
             dec: axes(&self.dec_candidates_deg),
             sigma_hour: Angle::from_degrees(self.hour_sigma_deg),
             sigma_dec: Angle::from_degrees(self.dec_sigma_deg),
-            opposite: OppositeVerniers {
-                hour: self.hour_opposite,
-                dec: self.dec_opposite,
-            },
+            opposite: self.opposite,
         }
     }
 }
@@ -194,8 +187,7 @@ mod tests {
             dec_sigma_deg: 0.15,
             driven: false,
             timed: false,
-            hour_opposite: false,
-            dec_opposite: false,
+            opposite: OppositeVerniers::default(),
             doubted: String::new(),
             off_arcmin: None,
             used: true,

@@ -124,7 +124,7 @@ pub fn reaches(site: &Site<'_>, moment: &Moment, span_s: f64, source: &Source) -
             end: End::Asked,
         }));
     }
-    found.sort_by(|a, b| a.from.chrono().cmp(&b.from.chrono()));
+    found.sort_by_key(|reach| reach.from.chrono());
     found
 }
 
@@ -207,12 +207,12 @@ mod tests {
         Moment::new(&observer, Utc::parse("2026-12-01T18:00:00Z").unwrap())
     }
 
-    fn span(from_hours: f64, to_hours: f64) -> Option<HourAngleSpan> {
+    fn span(from_hours: f64, to_hours: f64) -> HourAngleSpan {
         let at = |hours| HourAngle::new(Angle::from_hours(hours));
-        Some(HourAngleSpan {
+        HourAngleSpan {
             from: at(from_hours),
             to: at(to_hours),
-        })
+        }
     }
 
     fn of(mount: &Mount, latitude: f64, name: &str) -> (Moment, Source, Vec<Reach>) {
@@ -236,8 +236,8 @@ mod tests {
     fn a_side_ends_where_its_limit_is_reached() {
         let limits = Limits {
             lowest_altitude: Some(Altitude::from_degrees(12.0)),
-            tube_west: span(-7.0, 0.5),
-            tube_east: span(-0.5, 7.0),
+            tube_west: Some(span(-7.0, 0.5)),
+            tube_east: Some(span(-0.5, 7.0)),
         };
         for (latitude, name) in [(54.5, "M 31"), (-31.4, "Achernar")] {
             let (moment, source, found) = of(&mount(Kind::German, limits), latitude, name);

@@ -96,6 +96,9 @@ const PACE_S: f64 = 300.0;
 /// As far ahead as a night goes.
 const NIGHT_S: f64 = 12.0 * 3600.0;
 
+/// How high an object stands, and when it can be had.
+type Standing = (Altitude, Vec<Reach>);
+
 /// What there is to expect of every object of the list, in its order: nothing of a name no catalogue knows. Of the sides
 /// an object can be had from, that is named which keeps the turns over the pier few.
 #[must_use]
@@ -108,7 +111,7 @@ pub fn ahead(from: &From<'_>) -> Vec<Option<Ahead>> {
     };
     let current = state.current.unwrap_or_default();
     let mut wait = 0.0;
-    let entries: Vec<(Option<(Altitude, Vec<Reach>)>, Vec<Side>)> = state
+    let entries: Vec<(Option<Standing>, Vec<Side>)> = state
         .targets
         .iter()
         .enumerate()

@@ -1,6 +1,6 @@
 //! Events of every kind, by hand and by chance. The site and its readings are invented.
 
-use nonius::metal::Side;
+use nonius::metal::{OppositeVerniers, Side};
 use nonius::night::{
     Circle, EarlierNight, Event, ListedPlace, ListedTarget, Opening, Setting, ShownAxes,
     StarReading, StartedFrom,
@@ -82,8 +82,7 @@ pub fn reading(star: &str, hour_angle_deg: f64, driven: bool) -> StarReading {
         dec_sigma_deg: 0.15,
         driven,
         timed: false,
-        hour_opposite: false,
-        dec_opposite: false,
+        opposite: OppositeVerniers::default(),
         doubted: String::new(),
         off_arcmin: Some(7.0),
         used: true,

@@ -489,7 +489,7 @@ fn two_opposite_verniers_are_typed_with_a_stroke_between_them() {
     assert!(picture.says("read: Capella"), "{}", picture.text());
     let (session, _) = scene.session();
     let read = &session.night().state().readings[0].reading;
-    assert!(read.hour_opposite && !read.dec_opposite);
+    assert!(read.opposite.hour && !read.opposite.dec);
     // two looks of 10 s
     assert!((read.hour_sigma_deg * 240.0 - 10.0 / 2.0_f64.sqrt()).abs() < 1e-6);
 }
