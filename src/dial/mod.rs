@@ -20,6 +20,7 @@ pub mod neighbour;
 pub mod next_star;
 mod outlook;
 pub mod residual_plot;
+pub mod ring;
 pub mod setting;
 pub mod setup;
 pub mod sighting;

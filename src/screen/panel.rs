@@ -53,6 +53,8 @@ pub struct Centred {
     pub at: Option<Utc>,
     /// It was timed across the middle, with the hour circle set on a mark.
     pub timed: bool,
+    /// The rings that slip are turned to what the screen told.
+    pub rings_set: bool,
 }
 
 /// What a doubted reading may be taken for.

@@ -7,6 +7,7 @@ use std::rc::Rc;
 use crate::catalog::{Filter, Target};
 use crate::dial::bright::Placed;
 use crate::dial::neighbour::{self, Neighbour};
+use crate::dial::ring::RingSetting;
 use crate::dial::{self, CautionCode, Dial, NotDialled, Setup, TubePlace};
 use crate::metal::{self, Side, SideRequest};
 use crate::night::{Known, Night, Setting, State};
@@ -68,6 +69,8 @@ pub struct Shown {
     pub matches: Vec<Target>,
     /// The circles as typed.
     pub reading: Option<TypedReading>,
+    /// While a star is centred: what to turn rings to that are set by hand.
+    pub rings: RingSetting,
     /// On the demonstration, what the circles of the pretended mount show with the star centred.
     pub pretended: Option<(String, String)>,
 }
@@ -155,6 +158,7 @@ impl From<'_> {
                 _ => Vec::new(),
             },
             reading: self.reading(),
+            rings: self.rings(),
             pretended: self.pretended(),
             target,
         }
@@ -296,6 +300,16 @@ impl From<'_> {
     pub fn centred_moment(&self) -> Option<Moment> {
         let at = self.panel.star.as_ref()?.at?;
         Some(self.moment.later(at.seconds_since(self.moment.utc())))
+    }
+
+    fn rings(&self) -> RingSetting {
+        let Some(star) = &self.panel.star else {
+            return RingSetting::default();
+        };
+        let setup = self.setup(false);
+        let side = self.reading_side(self.moment, &star.star);
+        side.and_then(|side| RingSetting::on(&setup, self.moment, &star.star.source, side).ok())
+            .unwrap_or_default()
     }
 
     fn pretended(&self) -> Option<(String, String)> {

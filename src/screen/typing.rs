@@ -1,6 +1,7 @@
 //! What keys do while something is typed or chosen, and what becomes of it when it is taken.
 
 use crate::catalog::Target;
+use crate::metal::Ring;
 use crate::night::{Circle, Event, ListedTarget, StarReading};
 use crate::screen::doubt;
 use crate::screen::keys::{Act, Mode};
@@ -36,6 +37,7 @@ fn cancelled(panel: &mut Panel) {
             panel.star = Some(Centred {
                 at: None,
                 timed: false,
+                rings_set: false,
                 ..star
             });
         }
@@ -54,6 +56,7 @@ fn accepted(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
                     found: false,
                     at: None,
                     timed: false,
+                    rings_set: false,
                 });
             } else {
                 panel.say("no such star is well placed now");
@@ -168,6 +171,9 @@ fn read(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
     let Some(star) = panel.star.clone() else {
         return Vec::new();
     };
+    if star.rings_set {
+        return rings_set(panel, scene, &star, whole.reading);
+    }
     let choices = doubt::choices(scene, &star, &whole);
     if !choices.is_empty() {
         // what was typed stays, for a look at it and for coming back
@@ -179,6 +185,24 @@ fn read(panel: &mut Panel, scene: &Scene<'_>) -> Vec<Doing> {
     let said = format!("read: {}", star.star.name);
     let event = reading_event(scene, &star, whole.reading);
     event.map_or_else(Vec::new, |event| record(event, said, Mode::Stepping))
+}
+
+/// The rings that slip have new zeros, and this is the first reading under them.
+fn rings_set(panel: &Panel, scene: &Scene<'_>, star: &Centred, reading: StarReading) -> Vec<Doing> {
+    let mount = &scene.from.observatory.mount;
+    let slips = [
+        (Circle::Hour, mount.hour_circle.ring != Ring::Fixed),
+        (Circle::Declination, mount.declination_circle.slips),
+    ];
+    let said = format!("rings set on {}", star.star.name);
+    let mut doings = Vec::new();
+    for (circle, _) in slips.into_iter().filter(|(_, slips)| *slips) {
+        let reading = None;
+        doings.extend(record(Event::RingSet { circle, reading }, "", panel.mode));
+    }
+    let event = Event::StarRead(Box::new(reading));
+    doings.extend(record(event, said, Mode::Stepping));
+    doings
 }
 
 /// The act of reading a star, or of finding the object read.

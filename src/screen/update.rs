@@ -103,102 +103,90 @@ pub(super) fn record(event: Event, said: impl Into<String>, then: Mode) -> Vec<D
 
 /// A key struck while stepping, or while centring a star.
 fn acted(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
-    let night = scene.from.night;
+    if let Some(doings) = recorded(panel, scene, act) {
+        return doings;
+    }
     let mode = panel.mode;
-    let record_or_say = |panel: &mut Panel, event: Option<Event>, said: &str, why_not: &str| {
-        if let Some(event) = event {
-            record(event, said, mode)
-        } else {
-            panel.say(why_not);
-            Vec::new()
-        }
-    };
     match act {
-        Act::Next => record_or_say(panel, night.next(), "", "this is the end of the list"),
-        Act::Back => record_or_say(panel, night.back(), "", "this is the head of the list"),
-        Act::Found if was_found(night) => {
-            panel.say("found already: u takes it back, r reads the circles on it");
-            Vec::new()
-        }
-        Act::Found if scene.shown.is_not_up() => {
-            panel.say("it is not up: what is in the eyepiece is something else");
-            Vec::new()
-        }
-        Act::Found => {
-            let event = night.found(scene.shown.setting(), None);
-            let said = format!("found: {}", current(night));
-            record_or_say(panel, event, &said, NO_OBJECT)
-        }
-        Act::Missed => {
-            let event = night.missed(scene.shown.setting());
-            let said = format!("missed: {}", current(night));
-            record_or_say(panel, event, &said, NO_OBJECT)
-        }
-        Act::Read => {
-            read_here(panel, scene, false);
-            Vec::new()
-        }
-        Act::Undo => record_or_say(panel, night.undo(), "", "there is nothing to take back"),
-        Act::Side => side(panel, scene),
+        Act::Read => read_here(panel, scene, false),
+        Act::Timed => timed(panel, scene),
+        Act::Accept => centred(panel, scene.utc, false),
         Act::Light => {
             panel.light = panel.light.next();
             panel.say(format!("light: {}", panel.light.word()));
-            Vec::new()
         }
         Act::Help => {
             panel.help_from = mode;
             panel.help_page = 0;
             panel.mode = Mode::Help;
-            Vec::new()
         }
-        Act::Leave => vec![Doing::Leave],
-        Act::Sun => {
-            if let Settings::Stopped {
+        Act::Leave => return vec![Doing::Leave],
+        Act::Sun => match scene.shown.settings {
+            Settings::Stopped {
                 answerable: true, ..
-            } = scene.shown.settings
-            {
-                panel.enter(Mode::SunRisk);
-            } else {
-                panel.say("nothing is withheld here");
-            }
-            Vec::new()
-        }
-        Act::Accept => {
-            centred(panel, scene.utc, false);
-            Vec::new()
-        }
-        Act::Timed if !scene.from.observatory.mount.hour_circle.stands_still() => {
-            panel.say("a ring that rides with the drive shows the same mark all along: press r");
-            Vec::new()
-        }
-        Act::Timed if mode == Mode::Centring => {
-            centred(panel, scene.utc, true);
-            Vec::new()
-        }
-        Act::Timed => {
-            read_here(panel, scene, true);
-            Vec::new()
-        }
+            } => panel.enter(Mode::SunRisk),
+            _ => panel.say("nothing is withheld here"),
+        },
         Act::Cancel => {
             panel.enter(Mode::ChoosingStar);
             panel.star = None;
-            Vec::new()
         }
-        Act::Star => entered(panel, Mode::ChoosingStar),
-        Act::Calibration => entered(panel, Mode::Calibration),
-        Act::Sweep => {
-            sweeping::begin(panel, scene);
-            Vec::new()
+        Act::Star => panel.enter(Mode::ChoosingStar),
+        Act::Calibration => panel.enter(Mode::Calibration),
+        Act::Sweep => sweeping::begin(panel, scene),
+        Act::Objects => objects::open(panel, scene.from.night.state()),
+        Act::Search => panel.enter(Mode::Searching),
+        Act::Note => panel.enter(Mode::Noting),
+        Act::Clock => panel.enter(Mode::Clock),
+        Act::Ring if mode == Mode::Centring => set_rings(panel, scene),
+        Act::Ring => panel.enter(Mode::Ring),
+        _ => {}
+    }
+    Vec::new()
+}
+
+/// What a key that changes the record comes to; nothing for one that does not.
+fn recorded(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Option<Vec<Doing>> {
+    let night = scene.from.night;
+    let setting = || scene.shown.setting();
+    let (event, said, why_not) = match act {
+        Act::Next => (night.next(), String::new(), "this is the end of the list"),
+        Act::Back => (night.back(), String::new(), "this is the head of the list"),
+        Act::Found if was_found(night) => {
+            let why_not = "found already: u takes it back, r reads the circles on it";
+            (None, String::new(), why_not)
         }
-        Act::Objects => {
-            objects::open(panel, night.state());
-            Vec::new()
+        Act::Found if scene.shown.is_not_up() => {
+            let why_not = "it is not up: what is in the eyepiece is something else";
+            (None, String::new(), why_not)
         }
-        Act::Search => entered(panel, Mode::Searching),
-        Act::Note => entered(panel, Mode::Noting),
-        Act::Clock => entered(panel, Mode::Clock),
-        Act::Ring => entered(panel, Mode::Ring),
-        _ => Vec::new(),
+        Act::Found => {
+            let said = format!("found: {}", current(night));
+            (night.found(setting(), None), said, NO_OBJECT)
+        }
+        Act::Missed => {
+            let said = format!("missed: {}", current(night));
+            (night.missed(setting()), said, NO_OBJECT)
+        }
+        Act::Undo => (night.undo(), String::new(), "there is nothing to take back"),
+        Act::Side => return Some(side(panel, scene)),
+        _ => return None,
+    };
+    let Some(event) = event else {
+        panel.say(why_not);
+        return Some(Vec::new());
+    };
+    Some(record(event, said, panel.mode))
+}
+
+/// The star or the object drifts across the middle, with the hour circle set on a mark.
+fn timed(panel: &mut Panel, scene: &Scene<'_>) {
+    if !scene.from.observatory.mount.hour_circle.stands_still() {
+        panel.say("a ring that rides with the drive shows the same mark all along: press r");
+    } else if panel.mode == Mode::Centring {
+        centred(panel, scene.utc, true);
+    } else {
+        read_here(panel, scene, true);
     }
 }
 
@@ -255,6 +243,24 @@ fn centred(panel: &mut Panel, utc: Utc, timed: bool) {
     }
 }
 
+/// The star stands in the middle at this moment, and the rings that slip are turned to what was told: that is what they
+/// show, and only a circle that is fixed is left to be read.
+fn set_rings(panel: &mut Panel, scene: &Scene<'_>) {
+    let told = &scene.shown.rings;
+    if told.in_words().is_none() {
+        panel.say("the circles of this mount are fixed: strike enter, and read them");
+        return;
+    }
+    centred(panel, scene.utc, false);
+    if let Some(star) = &mut panel.star {
+        star.rings_set = true;
+    }
+    panel.typed.paste(told.hour.as_deref().unwrap_or_default());
+    panel.typed.at_second = true;
+    panel.typed.paste(told.dec.as_deref().unwrap_or_default());
+    panel.typed.at_second = told.hour.is_some();
+}
+
 /// The object being dialled stands in the middle at this moment.
 fn read_here(panel: &mut Panel, scene: &Scene<'_>, timed: bool) {
     match &scene.shown.target {
@@ -264,6 +270,7 @@ fn read_here(panel: &mut Panel, scene: &Scene<'_>, timed: bool) {
                 found: true,
                 at: None,
                 timed,
+                rings_set: false,
             });
             centred(panel, scene.utc, timed);
         }

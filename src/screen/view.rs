@@ -154,6 +154,7 @@ fn draw_settings(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, s
     }
     let lines = [
         from.panel.sweep.words(),
+        rings(from, shown, usize::from(body.width)),
         pretended(shown, usize::from(body.width)),
     ];
     for words in lines.iter().flatten() {
@@ -168,6 +169,19 @@ fn draw_settings(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, s
     let neighbour = neighbour(shown, usize::from(body.width));
     let after = [neighbour.as_deref().unwrap_or_default(), note];
     truth::draw_cautions(look, buffer, cautions, dial, after);
+}
+
+/// What to turn rings to that are set by hand, while a star is centred.
+fn rings(from: &From<'_>, shown: &Shown, width: usize) -> Option<String> {
+    if from.panel.mode != Mode::Centring {
+        return None;
+    }
+    let rings = shown.rings.in_words()?;
+    let wordings = [
+        format!("or turn {rings}, and strike z with it in the middle"),
+        format!("or turn {rings}: z"),
+    ];
+    Some(fitting(&wordings, width).to_owned())
 }
 
 /// Where to start from while the mount is barely known.

@@ -12,6 +12,8 @@
 
 #[path = "../nights/chance.rs"]
 mod chance;
+#[path = "../nights/circles.rs"]
+mod circles;
 #[path = "../nights/night.rs"]
 mod night;
 #[path = "../nights/sky.rs"]
@@ -103,6 +105,14 @@ fn report(figures: &Figures) -> bool {
         print!("  {count}: {:.0} %", fed.percent());
     }
     println!();
+    println!("circles as built, stars chosen:           one  three    six  perfect knowledge");
+    for (kind, rates) in circles::Circles::kinds().iter().zip(&figures.circles) {
+        let [one, three, six, perfect] = rates.map(tally::Rate::percent);
+        println!(
+            "  {:<38}{one:>4.0} %  {three:>3.0} %  {six:>3.0} %  {perfect:>3.0} %",
+            kind.name
+        );
+    }
     println!("stated    came true    looks");
     for (stated, came, looks) in figures.stated.tenths() {
         let holds = looks < ENOUGH_LOOKS || (stated - came).abs() <= STATED_POINTS;

@@ -8,6 +8,7 @@
 )]
 
 mod chance;
+mod circles;
 mod night;
 mod sky;
 mod tally;
@@ -45,6 +46,14 @@ fn a_few_nights_come_out_as_many_do() {
     assert!(figures.one_wrong < 1.5, "{}", figures.one_wrong);
     assert!(figures.count == NIGHTS && figures.index_only.percent() < 60.0);
     assert!((figures.fed[FED].percent() - 97.0).abs() < chance_points(figures.fed[FED]));
+    // finer circles find more, at every stage
+    let [small, large, observatory] = figures.circles;
+    let finest = circles::Circles::kinds()[2].name;
+    assert!(observatory[2].percent() > 95.0, "{finest}: {observatory:?}");
+    for stage in 1..4 {
+        assert!(observatory[stage].percent() > large[stage].percent());
+        assert!(large[stage].percent() > small[stage].percent());
+    }
     for (stated, came, looks) in figures.stated.tenths() {
         // the looks of a night hang together: taken for a tenth as many
         let sigma = 100.0 * (0.25 / (f64::from(looks) / 10.0)).sqrt();

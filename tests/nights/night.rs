@@ -6,6 +6,7 @@ use nonius::metal::errors::COUNT;
 use nonius::metal::{ExpectedErrors, Side, to_axes_with_slopes};
 
 use crate::chance::Chance;
+use crate::circles::Circles;
 use crate::sky::{Hand, Place, Sky};
 use crate::tally::{Rate, Stated, median};
 
@@ -32,6 +33,9 @@ pub struct Figures {
     pub timed: [Rate; 3],
     /// With every error of the mount known.
     pub perfect: Rate,
+    /// With each kind of circles, read, rounded, typed and set as an observer does: after one, three and six stars chosen
+    /// for the list, and with every error known.
+    pub circles: [[Rate; 4]; 3],
     /// After so many objects found, at the first look or by a sweep, and read, beside three stars chosen.
     pub fed: [Rate; FED + 1],
     /// What was stated at any of the stages with random stars.
@@ -117,6 +121,9 @@ fn one(figures: &mut Figures, chance: &mut Chance) {
         Hand::ON_THE_MARK,
     );
     fed(&mut figures.fed, chance, &sky, &three[..3]);
+    for (rates, circles) in figures.circles.iter_mut().zip(Circles::kinds()) {
+        with_circles(rates, chance, &sky, &objects, &circles);
+    }
     figures.squares += against_bound(&sky, &stars, &known(&sky, &sights));
     one_wrong(&mut figures.wrong, chance, &sky, &sights, &objects);
 }
@@ -176,6 +183,41 @@ fn chosen(
         }
     }
     sights
+}
+
+/// The same with circles as they are built.
+fn with_circles(
+    rates: &mut [Rate; 4],
+    chance: &mut Chance,
+    sky: &Sky,
+    objects: &[Place],
+    circles: &Circles,
+) {
+    let hand = circles.hand();
+    let mut candidates: Vec<Place> = (0..CANDIDATES).map(|_| sky.place(chance)).collect();
+    let demands: Vec<Station> = objects.iter().map(|object| station(object, hand)).collect();
+    let mut sights = Vec::new();
+    let look = |rate: &mut Rate, chance: &mut Chance, estimate: &Estimate| {
+        for object in objects {
+            let told = sky.told(estimate, object).axes;
+            rate.count(sky.shows(circles.set(chance, told, object), object));
+        }
+    };
+    for stars in 1..=STAGES[2] {
+        let estimate = known(sky, &sights);
+        let wanted = Wanted::new(&estimate, sky.latitude, &demands);
+        let offered: Vec<Offered> = candidates
+            .iter()
+            .filter_map(|place| Offered::new(&estimate, sky.latitude, &station(place, hand)))
+            .collect();
+        let star = candidates.remove(wanted.ranked(&offered)[0].0);
+        sights.push(circles.read(sky, chance, &star));
+        if let Some(stage) = STAGES.iter().position(|stage| *stage == stars) {
+            look(&mut rates[stage], chance, &known(sky, &sights));
+        }
+    }
+    let perfect = Estimate::new(sky.errors, Covariance::zeros());
+    look(&mut rates[STAGES.len()], chance, &perfect);
 }
 
 /// Some stars, then every object is read too, found at the first look or by a sweep.

@@ -133,6 +133,11 @@ impl Sky {
             hour: missed_by(chance, told.hour, hand.hour),
             dec: missed_by(chance, told.dec, hand.dec),
         };
+        self.shows(set, place)
+    }
+
+    /// True if the object is in the field with the circles standing so.
+    pub fn shows(&self, set: Axes, place: &Place) -> bool {
         let (hour_angle, declination) = to_sky(set, self.latitude, &self.errors);
         let off = separation(
             (hour_angle.angle(), declination),

@@ -493,3 +493,23 @@ fn two_opposite_verniers_are_typed_with_a_stroke_between_them() {
     // two looks of 10 s
     assert!((read.hour_sigma_deg * 240.0 - 10.0 / 2.0_f64.sqrt()).abs() < 1e-6);
 }
+
+#[test]
+fn rings_that_slip_are_set_on_a_star_by_one_key() {
+    let mut scene = Scene::at(EVENING, 80, 24);
+    scene.observatory.mount.hour_circle.ring = nonius::metal::Ring::Slips;
+    scene.observatory.mount.declination_circle.slips = true;
+    // no pretended mount: the rings stand as the observer has set them
+    scene.observatory.demonstration = None;
+    let picture = scene.play("s capella <enter>");
+    assert!(picture.says("or turn the rings to"), "{}", picture.text());
+    let picture = scene.play("s capella <enter> z <enter>");
+    assert!(picture.says("rings set on Capella"), "{}", picture.text());
+    let (session, _) = scene.session();
+    let state = session.night().state();
+    assert_eq!((state.zeros.hour, state.zeros.dec), (1, 1));
+    assert_eq!(state.readings_in_use().count(), 1);
+    drop(session);
+    let picture = scene.play("<space>");
+    assert!(picture.says("known to"), "{}", picture.text());
+}

@@ -8,7 +8,9 @@ use crate::command::calibrate::{in_question, terms};
 use crate::command::readings::Readings;
 use crate::command::station::Station;
 use crate::dial::doubt::Suspected;
+use crate::dial::next_star::NextStar;
 use crate::estimate::{Fit, Residual};
+use crate::metal::Side;
 
 /// What `calibrate --json` prints.
 #[derive(Debug, Serialize)]
@@ -22,7 +24,15 @@ pub struct Report<'a> {
     residuals: Vec<ResidualRow<'a>>,
     spread_arcmin: f64,
     suspicions: Vec<SuspicionRow>,
-    next_star: Option<()>,
+    next_star: Option<NextStarRow<'a>>,
+}
+
+#[derive(Debug, Serialize)]
+struct NextStarRow<'a> {
+    star: &'a str,
+    side: Side,
+    /// By how much the mean chance of a first look grows, 0 to 1.
+    gain: f64,
 }
 
 #[derive(Debug, Serialize)]
@@ -49,6 +59,7 @@ impl<'a> Report<'a> {
         readings: &'a Readings,
         fit: &Fit,
         suspected: &[Suspected],
+        next: Option<&'a NextStar>,
     ) -> Self {
         let minutes = |radians: f64| Angle::from_radians(radians).arcminutes();
         let residuals =
@@ -87,7 +98,11 @@ impl<'a> Report<'a> {
             residuals: residuals.collect(),
             spread_arcmin: fit.spread.arcminutes(),
             suspicions: SuspicionRow::all(suspected),
-            next_star: None,
+            next_star: next.map(|next| NextStarRow {
+                star: &next.placed.star.name,
+                side: next.placed.side,
+                gain: next.gain(),
+            }),
         }
     }
 }

@@ -2,6 +2,7 @@
 
 mod advice;
 mod json;
+mod next;
 mod picture;
 mod suspicions;
 mod table;
@@ -31,14 +32,18 @@ pub fn run(args: &CalibrateArgs, common: &Common, out: &mut dyn Write) -> anyhow
     let readings = readings::load(&args.file, &station)?;
     let fit = readings.fit(&station);
     let suspected = suspicions::of(&readings, &station);
+    let next = next::star(&station, common, &readings, &fit)?;
     if common.json {
-        let report = json::Report::new(&station, &readings, &fit, &suspected);
+        let report = json::Report::new(&station, &readings, &fit, &suspected, next.as_ref());
         serde_json::to_writer(&mut *out, &report)?;
         return Ok(writeln!(out)?);
     }
     table::write(&station, &readings, &fit, out)?;
     suspicions::paragraphs(&readings, &suspected, out)?;
     picture::draw(&readings, &fit, out)?;
+    if let Some(next) = &next {
+        next::write(next, out)?;
+    }
     advice::write(&station, &readings, &fit, out)
 }
 

@@ -174,8 +174,8 @@ pub(super) const KEYS: &[Key] = &[
     key(
         &[Char('z')],
         ("z", "zero"),
-        "a circle slipped, or was set by hand",
-        STEPPING,
+        "a circle slipped; on a star: the rings are set",
+        &[Mode::Stepping, Mode::Centring],
         Act::Ring,
         None,
     ),
