@@ -10,7 +10,7 @@ use crate::dial::setup::Setup;
 use crate::estimate::{Covariance, Offered, Wanted};
 use crate::metal::Side;
 use crate::sexagesimal::Notation;
-use crate::sky::{Moment, separation};
+use crate::sky::{Moment, Source, separation};
 
 /// A star farther from the target than this is no neighbour.
 const FARTHEST: Angle = Angle::from_degrees(15.0);
@@ -64,6 +64,7 @@ pub fn neighbour(
     let target = station((at.hour_angle, at.declination), dial.side, hour, dec);
     let wanted = Wanted::new(setup.estimate, latitude, &[target]);
     let field = field_looked_into(setup.mount);
+    let stars = &about(dial, stars);
     let near: Vec<Placed> = bright::well_placed(setup, moment, stars)
         .into_iter()
         .filter(|placed| placed.side == dial.side && placed.star.name != dial.target)
@@ -110,6 +111,24 @@ pub fn neighbour(
         dec: by_dec,
         by_neighbour,
     })
+}
+
+/// The stars in that region, with room for their rivals, by their catalogue places: what a few decades of precession make
+/// of them is far less than the room.
+fn about(dial: &Dial, stars: &[Target]) -> Vec<Target> {
+    const ROOM: Angle = Angle::from_degrees(8.0);
+    let target = (
+        dial.of_date.right_ascension.angle(),
+        dial.of_date.declination,
+    );
+    let is_near = |star: &&Target| match &star.source {
+        Source::Catalogue(place) => {
+            let star = (place.right_ascension.angle(), place.declination);
+            separation(star, target) < FARTHEST + ROOM
+        }
+        Source::Body(_) => false,
+    };
+    stars.iter().filter(is_near).cloned().collect()
 }
 
 /// The turns in the circles' own units, as finely as they can be set. With the tube east a growing declination axis angle
