@@ -10,6 +10,7 @@ mod coordinates;
 mod dial;
 mod eccentric;
 mod faults;
+mod learnt;
 mod mark;
 mod misread;
 mod page;

@@ -513,3 +513,42 @@ fn rings_that_slip_are_set_on_a_star_by_one_key() {
     let picture = scene.play("<space>");
     assert!(picture.says("known to"), "{}", picture.text());
 }
+
+#[test]
+fn what_the_night_before_taught_is_taken_as_it_stood_or_moved_and_dropped_again() {
+    let before = Scene::at(EVENING, 80, 24);
+    for star in ["capella", "deneb", "aldebaran"] {
+        before.play(&reading_of(&before, star));
+    }
+    let (session, _) = before.session();
+    let known = nonius::night::Known::of(&before.observatory.grounds(), session.night().state());
+    drop(session);
+    let mut scene = Scene::at(EVENING, 80, 24);
+    let taught = nonius::night::EarlierNight::of("2026-11-30", &known.estimate);
+    scene.observatory.earlier_night = Some(taught);
+    assert!(scene.play("c").says("e starts from there"));
+    let picture = scene.play("c e");
+    assert!(picture.says("as it stood"), "{}", picture.text());
+    // no star of tonight, and known by that night but for the allowance
+    assert!(known_arcmin(&scene.play("<space>")) < 60.0);
+    let picture = scene.play("c e <esc>");
+    assert!(picture.says("no star read"), "{}", picture.text());
+    let picture = scene.play("c e");
+    assert!(picture.says("the mount file alone"), "{}", picture.text());
+    let picture = scene.play("u u u u c");
+    assert!(picture.says("e starts from there"), "{}", picture.text());
+}
+
+#[test]
+fn an_axis_that_was_turned_is_unsure_again() {
+    let scene = Scene::at(EVENING, 80, 24);
+    for star in ["capella", "deneb", "aldebaran"] {
+        scene.play(&reading_of(&scene, star));
+    }
+    let before = known_arcmin(&scene.play("<space>"));
+    let picture = scene.play("c a");
+    assert!(picture.says("60."), "{}", picture.text());
+    let after = known_arcmin(&scene.play("<esc>"));
+    assert!(after > 2.0 * before, "{before}' {after}'");
+    assert!((known_arcmin(&scene.play("u")) - before).abs() < 1.0);
+}

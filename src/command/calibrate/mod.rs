@@ -11,11 +11,13 @@ use std::io::Write;
 use std::path::PathBuf;
 
 use crate::angle::Angle;
+use crate::command::exit::Refused;
 use crate::command::options::Common;
 use crate::command::readings;
 use crate::command::station::Station;
 use crate::estimate::Fit;
 use crate::metal::errors::NAMES;
+use crate::night::journal;
 use clap::Args;
 
 /// Which file.
@@ -29,6 +31,14 @@ pub struct CalibrateArgs {
 /// Fits and prints.
 pub fn run(args: &CalibrateArgs, common: &Common, out: &mut dyn Write) -> anyhow::Result<()> {
     let station = Station::open(common)?;
+    if journal::read(&args.file).is_ok_and(|night| !night.events.is_empty()) {
+        let message = format!(
+            "{} is a night's journal, not a file of readings",
+            args.file.display()
+        );
+        let hint = "nonius dial TARGET --night FILE goes by it; the screen shows what it taught by the key c";
+        return Err(Refused::new(message, hint).into());
+    }
     let readings = readings::load(&args.file, &station)?;
     let fit = readings.fit(&station);
     let suspected = suspicions::of(&readings, &station);
