@@ -4,6 +4,7 @@
 mod bodies;
 mod chance;
 mod circles;
+mod dome;
 mod equinoxes;
 mod fit;
 mod meeus;
