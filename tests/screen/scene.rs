@@ -2,6 +2,7 @@
 //!
 //! The site and the mount are invented for these tests.
 
+use std::path::PathBuf;
 use std::time::{Duration, Instant};
 
 use crossterm::event::KeyCode;
@@ -123,6 +124,7 @@ pub fn observatory() -> Observatory {
 }
 
 /// The screen on a night of its own.
+#[derive(Debug)]
 pub struct Scene {
     pub observatory: Observatory,
     pub utc: Utc,
@@ -181,9 +183,14 @@ impl Scene {
         }
     }
 
+    /// The journal's file.
+    pub fn journal(&self) -> PathBuf {
+        self.folder.path().join("night.jsonl")
+    }
+
     /// Opens the night (goes on with it if it was opened before) and its record.
     pub fn session(&self) -> (Session, Begun) {
-        let path = self.folder.path().join("night.jsonl");
+        let path = self.journal();
         let started = Instant::now();
         loop {
             match Session::begin(&path, self.utc, self.opening()) {
