@@ -6,11 +6,11 @@
 
 use std::fmt::Write as _;
 
-use nonius::metal::{Side, to_axes};
+use nonius::metal::Side;
 use serde_json::Value;
 
 use crate::calibrate::{calibrated, errors};
-use crate::pretended::{NORTHERN, TARN_HOLLOW, TRUE, observed, pretended};
+use crate::pretended::{NORTHERN, TARN_HOLLOW, TRUE};
 use crate::program::{Home, number, text, wrapped};
 
 /// Sine and cosine part, in arcminutes: 10' altogether on each circle.
@@ -40,17 +40,7 @@ fn shown(centred: f64, (sine, cosine): (f64, f64)) -> f64 {
 
 /// What the axes of the mount show with a star in the middle, each circle under its two marks, in degrees.
 fn axes(utc: &str, star: &str, side: Side) -> ([f64; 2], [f64; 2]) {
-    let moment = TARN_HOLLOW.moment(utc);
-    let place = observed(&moment, star);
-    let latitude = moment.observer().latitude;
-    let axes = to_axes(
-        place.hour_angle,
-        place.declination,
-        latitude,
-        &pretended(),
-        side,
-    )
-    .unwrap();
+    let axes = TARN_HOLLOW.axes(utc, star, side);
     let both = |centred: f64, circle| [centred, centred + 180.0].map(|mark| shown(mark, circle));
     (
         both(axes.hour.degrees(), HOUR),

@@ -3,12 +3,12 @@
 
 use nonius::angle::Angle;
 use nonius::estimate::Sight;
-use nonius::metal::{OppositeVerniers, Side, to_axes};
+use nonius::metal::{OppositeVerniers, Side};
 use nonius::night::{Event, Opening, Session, StarReading, last_before};
 use nonius::time::Utc;
 use serde_json::{Value, json};
 
-use crate::pretended::{AS_ENGRAVED, NORTHERN, TARN_HOLLOW, observed, pretended, readings};
+use crate::pretended::{AS_ENGRAVED, NORTHERN, TARN_HOLLOW, observed, readings};
 use crate::program::{Home, number, text};
 
 fn opening() -> Opening {
@@ -32,15 +32,7 @@ fn opening() -> Opening {
 fn read(utc: &str, star: &str, side: Side) -> StarReading {
     let moment = TARN_HOLLOW.moment(utc);
     let place = observed(&moment, star);
-    let latitude = moment.observer().latitude;
-    let axes = to_axes(
-        place.hour_angle,
-        place.declination,
-        latitude,
-        &pretended(),
-        side,
-    )
-    .unwrap();
+    let axes = TARN_HOLLOW.axes(utc, star, side);
     let sight = Sight {
         hour_angle: place.hour_angle,
         declination: place.declination,
@@ -87,17 +79,7 @@ fn dial_goes_by_the_night_it_is_given() {
     let journal = night(&home, "night.jsonl");
     let sheet = home.json(&[&AT[..], &["dial", "M 37", "--night", &journal]].concat());
     let dial = &sheet["dials"][0];
-    let moment = TARN_HOLLOW.moment("2026-12-01T21:30:00Z");
-    let place = observed(&moment, "M 37");
-    let latitude = moment.observer().latitude;
-    let axes = to_axes(
-        place.hour_angle,
-        place.declination,
-        latitude,
-        &pretended(),
-        Side::TubeWest,
-    )
-    .unwrap();
+    let axes = TARN_HOLLOW.axes("2026-12-01T21:30:00Z", "M 37", Side::TubeWest);
     let off = |axis: &str, shown: f64| (number(dial, axis) - shown) * 60.0;
     let hour = off("/axes/hour_deg", axes.hour.degrees());
     let dec = off("/axes/dec_deg", axes.dec.degrees());

@@ -7,7 +7,7 @@ use std::fmt::Write as _;
 
 use nonius::angle::Angle;
 use nonius::catalog::Catalogue;
-use nonius::metal::{MountErrors, Side, to_axes};
+use nonius::metal::{Axes, MountErrors, Side, to_axes};
 use nonius::site::{Folders, Shelf, builtin};
 use nonius::sky::{Moment, Observed};
 use nonius::time::Utc;
@@ -103,20 +103,26 @@ impl Station {
         fine
     }
 
-    /// What the circles show, in degrees on their scales: 0-24 westward on a ring that stands still
-    /// and four quarters; or 0-24 eastward on a ring that rides with the drive, and signed.
-    fn shown(&self, utc: &str, star: &str, side: Side) -> (f64, f64) {
+    /// What the axes of the pretended mount show with a star in the middle.
+    pub fn axes(&self, utc: &str, star: &str, side: Side) -> Axes {
         let moment = self.moment(utc);
         let place = observed(&moment, star);
         let latitude = moment.observer().latitude;
-        let axes = to_axes(
+        to_axes(
             place.hour_angle,
             place.declination,
             latitude,
             &pretended(),
             side,
         )
-        .unwrap();
+        .unwrap()
+    }
+
+    /// What the circles show, in degrees on their scales: 0-24 westward on a ring that stands still
+    /// and four quarters; or 0-24 eastward on a ring that rides with the drive, and signed.
+    fn shown(&self, utc: &str, star: &str, side: Side) -> (f64, f64) {
+        let moment = self.moment(utc);
+        let axes = self.axes(utc, star, side);
         let (hour, dec) = (axes.hour.degrees(), axes.dec.degrees());
         let north = if dec.abs() > 90.0 {
             180.0_f64.copysign(dec) - dec

@@ -152,6 +152,34 @@ fn station(place: &Place, hand: Hand) -> Station {
     }
 }
 
+/// Stars to choose from, for the objects of the list.
+struct Choosing {
+    candidates: Vec<Place>,
+    demands: Vec<Station>,
+    hand: Hand,
+}
+
+impl Choosing {
+    fn new(chance: &mut Chance, sky: &Sky, objects: &[Place], hand: Hand) -> Self {
+        Self {
+            candidates: (0..CANDIDATES).map(|_| sky.place(chance)).collect(),
+            demands: objects.iter().map(|object| station(object, hand)).collect(),
+            hand,
+        }
+    }
+
+    /// The one that helps most, taken from the others.
+    fn next(&mut self, sky: &Sky, estimate: &Estimate) -> Place {
+        let wanted = Wanted::new(estimate, sky.latitude, &self.demands);
+        let offered: Vec<Offered> = self
+            .candidates
+            .iter()
+            .filter_map(|place| Offered::new(estimate, sky.latitude, &station(place, self.hand)))
+            .collect();
+        self.candidates.remove(wanted.ranked(&offered)[0].0)
+    }
+}
+
 /// Stars chosen one after another for the list, out of some candidates.
 fn chosen(
     rates: &mut [Rate; 3],
@@ -160,18 +188,10 @@ fn chosen(
     objects: &[Place],
     hand: Hand,
 ) -> Vec<Sight> {
-    let mut candidates: Vec<Place> = (0..CANDIDATES).map(|_| sky.place(chance)).collect();
-    let demands: Vec<Station> = objects.iter().map(|object| station(object, hand)).collect();
+    let mut night = Choosing::new(chance, sky, objects, hand);
     let mut sights = Vec::new();
     for stars in 1..=STAGES[2] {
-        let estimate = known(sky, &sights);
-        let wanted = Wanted::new(&estimate, sky.latitude, &demands);
-        let offered: Vec<Offered> = candidates
-            .iter()
-            .filter_map(|place| Offered::new(&estimate, sky.latitude, &station(place, hand)))
-            .collect();
-        let best = wanted.ranked(&offered)[0].0;
-        let star = candidates.remove(best);
+        let star = night.next(sky, &known(sky, &sights));
         sights.push(sky.read(chance, &star, hand));
         let Some(stage) = STAGES.iter().position(|stage| *stage == stars) else {
             continue;
@@ -194,8 +214,7 @@ fn with_circles(
     circles: &Circles,
 ) {
     let hand = circles.hand();
-    let mut candidates: Vec<Place> = (0..CANDIDATES).map(|_| sky.place(chance)).collect();
-    let demands: Vec<Station> = objects.iter().map(|object| station(object, hand)).collect();
+    let mut night = Choosing::new(chance, sky, objects, hand);
     let mut sights = Vec::new();
     let look = |rate: &mut Rate, chance: &mut Chance, estimate: &Estimate| {
         for object in objects {
@@ -204,13 +223,7 @@ fn with_circles(
         }
     };
     for stars in 1..=STAGES[2] {
-        let estimate = known(sky, &sights);
-        let wanted = Wanted::new(&estimate, sky.latitude, &demands);
-        let offered: Vec<Offered> = candidates
-            .iter()
-            .filter_map(|place| Offered::new(&estimate, sky.latitude, &station(place, hand)))
-            .collect();
-        let star = candidates.remove(wanted.ranked(&offered)[0].0);
+        let star = night.next(sky, &known(sky, &sights));
         sights.push(circles.read(sky, chance, &star));
         if let Some(stage) = STAGES.iter().position(|stage| *stage == stars) {
             look(&mut rates[stage], chance, &known(sky, &sights));

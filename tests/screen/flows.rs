@@ -35,6 +35,14 @@ fn reading_of(scene: &Scene, star: &str) -> String {
     format!("s {star} <enter> <enter> {hour} <enter> {dec} <enter>")
 }
 
+/// Reads three stars on either side of the pier.
+fn three_stars(scene: &Scene) -> Picture {
+    for star in ["capella", "deneb"] {
+        scene.play(&reading_of(scene, star));
+    }
+    scene.play(&reading_of(scene, "aldebaran"))
+}
+
 #[test]
 fn stepping_at_80_by_24_shows_all_there_is_to_know() {
     let scene = Scene::at(EVENING, 80, 24);
@@ -100,11 +108,7 @@ fn a_star_at_60_by_20_keeps_what_is_needed() {
 #[test]
 fn after_three_stars_the_objects_are_known_to_minutes() {
     let scene = Scene::at(EVENING, 80, 24);
-    let mut picture = scene.play("");
-    for star in ["capella", "deneb", "aldebaran"] {
-        picture = scene.play(&reading_of(&scene, star));
-    }
-    assert!(picture.says("read: Aldebaran"));
+    assert!(three_stars(&scene).says("read: Aldebaran"));
     // three stars read to half a vernier's count leave some minutes of arc
     assert!(known_arcmin(&scene.play("<space>")) < 30.0);
 }
@@ -116,9 +120,7 @@ fn a_slipped_ring_is_told_anew_by_one_star_and_nothing_else_is_lost() {
     let one = known_arcmin(&after_one.play("<space>"));
 
     let scene = Scene::at(EVENING, 80, 24);
-    for star in ["capella", "deneb", "aldebaran"] {
-        scene.play(&reading_of(&scene, star));
-    }
+    three_stars(&scene);
     let picture = scene.play("<space> z h <enter>");
     assert!(picture.says("no star read"), "{}", picture.text());
     scene.play(&reading_of(&scene, "capella"));
@@ -139,9 +141,7 @@ fn an_hour_more(shown: &str) -> String {
 #[test]
 fn a_misread_circle_is_doubted_and_put_right_by_one_key() {
     let scene = Scene::at(EVENING, 80, 24);
-    for star in ["capella", "deneb", "aldebaran"] {
-        scene.play(&reading_of(&scene, star));
-    }
+    three_stars(&scene);
     let (hour, dec) = circles_shown(&scene.play("s alpheratz <enter>"));
     let misread = an_hour_more(&hour);
     let typed = format!("s alpheratz <enter> <enter> {misread} <enter> {dec} <enter>");
@@ -162,9 +162,7 @@ fn a_misread_circle_is_doubted_and_put_right_by_one_key() {
 #[test]
 fn a_doubted_reading_can_be_kept_discarded_or_typed_again() {
     let scene = Scene::at(EVENING, 80, 24);
-    for star in ["capella", "deneb", "aldebaran"] {
-        scene.play(&reading_of(&scene, star));
-    }
+    three_stars(&scene);
     let (hour, dec) = circles_shown(&scene.play("s alpheratz <enter>"));
     let misread = an_hour_more(&hour);
     let typed = format!("s alpheratz <enter> <enter> {misread} <enter> {dec} <enter>");
@@ -190,9 +188,7 @@ fn a_doubted_reading_can_be_kept_discarded_or_typed_again() {
 #[test]
 fn a_ring_that_was_knocked_is_known_from_one_star() {
     let mut scene = Scene::at(EVENING, 80, 24);
-    for star in ["capella", "deneb", "aldebaran"] {
-        scene.play(&reading_of(&scene, star));
-    }
+    three_stars(&scene);
     let before = known_arcmin(&scene.play("<space>"));
     let mut errors = scene.observatory.demonstration.unwrap();
     errors.hour_index += nonius::angle::Angle::from_degrees(3.2);
@@ -446,9 +442,7 @@ fn a_star_timed_on_a_mark_is_known_better_than_one_looked_at() {
 #[test]
 fn the_calibration_view_shows_what_is_known_and_which_star_next() {
     let scene = Scene::at(EVENING, 80, 24);
-    for star in ["capella", "deneb", "aldebaran"] {
-        scene.play(&reading_of(&scene, star));
-    }
+    three_stars(&scene);
     insta::assert_snapshot!("the_mount_as_known", scene.play("<space> c").text());
     insta::assert_snapshot!("what_is_left_of_the_stars", scene.play("c p").text());
     let picture = scene.play("c <down> x");
@@ -517,9 +511,7 @@ fn rings_that_slip_are_set_on_a_star_by_one_key() {
 #[test]
 fn what_the_night_before_taught_is_taken_as_it_stood_or_moved_and_dropped_again() {
     let before = Scene::at(EVENING, 80, 24);
-    for star in ["capella", "deneb", "aldebaran"] {
-        before.play(&reading_of(&before, star));
-    }
+    three_stars(&before);
     let (session, _) = before.session();
     let known = nonius::night::Known::of(&before.observatory.grounds(), session.night().state());
     drop(session);
@@ -542,9 +534,7 @@ fn what_the_night_before_taught_is_taken_as_it_stood_or_moved_and_dropped_again(
 #[test]
 fn an_axis_that_was_turned_is_unsure_again() {
     let scene = Scene::at(EVENING, 80, 24);
-    for star in ["capella", "deneb", "aldebaran"] {
-        scene.play(&reading_of(&scene, star));
-    }
+    three_stars(&scene);
     let before = known_arcmin(&scene.play("<space>"));
     let picture = scene.play("c a");
     assert!(picture.says("60."), "{}", picture.text());
