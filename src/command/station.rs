@@ -5,6 +5,7 @@ use std::path::Path;
 
 use crate::angle::HourAngle;
 use crate::catalog::{Catalogue, Target};
+use crate::command::calibrate::suspicions;
 use crate::command::exit::Refused;
 use crate::command::options::Common;
 use crate::command::readings;
@@ -108,6 +109,10 @@ impl Station {
     fn calibrate(&mut self, file: &Path) -> anyhow::Result<()> {
         let readings = readings::load(file, self)?;
         let fit = readings.fit(self);
+        for suspected in suspicions::of(&readings, self) {
+            let words = suspicions::in_a_line(&readings, &suspected);
+            let _ = writeln!(io::stderr(), "warning: {words}");
+        }
         self.estimate = Estimate::from(&fit);
         self.tube = readings.tube(&fit);
         self.calibrated_at = readings.latest();

@@ -192,7 +192,11 @@ fn calibration_caution(setup: &Setup<'_>, moment: &Moment) -> Option<Caution> {
         };
         return Some(Caution::new(CautionCode::Uncalibrated, text));
     }
-    let hours = moment.utc().seconds_since(setup.calibrated_at?) / 3600.0;
+    let Some(read_at) = setup.calibrated_at else {
+        let text = "no star has been read tonight: these settings rest on an earlier night";
+        return Some(Caution::new(CautionCode::StaleCalibration, text));
+    };
+    let hours = moment.utc().seconds_since(read_at) / 3600.0;
     (hours.abs() > STALE_HOURS).then(|| {
         let text = format!(
             "the last star was read {:.0} h ago: read one again",

@@ -3,7 +3,7 @@
 use std::fmt::Write as _;
 
 use crate::calibrate::{calibrated, errors};
-use crate::pretended::{EXACTLY, NAMES, NORTHERN, TARN_HOLLOW, TRUE, readings};
+use crate::pretended::{AS_ENGRAVED, EXACTLY, NAMES, NORTHERN, TARN_HOLLOW, TRUE, readings};
 use crate::program::{Home, number};
 
 #[test]
@@ -86,4 +86,42 @@ fn the_mean_of_opposite_verniers_is_free_of_an_eccentric_circle() {
     let (with_both, with_one) = (worst(&eccentric(true)), worst(&eccentric(false)));
     assert!(with_both < 2.0, "{with_both}");
     assert!(with_one > 2.0 * with_both, "{with_one} {with_both}");
+}
+
+#[test]
+fn dialling_by_a_file_with_a_misread_circle_says_so() {
+    let home = Home::new();
+    let sound = readings(&TARN_HOLLOW, &NORTHERN, AS_ENGRAVED);
+    let words = |file: &str| {
+        let file = home.write("night.csv", file);
+        let ran = home.run(&[
+            "--site",
+            "tarn-hollow",
+            "--at",
+            "2026-12-01T21:30:00Z",
+            "--readings",
+            &file,
+            "dial",
+            "M 37",
+        ]);
+        assert_eq!(ran.status, 0, "{ran:?}");
+        ran.err
+    };
+    assert_eq!(words(&sound), "");
+    // the fourth star read an hour out
+    let lines = sound.lines().enumerate().map(|(number, line)| {
+        let mut cells: Vec<String> = line.split(',').map(str::to_owned).collect();
+        if number == 4 {
+            let (hours, rest) = cells[2].split_once(' ').unwrap();
+            cells[2] = format!("{} {rest}", (hours.parse::<u32>().unwrap() + 1) % 24);
+        }
+        cells.join(",")
+    });
+    let wrong: Vec<String> = lines.collect();
+    let said = words(&(wrong.join("\n") + "\n"));
+    assert!(
+        said.contains("reading 4, Mirfak") && said.contains("misread by one hour"),
+        "{said}"
+    );
+    assert_eq!(said.lines().count(), 1, "{said}");
 }

@@ -522,7 +522,13 @@ fn what_the_night_before_taught_is_taken_as_it_stood_or_moved_and_dropped_again(
     let picture = scene.play("c e");
     assert!(picture.says("as it stood"), "{}", picture.text());
     // no star of tonight, and known by that night but for the allowance
-    assert!(known_arcmin(&scene.play("<space>")) < 60.0);
+    let picture = scene.play("<space>");
+    assert!(known_arcmin(&picture) < 60.0);
+    assert!(
+        picture.says("rest on an earlier night"),
+        "{}",
+        picture.text()
+    );
     let picture = scene.play("c e <esc>");
     assert!(picture.says("no star read"), "{}", picture.text());
     let picture = scene.play("c e");

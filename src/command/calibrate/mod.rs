@@ -4,7 +4,7 @@ mod advice;
 mod json;
 mod next;
 mod picture;
-mod suspicions;
+pub mod suspicions;
 mod table;
 
 use std::io::Write;

@@ -55,6 +55,16 @@ impl SuspicionRow {
     }
 }
 
+/// A suspicious reading in a line, with its likeliest explanation.
+pub fn in_a_line(readings: &Readings, suspected: &Suspected) -> String {
+    let star = readings.rows.get(suspected.row);
+    let star = star.map_or("", |row| row.star.as_str());
+    let why = suspected.suspicion.explanations.first();
+    let why = why.map_or_else(String::new, |why| format!(": {}?", why.text));
+    let row = suspected.row + 1;
+    format!("reading {row}, {star}, cannot well be{why} nonius calibrate FILE says more")
+}
+
 /// The suspicious readings of a file; rows counted from 0 in the order of the file.
 pub fn of(readings: &Readings, station: &Station) -> Vec<Suspected> {
     let stars = station
