@@ -26,6 +26,7 @@ pub mod observatory;
 pub mod outlook;
 pub mod panel;
 pub mod picture;
+pub mod pretence;
 pub mod reading;
 pub mod run;
 pub mod shown;

@@ -17,6 +17,7 @@ use crate::screen::objects::{self, Ahead};
 use crate::screen::observatory::Observatory;
 use crate::screen::outlook::{Foresight, Outlook};
 use crate::screen::panel::Panel;
+use crate::screen::pretence;
 use crate::screen::reading::{Sitting, TypedReading};
 use crate::sky::Moment;
 
@@ -313,7 +314,7 @@ impl From<'_> {
     }
 
     fn pretended(&self) -> Option<(String, String)> {
-        let errors = self.observatory.demonstration?;
+        let errors = pretence::errors(self.observatory, self.night.state())?;
         let star = &self.panel.star.as_ref()?.star;
         let moment = self.centred_moment().unwrap_or(*self.moment);
         let side = self.reading_side(&moment, star)?;

@@ -493,8 +493,6 @@ fn rings_that_slip_are_set_on_a_star_by_one_key() {
     let mut scene = Scene::at(EVENING, 80, 24);
     scene.observatory.mount.hour_circle.ring = nonius::metal::Ring::Slips;
     scene.observatory.mount.declination_circle.slips = true;
-    // no pretended mount: the rings stand as the observer has set them
-    scene.observatory.demonstration = None;
     let picture = scene.play("s capella <enter>");
     assert!(picture.says("or turn the rings to"), "{}", picture.text());
     let picture = scene.play("s capella <enter> z <enter>");
@@ -506,6 +504,11 @@ fn rings_that_slip_are_set_on_a_star_by_one_key() {
     drop(session);
     let picture = scene.play("<space>");
     assert!(picture.says("known to"), "{}", picture.text());
+    // the pretended mount's rings stand as they were set: the next star agrees with them
+    let picture = scene.play(&reading_of(&scene, "aldebaran"));
+    assert!(picture.says("read: Aldebaran"), "{}", picture.text());
+    let state = scene.session().0.night().state().clone();
+    assert_eq!(state.readings_in_use().count(), 2);
 }
 
 #[test]

@@ -4,7 +4,7 @@ mod advice;
 mod json;
 mod next;
 mod picture;
-pub mod suspicions;
+pub(super) mod suspicions;
 mod table;
 
 use std::io::Write;
