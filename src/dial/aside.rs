@@ -1,7 +1,6 @@
 //! A look aside of the target: a step of a sweep, and what it tells when the target is found there.
 
 use crate::angle::{Angle, Declination, HourAngle};
-use crate::dial::next_star::field_looked_into;
 use crate::dial::setting::Dial;
 use crate::estimate::{Sight, SweepStep, sweep};
 use crate::metal::{Mount, OppositeVerniers};
@@ -47,7 +46,7 @@ impl From<&SweepStep> for Aside {
 /// The sweep for a target that was dialled and is not in the field of the eyepiece.
 #[must_use]
 pub fn sweep_for(mount: &Mount, dial: &Dial) -> Vec<SweepStep> {
-    sweep(&dial.sky, field_looked_into(mount))
+    sweep(&dial.sky, mount.field_looked_into())
 }
 
 /// What it tells that the target was found with the circles set as dialled, aside of it or not, without their being read:
@@ -55,7 +54,7 @@ pub fn sweep_for(mount: &Mount, dial: &Dial) -> Vec<SweepStep> {
 #[must_use]
 pub fn found_there(mount: &Mount, moment: &Moment, source: &Source, dial: &Dial) -> Sight {
     let place = moment.observed(&moment.apparent(source));
-    let in_field = field_looked_into(mount) * OF_FIELD;
+    let in_field = mount.field_looked_into() * OF_FIELD;
     let shrunk = place.declination.angle().cos().max(f64::EPSILON);
     let both =
         |look: Angle, field: Angle| Angle::from_radians(look.radians().hypot(field.radians()));

@@ -4,7 +4,7 @@
 use crate::angle::Angle;
 use crate::catalog::Target;
 use crate::dial::bright::{self, Placed};
-use crate::dial::next_star::{AS_GOOD, field_looked_into, looks, station};
+use crate::dial::next_star::{AS_GOOD, looks, station};
 use crate::dial::setting::{Chance, Dial};
 use crate::dial::setup::Setup;
 use crate::estimate::{Covariance, Offered, Wanted};
@@ -63,7 +63,7 @@ pub fn neighbour(
     let at = &dial.observed;
     let target = station((at.hour_angle, at.declination), dial.side, hour, dec);
     let wanted = Wanted::new(setup.estimate, latitude, &[target]);
-    let field = field_looked_into(setup.mount);
+    let field = setup.mount.field_looked_into();
     let stars = &about(dial, stars);
     let near: Vec<Placed> = bright::well_placed(setup, moment, stars)
         .into_iter()

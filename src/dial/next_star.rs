@@ -15,12 +15,6 @@ const PACE_S: f64 = 300.0;
 /// Where no list says what is wanted, the sky above this altitude is.
 const WANTED_ALTITUDE_DEG: f64 = 20.0;
 
-/// A field wider than this is a finder's.
-const WIDEST_EYEPIECE: Angle = Angle::from_degrees(2.0);
-
-/// The field looked into where the mount file names none.
-const USUAL_FIELD: Angle = Angle::from_degrees(1.0);
-
 /// A star that gains less than this is not worth the time: half a point.
 const WORTH_READING: f64 = 0.005;
 
@@ -55,16 +49,6 @@ pub struct Timing {
     pub timed: f64,
 }
 
-/// The field of the eyepiece that is looked into first: the widest that is no finder's.
-#[must_use]
-pub fn field_looked_into(mount: &Mount) -> Angle {
-    let fields = mount.optics.iter().map(|optic| optic.field);
-    let eyepieces = fields.filter(|field| *field <= WIDEST_EYEPIECE);
-    eyepieces
-        .reduce(|widest, field| if field > widest { field } else { widest })
-        .unwrap_or(USUAL_FIELD)
-}
-
 /// The stars worth reading next, the most helpful first. `stars` are the bright ones to
 /// [`bright::FAINTEST_RIVAL_HP`], `rest` the objects still to be dialled, in order; without any that comes up, the whole
 /// visible sky is wanted.
@@ -88,7 +72,7 @@ pub fn next_stars(
             Some((placed, offered))
         })
         .collect();
-    let field = field_looked_into(setup.mount);
+    let field = setup.mount.field_looked_into();
     let first_look = wanted.first_look(wanted.covariance(), field);
     let offered: Vec<Offered> = placed.iter().map(|(_, offered)| *offered).collect();
     let ranked = wanted.ranked(&offered);
@@ -134,7 +118,7 @@ pub fn timing(
         return None;
     }
     let latitude = moment.observer().latitude;
-    let field = field_looked_into(setup.mount);
+    let field = setup.mount.field_looked_into();
     let (_, dec) = looks(setup.mount);
     let timed = sights.iter().fold(*before, |known, sight| {
         let place = (sight.hour_angle, sight.declination);

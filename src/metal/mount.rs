@@ -150,7 +150,23 @@ pub struct Mount {
     pub optics: Vec<Optic>,
 }
 
+/// A field wider than this is a finder's (common practice, no source).
+const WIDEST_EYEPIECE: Angle = Angle::from_degrees(2.0);
+
+/// The field looked into where the mount file names none.
+const USUAL_FIELD: Angle = Angle::from_degrees(1.0);
+
 impl Mount {
+    /// The field of the eyepiece that is looked into first: the widest that is no finder's.
+    #[must_use]
+    pub fn field_looked_into(&self) -> Angle {
+        let fields = self.optics.iter().map(|optic| optic.field);
+        let eyepieces = fields.filter(|field| *field <= WIDEST_EYEPIECE);
+        eyepieces
+            .reduce(|widest, field| if field > widest { field } else { widest })
+            .unwrap_or(USUAL_FIELD)
+    }
+
     /// True if an hour angle can be reached, from one side of the pier at least.
     #[must_use]
     pub fn reaches(&self, hour_angle: HourAngle) -> bool {

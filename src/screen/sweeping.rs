@@ -4,7 +4,6 @@
 use crate::angle::Angle;
 use crate::dial::Aside;
 use crate::dial::aside::{found_there, sweep_for};
-use crate::dial::next_star::field_looked_into;
 use crate::estimate::SweepStep;
 use crate::night::{Event, StarReading};
 use crate::screen::keys::{Act, Mode};
@@ -109,7 +108,7 @@ pub(super) fn begin(panel: &mut Panel, scene: &Scene<'_>) {
             panel.sweep = Sweeping {
                 steps,
                 at: 0,
-                field: field_looked_into(mount),
+                field: mount.field_looked_into(),
             };
         }
         Some(_) => panel.say("that is too wide a sky to sweep: read a star near it first"),
