@@ -3,7 +3,7 @@
 use crate::night::{Event, NightReading, StartedFrom};
 use crate::screen::keys::{Act, Mode};
 use crate::screen::panel::{Doing, Panel};
-use crate::screen::update::{Scene, entered, record};
+use crate::screen::scene::{Scene, entered, record};
 
 /// A key struck in the calibration view.
 pub(super) fn calibrating(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {

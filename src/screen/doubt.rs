@@ -13,9 +13,8 @@ use crate::screen::light::Strength;
 use crate::screen::look::{Look, wrapped};
 use crate::screen::panel::{Centred, Choice, Doing, Panel};
 use crate::screen::reading::{Sitting, Whole};
+use crate::screen::scene::{Scene, reading_event};
 use crate::screen::shown::From;
-use crate::screen::typing::reading_event;
-use crate::screen::update::Scene;
 use crate::screen::words::{chance, rough};
 
 /// More explanations than this are no help.

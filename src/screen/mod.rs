@@ -5,6 +5,7 @@
 //! is to see at an instant, and [`view`] draws it. [`run`] alone holds the clock and the terminal.
 //! [`keys`] is the one table of keys, for the dispatch, the hints, the help and the manual.
 
+pub mod ahead;
 mod calibrating;
 pub mod calibration;
 pub mod circle;
@@ -29,8 +30,10 @@ pub mod picture;
 pub mod pretence;
 pub mod reading;
 pub mod run;
+pub mod scene;
 pub mod shown;
 pub mod stopped;
+pub mod sweep;
 pub mod sweeping;
 pub mod target_line;
 pub mod terminal;

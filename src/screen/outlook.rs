@@ -4,8 +4,8 @@
 use std::rc::Rc;
 
 use crate::dial::neighbour::Neighbour;
+use crate::screen::ahead::Ahead;
 use crate::screen::insight::Insight;
-use crate::screen::objects::Ahead;
 use crate::screen::observatory::Observatory;
 use crate::sky::{Moment, Observed, Source};
 use crate::time::Utc;

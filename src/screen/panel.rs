@@ -10,7 +10,7 @@ use crate::catalog::Target;
 use crate::night::Event;
 use crate::screen::keys::Mode;
 use crate::screen::light::Light;
-use crate::screen::sweeping::Sweeping;
+use crate::screen::sweep::Sweeping;
 use crate::time::Utc;
 
 /// What the screen holds and the record does not.

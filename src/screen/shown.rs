@@ -11,9 +11,9 @@ use crate::dial::ring::RingSetting;
 use crate::dial::{self, CautionCode, Dial, NotDialled, Setup, TubePlace};
 use crate::metal::{self, Side, SideRequest};
 use crate::night::{Known, Night, Setting, State};
+use crate::screen::ahead::{self, Ahead};
 use crate::screen::insight::Insight;
 use crate::screen::keys::Mode;
-use crate::screen::objects::{self, Ahead};
 use crate::screen::observatory::Observatory;
 use crate::screen::outlook::{Foresight, Outlook};
 use crate::screen::panel::Panel;
@@ -145,7 +145,10 @@ impl From<'_> {
             settings,
             neighbour,
             ahead: match panel.mode {
-                Mode::Objects => foresight.ahead(self.moment.utc(), || objects::ahead(self)),
+                Mode::Objects => {
+                    let work_out = || ahead::ahead(self.observatory, state, self.moment);
+                    foresight.ahead(self.moment.utc(), work_out)
+                }
                 _ => Rc::default(),
             },
             outlook,

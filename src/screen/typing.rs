@@ -6,7 +6,7 @@ use crate::night::{Circle, Event, ListedTarget, StarReading};
 use crate::screen::doubt;
 use crate::screen::keys::{Act, Mode};
 use crate::screen::panel::{Centred, Doing, Panel};
-use crate::screen::update::{SUN_WORD, Scene, entered, record};
+use crate::screen::scene::{SUN_WORD, Scene, entered, reading_event, record};
 
 /// A clock further out than this is set wrong, not slow or fast, in seconds.
 const MOST_CORRECTION_S: f64 = 3600.0;
@@ -203,17 +203,4 @@ fn rings_set(panel: &Panel, scene: &Scene<'_>, star: &Centred, reading: StarRead
     let event = Event::StarRead(Box::new(reading));
     doings.extend(record(event, said, Mode::Stepping));
     doings
-}
-
-/// The act of reading a star, or of finding the object read.
-pub(super) fn reading_event(
-    scene: &Scene<'_>,
-    star: &Centred,
-    reading: StarReading,
-) -> Option<Event> {
-    if star.found {
-        scene.from.night.found(None, Some(reading))
-    } else {
-        Some(Event::StarRead(Box::new(reading)))
-    }
 }

@@ -10,23 +10,10 @@ use crate::screen::calibrating::calibrating;
 use crate::screen::happening::{Happening, Stroke};
 use crate::screen::keys::{self, Act, DOUBLE_STRIKE, Mode};
 use crate::screen::panel::{Centred, Doing, Panel};
-use crate::screen::shown::{From, Settings, Shown};
+use crate::screen::scene::{Scene, record};
+use crate::screen::shown::Settings;
 use crate::screen::{doubt, objects, sweeping, typing};
 use crate::time::Utc;
-
-/// What a happening is held against.
-#[derive(Clone, Copy)]
-pub struct Scene<'s> {
-    /// The record, and what stays the same.
-    pub from: From<'s>,
-    /// What was on the screen.
-    pub shown: &'s Shown,
-    /// The moment it happened.
-    pub utc: Utc,
-}
-
-/// What the observer types to answer for an object near the Sun.
-pub const SUN_WORD: &str = "sun";
 
 /// Takes in what happened.
 pub fn update(panel: &mut Panel, scene: &Scene<'_>, happening: &Happening) -> Vec<Doing> {
@@ -91,14 +78,6 @@ fn struck(panel: &mut Panel, scene: &Scene<'_>, stroke: Stroke) -> Vec<Doing> {
 fn changed(panel: &mut Panel) {
     panel.chosen = 0;
     panel.said = None;
-}
-
-pub(super) fn record(event: Event, said: impl Into<String>, then: Mode) -> Vec<Doing> {
-    vec![Doing::Record {
-        event: Box::new(event),
-        said: said.into(),
-        then,
-    }]
 }
 
 /// A key struck while stepping, or while centring a star.
@@ -191,11 +170,6 @@ fn timed(panel: &mut Panel, scene: &Scene<'_>) {
 }
 
 const NO_OBJECT: &str = "no object is being dialled: press space for the first";
-
-pub(super) fn entered(panel: &mut Panel, mode: Mode) -> Vec<Doing> {
-    panel.enter(mode);
-    Vec::new()
-}
 
 fn was_found(night: &Night) -> bool {
     let current = night.state().current_target();

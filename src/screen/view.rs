@@ -11,9 +11,9 @@ use crate::screen::layout::{self, LEAST_HEIGHT, LEAST_WIDTH};
 use crate::screen::light::Strength;
 use crate::screen::look::{Look, fitting, wrapped};
 use crate::screen::reading::{Line, TypedReading};
+use crate::screen::scene::SUN_WORD;
 use crate::screen::shown::{From, Settings, Shown};
 use crate::screen::target_line::{self, place_in_list};
-use crate::screen::update::SUN_WORD;
 use crate::screen::words::chance;
 use crate::screen::{calibration, circle, doubt, entry, help, lists, objects, stopped, truth};
 
