@@ -197,6 +197,43 @@ mod tests {
     }
 
     #[test]
+    fn what_one_side_cannot_tell_of_the_other_is_not_falsely_sharp() {
+        let truth = mount([600.0, -200.0, 30.0, -40.0, 25.0, -10.0, 2.0]);
+        let west: Vec<Sight> = SIX.map(|star| read(&truth, star, Side::TubeWest)).to_vec();
+        let both = six(&truth);
+        let (one_side, two_sides) = (fitted(&west), fitted(&both));
+        let sigma = |fit: &Fit, error: usize| {
+            Angle::from_radians(fit.covariance[(error, error)].sqrt()).arcminutes()
+        };
+        // index, cone and skew add up to what one side shows of them
+        for error in [0, 4, 5] {
+            let (one, two) = (sigma(&one_side, error), sigma(&two_sides, error));
+            assert!(one > 1.5 * two, "{error}: {one}' {two}'");
+        }
+        let latitude = Latitude::from_degrees(LATITUDE_DEG);
+        for (hour_angle, declination) in SIX {
+            let (h, d) = (
+                HourAngle::from_degrees(hour_angle),
+                Declination::from_degrees(declination),
+            );
+            let on = |side| {
+                let estimate = Estimate::from(&one_side);
+                let told = estimate.predict(h, d, latitude, side).unwrap();
+                let shown = to_axes(h, d, latitude, &truth, side).unwrap();
+                (
+                    off(told.axes.hour, shown.hour).abs() / told.hour_sigma().radians(),
+                    off(told.axes.dec, shown.dec).abs() / told.dec_sigma().radians(),
+                    told.sky.trace(),
+                )
+            };
+            let (near, far) = (on(Side::TubeWest), on(Side::TubeEast));
+            assert!(far.2 > 4.0 * near.2, "{near:?} {far:?}");
+            // where it is wrong, it says how far it may be
+            assert!(far.0 < 3.0 && far.1 < 3.0, "{far:?}");
+        }
+    }
+
+    #[test]
     fn one_star_gives_the_indexes_and_leaves_the_rest_to_the_prior() {
         let truth = mount([5000.0, -3000.0, 0.0, 0.0, 0.0, 0.0, 0.0]);
         let fit = fitted(&[read(&truth, (-30.0, 25.0), Side::TubeWest)]);
