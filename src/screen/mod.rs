@@ -32,6 +32,7 @@ pub mod reading;
 pub mod run;
 pub mod scene;
 pub mod shown;
+pub mod standing;
 pub mod stopped;
 pub mod sweep;
 pub mod sweeping;

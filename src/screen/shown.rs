@@ -8,9 +8,9 @@ use crate::catalog::{Filter, Target};
 use crate::dial::bright::Placed;
 use crate::dial::neighbour::{self, Neighbour};
 use crate::dial::ring::RingSetting;
-use crate::dial::{self, CautionCode, Dial, NotDialled, Setup, TubePlace};
-use crate::metal::{self, Side, SideRequest};
-use crate::night::{Known, Night, Setting, State};
+use crate::dial::{self, CautionCode, Dial, NotDialled, Setup};
+use crate::metal::Side;
+use crate::night::{Known, Night, Setting};
 use crate::screen::ahead::{self, Ahead};
 use crate::screen::insight::Insight;
 use crate::screen::keys::Mode;
@@ -19,6 +19,7 @@ use crate::screen::outlook::{Foresight, Outlook};
 use crate::screen::panel::Panel;
 use crate::screen::pretence;
 use crate::screen::reading::{Sitting, TypedReading};
+use crate::screen::standing::{request, tube};
 use crate::sky::Moment;
 
 /// More matches than a screen has lines.
@@ -317,21 +318,10 @@ impl From<'_> {
     }
 
     fn pretended(&self) -> Option<(String, String)> {
-        let errors = pretence::errors(self.observatory, self.night.state())?;
         let star = &self.panel.star.as_ref()?.star;
         let moment = self.centred_moment().unwrap_or(*self.moment);
         let side = self.reading_side(&moment, star)?;
-        let place = moment.observed(&moment.apparent(&star.source));
-        let latitude = moment.observer().latitude;
-        let axes =
-            metal::to_axes(place.hour_angle, place.declination, latitude, &errors, side).ok()?;
-        let mount = &self.observatory.mount;
-        let (hour, dec) = (&mount.hour_circle, &mount.declination_circle);
-        let read = hour.reading(axes.hour, moment.apparent_sidereal(), side);
-        Some((
-            hour.scale().text(read),
-            dec.scale().text(dec.reading(axes.dec)),
-        ))
+        pretence::circles(self.observatory, self.night.state(), &moment, (star, side))
     }
 }
 
@@ -358,21 +348,6 @@ impl Shown {
             axes: dial.axes.into(),
         })
     }
-}
-
-/// The side of the pier asked for.
-#[must_use]
-pub fn request(state: &State) -> SideRequest {
-    state.side.map_or(SideRequest::Auto, SideRequest::Only)
-}
-
-fn tube(state: &State) -> Option<TubePlace> {
-    let shown = state.tube.as_ref()?;
-    Some(TubePlace {
-        axes: shown.axes.into(),
-        utc: shown.utc,
-        side: shown.side,
-    })
 }
 
 /// What stops settings that could be followed to someone's harm.

@@ -3,5 +3,6 @@
 
 mod flows;
 mod hands;
+mod learning;
 mod light;
 mod scene;
