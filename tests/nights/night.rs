@@ -15,7 +15,7 @@ const OBJECTS: usize = 20;
 /// Stars the tool may choose from.
 const CANDIDATES: usize = 18;
 /// Objects found and read, in the nights that read every one.
-pub const FED: usize = 30;
+pub const FED: usize = 50;
 /// Looks that say how well the mount is known after each of them.
 const LOOKS_BETWEEN: usize = 4;
 
@@ -37,7 +37,7 @@ pub struct Figures {
     /// for the list, and with every error known.
     pub circles: [[Rate; 4]; 3],
     /// After so many objects found, at the first look or by a sweep, and read, beside three stars chosen.
-    pub fed: [Rate; FED + 1],
+    pub fed: Vec<Rate>,
     /// What was stated at any of the stages with random stars.
     pub stated: Stated,
     /// Root mean square of the estimate's error against the bound, at six stars; one is the bound.
@@ -54,6 +54,7 @@ const STAGES: [usize; 3] = [1, 3, 6];
 pub fn nights(count: usize, seed: u64) -> Figures {
     let mut figures = Figures {
         count,
+        fed: vec![Rate::default(); FED + 1],
         ..Figures::default()
     };
     for night in 0..count as u64 {
@@ -234,7 +235,7 @@ fn with_circles(
 }
 
 /// Some stars, then every object is read too, found at the first look or by a sweep.
-fn fed(rates: &mut [Rate; FED + 1], chance: &mut Chance, sky: &Sky, stars: &[Sight]) {
+fn fed(rates: &mut [Rate], chance: &mut Chance, sky: &Sky, stars: &[Sight]) {
     let mut sights = stars.to_vec();
     for rate in rates {
         let estimate = known(sky, &sights);
