@@ -21,6 +21,9 @@ const WORTH_READING: f64 = 0.005;
 /// Stars whose gains differ by less than this help alike: three points.
 pub(super) const AS_GOOD: f64 = 0.03;
 
+/// Nor may they differ by more than this part of the best gain: once little is left to gain, three points are all of it.
+const OF_THE_BEST: f64 = 0.25;
+
 /// A star to read, and what it would gain.
 #[derive(Clone, Debug, PartialEq)]
 pub struct NextStar {
@@ -97,7 +100,7 @@ fn brightest_first(stars: Vec<NextStar>) -> Vec<NextStar> {
     let best = stars.iter().map(NextStar::gain).fold(0.0, f64::max);
     let (mut good, others): (Vec<NextStar>, Vec<NextStar>) = stars
         .into_iter()
-        .partition(|next| next.gain() > best - AS_GOOD);
+        .partition(|next| next.gain() > best - AS_GOOD.min(best * OF_THE_BEST));
     good.sort_by(|a, b| bright::by_brightness(&a.placed.star, &b.placed.star));
     good.extend(others);
     good
