@@ -55,7 +55,8 @@ fn usual(side: Side) -> Option<HourAngleSpan> {
 }
 
 impl Site<'_> {
-    fn sides(&self) -> &'static [Side] {
+    /// The sides there are.
+    pub(super) fn sides(&self) -> &'static [Side] {
         if self.mount.kind.has_two_sides() {
             &[Side::TubeWest, Side::TubeEast]
         } else {
@@ -63,12 +64,13 @@ impl Site<'_> {
         }
     }
 
-    fn span(&self, side: Side) -> Option<HourAngleSpan> {
+    /// The hour angles a side takes: its limits, else its usual half of the sky; a fork or yoke may have neither.
+    pub(super) fn span(&self, side: Side) -> Option<HourAngleSpan> {
         self.mount.limits.span(side).or_else(|| usual(side))
     }
 
     /// How far above mask, limit and level horizon; negative below any of them.
-    fn above(&self, place: &Observed) -> Angle {
+    pub(super) fn above(&self, place: &Observed) -> Angle {
         let lowest = self.mount.limits.lowest_altitude.unwrap_or_default();
         let mask = self.horizon.altitude_at(place.azimuth);
         let floor = if lowest > mask { lowest } else { mask };
@@ -76,7 +78,7 @@ impl Site<'_> {
     }
 
     /// How far within the side's reach; negative outside.
-    fn within(&self, side: Side, hour_angle: HourAngle) -> Angle {
+    pub(super) fn within(&self, side: Side, hour_angle: HourAngle) -> Angle {
         let Some(span) = self.span(side) else {
             return Angle::TURN;
         };
@@ -156,45 +158,12 @@ mod tests {
     use super::*;
     use crate::angle::{Altitude, Latitude, Longitude};
     use crate::catalog::Catalogue;
-    use crate::metal::{
-        DeclinationCircle, DeclinationNumbering, ExpectedErrors, HourCircle, HourNumbering,
-        Increases, Kind, Limits, Ring,
-    };
-    use crate::sexagesimal::Unit;
+    use crate::metal::{Kind, Limits};
+    use crate::plan::samples::{mount, span};
     use crate::sky::{Air, Observer};
     use crate::time::Dut1;
 
     const NIGHT_S: f64 = 12.0 * 3600.0;
-
-    fn mount(kind: Kind, limits: Limits) -> Mount {
-        Mount {
-            name: "trial".to_owned(),
-            kind,
-            clock_drive: true,
-            hour_circle: HourCircle {
-                ring: Ring::Fixed,
-                unit: Unit::Hours,
-                numbering: HourNumbering::Full,
-                increases: Increases::West,
-                division: Angle::from_time_seconds(240.0),
-                vernier: None,
-                second_fiducial: false,
-                reading_error: None,
-            },
-            declination_circle: DeclinationCircle {
-                numbering: DeclinationNumbering::Signed,
-                division: Angle::from_degrees(1.0),
-                vernier: None,
-                slips: false,
-                reading_error: None,
-            },
-            limits,
-            expected: ExpectedErrors::default(),
-            dome: None,
-            tube: None,
-            optics: Vec::new(),
-        }
-    }
 
     fn evening(latitude: f64) -> Moment {
         let observer = Observer {
@@ -205,14 +174,6 @@ mod tests {
             air: Air::standard(0.0),
         };
         Moment::new(&observer, Utc::parse("2026-12-01T18:00:00Z").unwrap())
-    }
-
-    fn span(from_hours: f64, to_hours: f64) -> HourAngleSpan {
-        let at = |hours| HourAngle::new(Angle::from_hours(hours));
-        HourAngleSpan {
-            from: at(from_hours),
-            to: at(to_hours),
-        }
     }
 
     fn of(mount: &Mount, latitude: f64, name: &str) -> (Moment, Source, Vec<Reach>) {

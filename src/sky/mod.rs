@@ -13,6 +13,8 @@
 mod air;
 mod body;
 mod catalogue_place;
+mod compass;
+mod course;
 mod crossing;
 mod earth;
 mod equinox;
@@ -31,6 +33,8 @@ mod vector;
 pub use air::Air;
 pub use body::Body;
 pub use catalogue_place::{CataloguePlace, Equinox};
+pub use compass::compass_point;
+pub use course::{Course, Turning};
 pub use crossing::{Crossing, crossings};
 pub use equinox::EquinoxFault;
 pub use horizon::HorizonMask;

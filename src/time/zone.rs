@@ -67,6 +67,21 @@ impl CivilZone {
         let instant = self.0.from_local_datetime(&noon).earliest()?;
         Utc::new(instant.to_utc()).ok()
     }
+
+    /// When civil clocks show a time in a night: from noon on in its evening, before noon the morning after. The first of two,
+    /// where clocks are set back; nothing where they are set forward past it.
+    #[must_use]
+    pub fn at_clock(self, night: Night, clock: NaiveTime) -> Option<Utc> {
+        let noon = NaiveTime::from_hms_opt(12, 0, 0)?;
+        let date = if clock >= noon {
+            night.0
+        } else {
+            night.0.succ_opt()?
+        };
+        let civil = date.and_time(clock);
+        let instant = self.0.from_local_datetime(&civil).earliest()?;
+        Utc::new(instant.to_utc()).ok()
+    }
 }
 
 impl Night {
@@ -139,6 +154,23 @@ mod tests {
         let zone: CivilZone = "Australia/Sydney".parse().unwrap();
         let noon = zone.noon("2026-12-01".parse().unwrap()).unwrap();
         assert_eq!(noon.rfc3339(), "2026-12-01T01:00:00Z");
+    }
+
+    #[test]
+    fn a_clock_time_of_a_night_is_that_of_its_evening_or_of_the_morning_after() {
+        let zone: CivilZone = "Europe/London".parse().unwrap();
+        let at = |night: &str, hour, minute| {
+            let clock = NaiveTime::from_hms_opt(hour, minute, 0).unwrap();
+            let utc = zone.at_clock(night.parse().unwrap(), clock);
+            utc.map(Utc::rfc3339)
+        };
+        let text = |text: &str| Some(text.to_owned());
+        assert_eq!(at("2026-12-01", 21, 30), text("2026-12-01T21:30:00Z"));
+        assert_eq!(at("2026-12-01", 3, 0), text("2026-12-02T03:00:00Z"));
+        // clocks go back at 2h on October 25 and forward at 1h on March 29
+        assert_eq!(at("2026-10-24", 3, 0), text("2026-10-25T03:00:00Z"));
+        assert_eq!(at("2026-10-24", 1, 30), text("2026-10-25T00:30:00Z"));
+        assert_eq!(at("2026-03-28", 1, 30), None);
     }
 
     #[test]

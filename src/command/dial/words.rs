@@ -1,40 +1,16 @@
 //! Settings and clocks in words, for the page and for the lines.
 
-use crate::angle::{Angle, Azimuth};
+use crate::angle::Angle;
 use crate::dial::{Dial, Swing};
 use crate::metal::Side;
 use crate::sexagesimal::{Notation, Unit};
+use crate::sky::compass_point;
 use crate::time::SiderealTime;
 
 /// A clock shows the second that has begun, not the nearest.
 pub(super) fn sidereal(time: SiderealTime) -> String {
     let begun = Angle::from_time_seconds((time.angle().time_seconds() + 1e-6).floor());
     Notation::new(Unit::Hours, Angle::from_time_seconds(1.0)).write(begun)
-}
-
-/// A compass point of sixteen.
-pub(super) fn compass(azimuth: Azimuth) -> &'static str {
-    const POINTS: [&str; 16] = [
-        "north",
-        "north-north-east",
-        "north-east",
-        "east-north-east",
-        "east",
-        "east-south-east",
-        "south-east",
-        "south-south-east",
-        "south",
-        "south-south-west",
-        "south-west",
-        "west-south-west",
-        "west",
-        "west-north-west",
-        "north-west",
-        "north-north-west",
-    ];
-    #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // 0 to 16
-    let point = (azimuth.degrees() / 22.5).round() as usize % POINTS.len();
-    POINTS.get(point).copied().unwrap_or("north")
 }
 
 /// An uncertainty as short as it can be said.
@@ -77,6 +53,6 @@ pub(super) fn stand(dial: &Dial) -> String {
         "altitude {:.0}°, azimuth {:.0}° ({})",
         observed.altitude.degrees(),
         observed.azimuth.degrees().round() % 360.0,
-        compass(observed.azimuth)
+        compass_point(observed.azimuth)
     )
 }

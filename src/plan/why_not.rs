@@ -1,0 +1,126 @@
+//! Why an object cannot be had tonight, in plain words.
+
+use std::fmt;
+
+use crate::angle::{Altitude, Angle, Azimuth};
+use crate::sky::{Twilight, compass_point};
+
+/// Why an object cannot be had.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum WhyNot {
+    /// Its name is in no catalogue.
+    Unknown,
+    /// It is the Sun.
+    TheSun,
+    /// The Sun never goes so far down.
+    NeverDark(Twilight),
+    /// It is not so dark in the hours asked for.
+    NotDarkThen(Twilight),
+    /// It never comes up above the mask or the mount's lowest altitude. Where it comes nearest:
+    NeverUp {
+        /// Its altitude.
+        altitude: Altitude,
+        /// Its azimuth.
+        azimuth: Azimuth,
+        /// What it would have to be above.
+        floor: Floor,
+    },
+    /// It is up, but not while it is so dark.
+    UpInLight(Twilight),
+    /// It can be seen, but not in the hours asked for.
+    OtherHours,
+    /// It is beyond the hour angles the mount reaches while it can be seen.
+    Limits,
+    /// The Moon is too near all the time.
+    NearMoon {
+        /// How near, at the farthest.
+        apart: Angle,
+        /// The lit share of its disc.
+        illuminated: f64,
+    },
+    /// It comes into reach for some minutes only, between two looks.
+    Minutes,
+    /// Others take the time it can be had in.
+    NoTime,
+}
+
+/// What an object must be above.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Floor {
+    /// The level horizon.
+    Level,
+    /// The horizon mask.
+    Mask(Altitude),
+    /// The lowest altitude the mount may go to.
+    Mount(Altitude),
+}
+
+const fn named(twilight: Twilight) -> &'static str {
+    match twilight {
+        Twilight::Civil => "civil",
+        Twilight::Nautical => "nautical",
+        Twilight::Astronomical => "astronomical",
+    }
+}
+
+impl fmt::Display for WhyNot {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        match *self {
+            Self::Unknown => f.write_str("no catalogue knows this name"),
+            Self::TheSun => f.write_str("the Sun is not for the night"),
+            Self::NeverDark(twilight) => write!(
+                f,
+                "not dark enough: the Sun stays less than {:.0}° below the horizon all night",
+                -twilight.altitude().degrees()
+            ),
+            Self::NotDarkThen(twilight) => write!(
+                f,
+                "not dark enough in the hours asked for: {} twilight or brighter",
+                named(twilight)
+            ),
+            Self::NeverUp {
+                altitude,
+                azimuth,
+                floor,
+            } => {
+                let (degrees, toward) = (altitude.degrees(), compass_point(azimuth));
+                match floor {
+                    Floor::Level => write!(
+                        f,
+                        "never rises: at its highest {:.0}° below the horizon in the {toward}",
+                        -degrees
+                    ),
+                    Floor::Mask(mask) => write!(
+                        f,
+                        "never above the mask: at best at {degrees:.0}° in the {toward}, where it stands to {:.0}°",
+                        mask.degrees()
+                    ),
+                    Floor::Mount(lowest) => write!(
+                        f,
+                        "never high enough for the mount: at best at {degrees:.0}° in the {toward}, and it goes no lower than {:.0}°",
+                        lowest.degrees()
+                    ),
+                }
+            }
+            Self::UpInLight(twilight) => write!(
+                f,
+                "not dark enough: up only by day or before {} twilight has ended",
+                named(twilight)
+            ),
+            Self::OtherHours => f.write_str("not to be had in the hours asked for"),
+            Self::Limits => {
+                f.write_str("beyond the mount's limits in hour angle while it is up in the dark")
+            }
+            Self::NearMoon { apart, illuminated } => write!(
+                f,
+                "within {:.0}° of a bright Moon, lit to {:.0} %",
+                apart.degrees().ceil(),
+                illuminated * 100.0
+            ),
+            Self::Minutes => f.write_str("in reach for some minutes only"),
+            Self::NoTime => {
+                f.write_str("no time left: other objects take the time it can be had in")
+            }
+        }
+    }
+}
