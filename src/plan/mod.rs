@@ -2,6 +2,7 @@
 
 pub mod needs;
 pub mod night;
+pub mod order;
 #[cfg(test)]
 mod samples;
 pub mod sides;
@@ -11,6 +12,7 @@ pub mod window;
 
 pub use needs::Needs;
 pub use night::{Almanac, MoonTimes, Span, SunTimes};
+pub use order::Tally;
 pub use sides::{End, Reach, Site, fewest_turns, reaches};
 pub use stand::Stand;
 pub use why_not::{Floor, WhyNot};
