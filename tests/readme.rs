@@ -93,6 +93,7 @@ fn every_command_has_its_line_in_the_manual() {
     for command in [
         "dial",
         "calibrate",
+        "plan",
         "find",
         "check",
         "new",

@@ -17,6 +17,7 @@ pub mod log;
 pub mod manual;
 pub mod new;
 pub mod options;
+pub mod plan;
 mod readings;
 mod screen;
 mod station;
@@ -47,6 +48,8 @@ pub enum Command {
     Dial(dial::DialArgs),
     /// Fit the mount's errors from a file of readings.
     Calibrate(calibrate::CalibrateArgs),
+    /// The list for the night: windows, order, swing.
+    Plan(plan::PlanArgs),
     /// Search the catalogues.
     Find(find::FindArgs),
     /// Report every fault of site, mount, list and readings files.
@@ -79,6 +82,7 @@ fn run(line: &Line, out: &mut dyn Write) -> anyhow::Result<()> {
     match &line.command {
         Some(Command::Dial(args)) => dial::run(args, common, out),
         Some(Command::Calibrate(args)) => calibrate::run(args, common, out),
+        Some(Command::Plan(args)) => plan::run(args, common, out),
         Some(Command::Find(args)) => {
             let catalogue = Catalogue::builtin().with_own(Folders::of_the_user()?.own_targets()?);
             find::run(args, &catalogue, common.json, out)

@@ -3,7 +3,7 @@
 //! A moment that does not come in the night is nothing: in a polar summer there is no dusk, in a polar winter no
 //! rise. Rising, setting and twilight are the almanacs' (`sky/rise_set.rs`).
 
-use crate::sky::{Body, Moment, Observer, Passage, Source, Twilight};
+use crate::sky::{Body, Moment, Observer, Passage, Source, Turning, Twilight};
 use crate::time::{self, CivilZone, Utc};
 
 /// A time with its two ends.
@@ -60,7 +60,7 @@ pub struct Almanac {
     pub sun: SunTimes,
     /// The Moon.
     pub moon: MoonTimes,
-    noon: Moment,
+    turning: Turning,
     /// By twilight, civil first: when it is darker than that.
     dark: [Vec<Span>; 3],
 }
@@ -169,7 +169,7 @@ impl Almanac {
                 set: first(false),
                 illuminated: noon.later(span_s / 2.0).illuminated(Body::Moon),
             },
-            noon,
+            turning: Turning::new(&noon, span_s),
             dark: [civil.1, nautical.1, astronomical.1],
         })
     }
@@ -188,7 +188,13 @@ impl Almanac {
     /// The sky at the first noon.
     #[must_use]
     pub const fn noon(&self) -> &Moment {
-        &self.noon
+        self.turning.start()
+    }
+
+    /// The sky turning over the site, from the first noon to the next.
+    #[must_use]
+    pub const fn turning(&self) -> &Turning {
+        &self.turning
     }
 
     /// When the night is darker than a twilight, asked for or not.

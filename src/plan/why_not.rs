@@ -40,6 +40,8 @@ pub enum WhyNot {
     },
     /// It comes into reach for some minutes only, between two looks.
     Minutes,
+    /// It can be had from the side of the pier that is not asked for.
+    OtherSide,
     /// Others take the time it can be had in.
     NoTime,
 }
@@ -118,6 +120,7 @@ impl fmt::Display for WhyNot {
                 illuminated * 100.0
             ),
             Self::Minutes => f.write_str("in reach for some minutes only"),
+            Self::OtherSide => f.write_str("to be had from the other side of the pier only"),
             Self::NoTime => {
                 f.write_str("no time left: other objects take the time it can be had in")
             }

@@ -62,7 +62,8 @@ impl Prospect {
 pub struct Watch<'a> {
     site: Site<'a>,
     almanac: &'a Almanac,
-    turning: Turning,
+    turning: &'a Turning,
+    moon: Course<'a>,
 }
 
 /// What is seen of an object at one time.
@@ -88,8 +89,10 @@ impl Sight<'_> {
         let place = self.object.observed(after_s);
         let clear_of_moon = if self.from_moon > Angle::ZERO {
             let moon = self.moon.observed(after_s);
-            let (apart, below) = (moon.separation(&place), -moon.altitude.angle());
-            -lesser(self.from_moon - apart, -below)
+            let beyond = moon.separation(&place) - self.from_moon;
+            let below = -moon.altitude.angle();
+            // either will do
+            if beyond < below { below } else { beyond }
         } else {
             Angle::TURN
         };
@@ -104,23 +107,18 @@ impl<'a> Watch<'a> {
     /// A site looking at a night.
     #[must_use]
     pub fn new(site: Site<'a>, almanac: &'a Almanac) -> Self {
-        let turning = Turning::new(almanac.noon(), almanac.whole.seconds());
+        let turning = almanac.turning();
         Self {
             site,
             almanac,
             turning,
+            moon: turning.course(&Source::Body(Body::Moon)),
         }
     }
 
-    /// What the night has for each of these, in their order.
+    /// What the night has for a target.
     #[must_use]
-    pub fn prospects(&self, targets: &[Target]) -> Vec<Prospect> {
-        let moon = self.turning.course(&Source::Body(Body::Moon));
-        let of = |target: &Target| self.prospect(target, &moon);
-        targets.iter().map(of).collect()
-    }
-
-    fn prospect(&self, target: &Target, moon: &Course<'_>) -> Prospect {
+    pub fn prospect(&self, target: &Target) -> Prospect {
         let object = self.turning.course(&target.source);
         let [rise, transit, set] = self.rise_transit_set(&target.source, &object);
         let mut prospect = Prospect {
@@ -143,7 +141,7 @@ impl<'a> Watch<'a> {
         };
         let sight = Sight {
             object,
-            moon,
+            moon: &self.moon,
             from_moon,
         };
         prospect.windows = self.windows(&sight, needs);
@@ -390,8 +388,7 @@ mod tests {
         target: &Target,
     ) -> Prospect {
         let site = Site { horizon, mount };
-        let watch = Watch::new(site, almanac);
-        watch.prospects(std::slice::from_ref(target)).remove(0)
+        Watch::new(site, almanac).prospect(target)
     }
 
     fn hills() -> HorizonMask {

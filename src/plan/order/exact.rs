@@ -2,7 +2,7 @@
 //! than another ending on the same object and side.
 
 use crate::plan::order::route::Node;
-use crate::plan::order::{List, price_between};
+use crate::plan::order::{List, delay_price, price_between, waiting_price};
 
 /// A way of having taken a set of objects.
 #[derive(Clone, Copy)]
@@ -26,7 +26,7 @@ pub(super) fn route(list: &List) -> Vec<Node> {
         let first = nodes.iter().map(|&node| Way {
             node,
             ends: node.from + list.each_s,
-            price: 0.0,
+            price: delay_price(list.delay(node.from, 0)),
             before: 0,
         });
         if let Some(alone) = ways.get_mut(1 << number) {
@@ -37,6 +37,7 @@ pub(super) fn route(list: &List) -> Vec<Node> {
         // a set with one more object has a greater number
         let (done, to_come) = ways.split_at_mut(set + 1);
         let Some(here) = done.last() else { continue };
+        let taken = set.count_ones() as usize;
         for (number, nodes) in objects.iter().enumerate() {
             let bit = 1_usize << number;
             if set & bit != 0 {
@@ -52,7 +53,9 @@ pub(super) fn route(list: &List) -> Vec<Node> {
                         let way = Way {
                             node: *node,
                             ends: at + list.each_s,
-                            price: way.price + price_between(&way.node.stand, &node.stand),
+                            price: way.price
+                                + price_between(&way.node.stand, &node.stand)
+                                + delay_price(list.delay(at, taken)),
                             before,
                         };
                         keep(there, way);
@@ -84,7 +87,7 @@ fn back(list: &List, objects: &[Vec<Node>], ways: &[Vec<Way>]) -> Vec<Node> {
     for (set, ways) in ways.iter().enumerate() {
         let taken = set.count_ones() as usize;
         for (place, way) in ways.iter().enumerate() {
-            let price = way.price + list.waiting_price(way.ends, taken);
+            let price = way.price + waiting_price(list.delay(way.ends, taken));
             let better = best.is_none_or(|(set, _, least)| {
                 let most = set.count_ones() as usize;
                 taken > most || (taken == most && price < least)

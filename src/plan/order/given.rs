@@ -2,7 +2,7 @@
 //! take each.
 
 use crate::plan::order::route::Node;
-use crate::plan::order::{List, price_between};
+use crate::plan::order::{List, delay_price, price_between, waiting_price};
 
 /// So many ways of having come to an object are kept, the cheapest and the earliest; there are seldom more than a few that
 /// are neither later nor dearer than another.
@@ -70,7 +70,7 @@ struct Way {
 /// The windows to take objects in, in this order, so that the price is least; nothing if they cannot all be taken in it.
 pub(super) fn best_windows(list: &List, objects: &[usize]) -> Vec<Node> {
     let mut ways: Vec<Vec<Way>> = Vec::with_capacity(objects.len());
-    for &object in objects {
+    for (taken, &object) in objects.iter().enumerate() {
         let mut here: Vec<Way> = Vec::new();
         for node in list.nodes(object) {
             let mut arrive = |free: f64, price: f64, before: usize| {
@@ -78,7 +78,7 @@ pub(super) fn best_windows(list: &List, objects: &[usize]) -> Vec<Node> {
                 let way = Way {
                     node,
                     ends: at + list.each_s,
-                    price,
+                    price: price + delay_price(list.delay(at, taken)),
                     before,
                 };
                 if at <= node.until {
@@ -98,7 +98,7 @@ pub(super) fn best_windows(list: &List, objects: &[usize]) -> Vec<Node> {
         thin(&mut here);
         ways.push(here);
     }
-    let total = |way: &Way| way.price + list.waiting_price(way.ends, objects.len());
+    let total = |way: &Way| way.price + waiting_price(list.delay(way.ends, objects.len()));
     let last = ways.last().and_then(|ways| {
         let cheapest = ways
             .iter()

@@ -4,8 +4,10 @@
 //!
 //! 1. if fewer of the objects that have a window are lost;
 //! 2. if its price is less, in degrees: the swings of both axes from each object to the next (hour axis and declination axis
-//!    added, [`Stand`](super::Stand)), [`TURN_OVER_DEG`] more for each turn over the pier, and [`WAITING_DEG_PER_MINUTE`] for
-//!    waiting, from the first moment any of the objects can be had.
+//!    added, [`Stand`]), [`TURN_OVER_DEG`] more for each turn over the pier, [`WAITING_DEG_PER_MINUTE`] for all waiting
+//!    together, and [`DELAY_DEG_PER_MINUTE`] for every object that waiting delays: what is there is taken while it is there.
+//!    Time runs from the first moment any of the objects can be had; an object is delayed by as much as it is begun
+//!    later than if nothing had been waited for.
 //!
 //! Where the tube is before the first object is not known: the way there costs nothing. Lists of up to [`EXACT_UP_TO`]
 //! objects get the best order there is (`exact.rs`); longer ones a good one (`search.rs`), which is never worse than the
@@ -33,6 +35,10 @@ pub const TURN_OVER_DEG: f64 = 90.0;
 
 /// What a minute's waiting costs (our own): an hour and a half as much as a turn over with its swing.
 pub const WAITING_DEG_PER_MINUTE: f64 = 3.0;
+
+/// What a minute's delay of one object costs (our own): small, so that of two orders with as much waiting that one is
+/// taken which waits late in the night and for few.
+pub const DELAY_DEG_PER_MINUTE: f64 = 0.2;
 
 /// So many objects are put in order exactly.
 pub const EXACT_UP_TO: usize = 10;
@@ -62,6 +68,8 @@ pub struct Tally {
     pub turns_over: usize,
     /// All waiting together, in seconds.
     pub waiting_s: f64,
+    /// The delays of all objects together, in seconds.
+    pub delays_s: f64,
 }
 
 /// A time in which an object can be begun.
@@ -88,7 +96,8 @@ impl Tally {
     pub fn price_deg(&self) -> f64 {
         self.swing.degrees()
             + TURN_OVER_DEG * self.turns_over as f64
-            + WAITING_DEG_PER_MINUTE * self.waiting_s / 60.0
+            + waiting_price(self.waiting_s)
+            + delay_price(self.delays_s)
     }
 
     /// True if it is better than another beyond rounding.
@@ -97,6 +106,16 @@ impl Tally {
         self.lost < other.lost
             || (self.lost == other.lost && self.price_deg() < other.price_deg() - SAME_DEG)
     }
+}
+
+/// The price of waiting so long in all.
+fn waiting_price(seconds: f64) -> f64 {
+    WAITING_DEG_PER_MINUTE * seconds / 60.0
+}
+
+/// The price of objects delayed by so much together.
+fn delay_price(seconds: f64) -> f64 {
+    DELAY_DEG_PER_MINUTE * seconds / 60.0
 }
 
 /// The price of going from one stand to another, waiting apart.
@@ -167,8 +186,11 @@ impl List {
             tally.swing += from.way_to(&to);
             tally.turns_over += usize::from(from.side != to.side);
         }
-        if let Some(last) = stops.last() {
-            tally.waiting_s = last.at_s - self.begins - self.each_s * (stops.len() - 1) as f64;
+        for (place, stop) in stops.iter().enumerate() {
+            let delay = self.delay(stop.at_s, place);
+            tally.delays_s += delay;
+            // the last is delayed by all of it
+            tally.waiting_s = delay;
         }
         tally
     }
@@ -207,10 +229,9 @@ impl List {
         route.iter().map(stop).collect()
     }
 
-    /// The price of waiting of a route that ends then with so many objects taken.
-    fn waiting_price(&self, ends: f64, taken: usize) -> f64 {
-        let waiting_s = ends - self.begins - self.each_s * taken as f64;
-        WAITING_DEG_PER_MINUTE * waiting_s / 60.0
+    /// By how much an object is delayed that is begun then, with so many taken before it.
+    fn delay(&self, at_s: f64, before: usize) -> f64 {
+        at_s - self.begins - self.each_s * before as f64
     }
 }
 

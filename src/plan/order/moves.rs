@@ -2,7 +2,7 @@
 //! elsewhere, a stretch turned round. Each makes the best change of its kind for one object after another, while there is any.
 
 use crate::plan::order::SAME_DEG;
-use crate::plan::order::route::{Node, Part, Route, link};
+use crate::plan::order::route::{Change, Node, Part, Route, link};
 
 /// Up to so many neighbours are moved together.
 const MOST_MOVED: usize = 3;
@@ -29,7 +29,8 @@ impl<M> Least<M> {
         }
     }
 
-    fn weigh(&mut self, change: Option<f64>, how: M) {
+    fn weigh(&mut self, route: &Route<'_>, change: &Change<'_>, how: M) {
+        let change = route.change(change, self.change);
         if let Some(change) = change.filter(|change| *change < self.change) {
             *self = Self {
                 change,
@@ -60,8 +61,22 @@ impl Route<'_> {
                         // later gaps are come to later still
                         break;
                     }
-                    let links = self.link_in(gap, &node);
-                    least.weigh(self.change(links, early.then(self.from(gap))), (gap, node));
+                    let change = Change {
+                        start: gap,
+                        rest: gap,
+                        stretches: [(std::slice::from_ref(&node), false), (&[], false)],
+                        links: self.link_in(gap, &node),
+                        whole: early.then(self.from(gap)),
+                    };
+                    // what is sure of a route as long is not of one with an object more
+                    if let Some(dearer) = self.change(&change, f64::INFINITY)
+                        && dearer < least.change
+                    {
+                        least = Least {
+                            change: dearer,
+                            how: Some((gap, node)),
+                        };
+                    }
                 }
             }
             if let Some((gap, node)) = least.how {
@@ -90,10 +105,16 @@ impl Route<'_> {
 
     fn weigh_instead(&self, place: usize, node: Node, least: &mut Least<Node>) {
         let links = self.link_instead(place, &node);
-        if links - self.waiting() < least.change {
+        if links - self.most_saved(place) < least.change {
             let part = Part::of(&node, self.list.each_s);
-            let changed = self.up_to(place).then(part).then(self.from(place + 1));
-            least.weigh(self.change(links, changed), node);
+            let change = Change {
+                start: place,
+                rest: place + 1,
+                stretches: [(std::slice::from_ref(&node), false), (&[], false)],
+                links,
+                whole: self.up_to(place).then(part).then(self.from(place + 1)),
+            };
+            least.weigh(self, &change, node);
         }
     }
 
@@ -177,7 +198,10 @@ impl Route<'_> {
             .rev()
             .fold(Part::NONE, |part, place| part.then(self.part(place)));
         let mut least = Least::below_nothing();
-        let mut weigh = |gap: usize, early: Part, between: Part, late: Part| {
+        let nodes = |from: usize, to: usize| self.nodes.get(from..to).unwrap_or_default();
+        let moved = nodes(start, end);
+        let most_saved = self.most_saved(0);
+        let mut weigh = |gap: usize, whole: &dyn Fn(Part) -> Part| {
             let (from, to) = (self.previous(gap), self.node(gap));
             for turned in [false, true] {
                 let (few, first, last) = if turned {
@@ -186,17 +210,30 @@ impl Route<'_> {
                     (few, first, last)
                 };
                 let links = link(from, first) + link(last, to) - link(from, to) - saved;
-                if links - self.waiting() < least.change {
-                    let changed = early.then(between).then(few).then(late);
-                    least.weigh(self.change(links, changed), Move { gap, turned });
+                if links - most_saved >= least.change {
+                    continue;
                 }
+                let moved = (moved, turned);
+                let later = gap > start;
+                let change = Change {
+                    start: start.min(gap),
+                    rest: end.max(gap),
+                    stretches: if later {
+                        [(nodes(end, gap), false), moved]
+                    } else {
+                        [moved, (nodes(gap, start), false)]
+                    },
+                    links,
+                    whole: whole(few),
+                };
+                least.weigh(self, &change, Move { gap, turned });
             }
         };
         // later: what lies between comes first
-        let mut between = Part::NONE;
+        let mut early = self.up_to(start);
         for gap in end + 1..=self.nodes.len() {
-            between = between.then(self.part(gap - 1));
-            weigh(gap, self.up_to(start), between, self.from(gap));
+            early = early.then(self.part(gap - 1));
+            weigh(gap, &|few| early.then(few).then(self.from(gap)));
         }
         // earlier: what lies between comes after
         let mut late = self.from(end);
@@ -205,7 +242,7 @@ impl Route<'_> {
             if !late.can_be() {
                 break;
             }
-            weigh(gap, self.up_to(gap), Part::NONE, late);
+            weigh(gap, &|few| self.up_to(gap).then(few).then(late));
         }
         least.how
     }
@@ -224,9 +261,18 @@ impl Route<'_> {
                 let (from, to) = (self.previous(start), self.node(end + 1));
                 let (first, last) = (self.node(start), self.node(end));
                 let links = link(from, last) + link(first, to) - link(from, first) - link(last, to);
-                if links - self.waiting() < least.change {
-                    let changed = self.up_to(start).then(round).then(self.from(end + 1));
-                    least.weigh(self.change(links, changed), end);
+                if links - self.most_saved(start) < least.change {
+                    let change = Change {
+                        start,
+                        rest: end + 1,
+                        stretches: [
+                            (self.nodes.get(start..=end).unwrap_or_default(), true),
+                            (&[], false),
+                        ],
+                        links,
+                        whole: self.up_to(start).then(round).then(self.from(end + 1)),
+                    };
+                    least.weigh(self, &change, end);
                 }
             }
             if let Some(stretch) = least.how.and_then(|end| self.nodes.get_mut(start..=end)) {

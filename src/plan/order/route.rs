@@ -1,6 +1,6 @@
 //! A route through objects, its price, and how a part of it takes time: what every change of it is tried on.
 
-use crate::plan::order::{List, SAME_DEG, WAITING_DEG_PER_MINUTE, price_between};
+use crate::plan::order::{List, SAME_DEG, delay_price, price_between, waiting_price};
 use crate::plan::stand::Stand;
 
 /// An object taken in one of its windows.
@@ -79,8 +79,24 @@ pub(super) struct Route<'l> {
     before: Vec<Part>,
     /// The route from each object on.
     after: Vec<Part>,
+    /// The delays up to each object, together.
+    delays: Vec<f64>,
     /// Of its swings and turns.
     links: f64,
+}
+
+/// A stretch of a changed route, and whether it is turned round.
+pub(super) type Stretch<'n> = (&'n [Node], bool);
+
+/// A change of a route: from `start` up to `rest` it goes by these stretches instead.
+pub(super) struct Change<'n> {
+    pub(super) start: usize,
+    pub(super) rest: usize,
+    pub(super) stretches: [Stretch<'n>; 2],
+    /// What it costs in swings and turns.
+    pub(super) links: f64,
+    /// The whole of the changed route.
+    pub(super) whole: Part,
 }
 
 impl<'l> Route<'l> {
@@ -91,6 +107,7 @@ impl<'l> Route<'l> {
             nodes,
             before: Vec::new(),
             after: Vec::new(),
+            delays: Vec::new(),
             links: 0.0,
         };
         route.refresh();
@@ -101,11 +118,15 @@ impl<'l> Route<'l> {
     pub(super) fn refresh(&mut self) {
         let each_s = self.list.each_s;
         self.before.clear();
-        let mut part = Part::NONE;
+        self.delays.clear();
+        let (mut part, mut delays) = (Part::NONE, 0.0);
         self.before.push(part);
-        for node in &self.nodes {
+        self.delays.push(delays);
+        for (place, node) in self.nodes.iter().enumerate() {
+            delays += self.list.delay(part.ends.max(node.from), place);
             part = part.then(Part::of(node, each_s));
             self.before.push(part);
+            self.delays.push(delays);
         }
         self.after.clear();
         part = Part::NONE;
@@ -152,18 +173,62 @@ impl<'l> Route<'l> {
 
     /// Its price.
     pub(super) fn price(&self) -> f64 {
-        self.links + self.list.waiting_price(self.ends(), self.nodes.len())
+        self.links + self.most_saved(0)
     }
 
-    /// The most that could be saved by waiting less.
-    pub(super) fn waiting(&self) -> f64 {
-        self.list.waiting_price(self.ends(), self.nodes.len())
+    /// The delays of the objects from a place on, together.
+    fn delays_from(&self, place: usize) -> f64 {
+        let at = |place: usize| self.delays.get(place).copied().unwrap_or_default();
+        at(self.nodes.len()) - at(place)
     }
 
-    /// How much dearer a changed route of as many objects is; nothing if it cannot be taken.
-    pub(super) fn change(&self, links: f64, changed: Part) -> Option<f64> {
-        let waiting = WAITING_DEG_PER_MINUTE * (changed.ends - self.ends()) / 60.0;
-        changed.can_be().then_some(links + waiting)
+    /// The most that can be saved by waiting less from a place on: the price of all waiting, and of the delays there.
+    pub(super) fn most_saved(&self, place: usize) -> f64 {
+        let waiting = self.list.delay(self.ends(), self.nodes.len());
+        waiting_price(waiting.max(0.0)) + delay_price(self.delays_from(place))
+    }
+
+    /// How much dearer a change makes the route; nothing if it cannot be taken or is sure to be no less than `bound`, as far
+    /// as it takes as many objects. Where it takes more, how it compares with other such changes.
+    pub(super) fn change(&self, change: &Change<'_>, bound: f64) -> Option<f64> {
+        /// From the same moment on the rest is as it was.
+        const SAME_S: f64 = 1e-6;
+        let waiting = waiting_price(change.whole.ends - self.ends());
+        let sure = change.links + waiting;
+        let old = self.delays_from(change.start);
+        if !change.whole.can_be() || sure - delay_price(old) >= bound {
+            return None;
+        }
+        let (mut free, mut place) = (self.up_to(change.start).ends, change.start);
+        let mut delays = 0.0;
+        let mut take = |node: &Node, free: &mut f64| {
+            let at = free.max(node.from);
+            delays += self.list.delay(at, place);
+            *free = at + self.list.each_s;
+            place += 1;
+        };
+        for (nodes, turned) in change.stretches {
+            if turned {
+                for node in nodes.iter().rev() {
+                    take(node, &mut free);
+                }
+            } else {
+                for node in nodes {
+                    take(node, &mut free);
+                }
+            }
+        }
+        let rest = self.nodes.get(change.rest..).unwrap_or_default();
+        let mut unchanged = change.rest;
+        for node in rest {
+            if (free - self.up_to(unchanged).ends).abs() < SAME_S {
+                break;
+            }
+            take(node, &mut free);
+            unchanged += 1;
+        }
+        delays += self.delays_from(unchanged);
+        Some(sure + delay_price(delays - old))
     }
 
     /// True if it takes more objects than another, or as many at a lower price.

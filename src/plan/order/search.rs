@@ -2,7 +2,7 @@
 //! the route better; then parts are torn out of the best route and put back, over and over, and kept where that is better.
 
 use crate::plan::order::given;
-use crate::plan::order::route::{Node, Part, Route, link};
+use crate::plan::order::route::{Node, Route, link};
 use crate::plan::order::{List, WAITING_DEG_PER_MINUTE};
 
 /// More rounds of changes than a route ever takes.
@@ -154,14 +154,4 @@ fn tear(best: &mut Route<'_>) {
             *best = route;
         }
     }
-}
-
-/// A route from these nodes is one that can be taken.
-#[cfg(test)]
-pub(super) fn can_be_taken(list: &List, nodes: &[Node]) -> bool {
-    let part = |node| Part::of(node, list.each_s);
-    let whole = nodes
-        .iter()
-        .fold(Part::NONE, |whole, node| whole.then(part(node)));
-    whole.can_be()
 }
