@@ -14,6 +14,7 @@ mod learnt;
 mod mark;
 mod misread;
 mod page;
+mod plan;
 mod pretended;
 mod program;
 mod records;

@@ -8,6 +8,7 @@ mod dome;
 mod equinoxes;
 mod fit;
 mod meeus;
+mod moon;
 mod mount;
 mod observing;
 mod published;
