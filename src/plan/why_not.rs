@@ -46,6 +46,13 @@ pub enum WhyNot {
     NoTime,
 }
 
+/// Whole degrees of an altitude and of one above it; with a decimal where they would look the same.
+fn apart(altitude: Altitude, above: Altitude) -> (String, String) {
+    let [low, high] = [altitude, above].map(Altitude::degrees);
+    let digits = usize::from(low.round() >= high.round());
+    (format!("{low:.digits$}°"), format!("{high:.digits$}°"))
+}
+
 /// What an object must be above.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Floor {
@@ -85,23 +92,27 @@ impl fmt::Display for WhyNot {
                 azimuth,
                 floor,
             } => {
-                let (degrees, toward) = (altitude.degrees(), compass_point(azimuth));
+                let toward = compass_point(azimuth);
                 match floor {
                     Floor::Level => write!(
                         f,
                         "never rises: at its highest {:.0}° below the horizon in the {toward}",
-                        -degrees
+                        -altitude.degrees()
                     ),
-                    Floor::Mask(mask) => write!(
-                        f,
-                        "never above the mask: at best at {degrees:.0}° in the {toward}, where it stands to {:.0}°",
-                        mask.degrees()
-                    ),
-                    Floor::Mount(lowest) => write!(
-                        f,
-                        "never high enough for the mount: at best at {degrees:.0}° in the {toward}, and it goes no lower than {:.0}°",
-                        lowest.degrees()
-                    ),
+                    Floor::Mask(mask) => {
+                        let (at, mask) = apart(altitude, mask);
+                        write!(
+                            f,
+                            "never above the mask: at best at {at} in the {toward}, where it stands to {mask}"
+                        )
+                    }
+                    Floor::Mount(lowest) => {
+                        let (at, lowest) = apart(altitude, lowest);
+                        write!(
+                            f,
+                            "never high enough for the mount: at best at {at} in the {toward}, and it goes no lower than {lowest}"
+                        )
+                    }
                 }
             }
             Self::UpInLight(twilight) => write!(
@@ -115,8 +126,9 @@ impl fmt::Display for WhyNot {
             }
             Self::NearMoon { apart, illuminated } => write!(
                 f,
-                "within {:.0}° of a bright Moon, lit to {:.0} %",
+                "within {:.0}° of a {}Moon, lit to {:.0} %",
                 apart.degrees().ceil(),
+                if illuminated < 0.5 { "" } else { "bright " },
                 illuminated * 100.0
             ),
             Self::Minutes => f.write_str("in reach for some minutes only"),
@@ -125,5 +137,29 @@ impl fmt::Display for WhyNot {
                 f.write_str("no time left: other objects take the time it can be had in")
             }
         }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn two_altitudes_never_look_the_same() {
+        let said = |at, lowest| {
+            let why = WhyNot::NeverUp {
+                altitude: Altitude::from_degrees(at),
+                azimuth: Azimuth::from_degrees(180.0),
+                floor: Floor::Mount(Altitude::from_degrees(lowest)),
+            };
+            why.to_string()
+        };
+        assert!(
+            said(9.4, 12.0).contains("at best at 9° in the south, and it goes no lower than 12°")
+        );
+        assert!(
+            said(11.6, 12.0)
+                .contains("at best at 11.6° in the south, and it goes no lower than 12.0°")
+        );
     }
 }

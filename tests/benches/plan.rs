@@ -70,7 +70,7 @@ fn plans(c: &mut Criterion) {
     };
     let night = almanac(&station);
     c.bench_function("the almanac of a night", |b| {
-        b.iter(|| almanac(black_box(&station)))
+        b.iter(|| almanac(black_box(&station)));
     });
     let many = targets(10_000);
     c.bench_function("windows of 10,000 objects", |b| {
