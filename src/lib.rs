@@ -9,7 +9,7 @@
 //! | 2 | [`sky`], [`metal`] | where things are for an observer at a place; the mount as built |
 //! | 3 | [`estimate`], [`catalog`] | what is known of the mount's errors; catalogues and target lists |
 //! | 4 | [`site`], [`dial`] | the files a user writes; **the main job**: what to set on each circle |
-//! | 5 | [`plan`] | the night ahead: sides of the pier, and until when |
+//! | 5 | [`plan`] | the night ahead: when each object can be had, from which side of the pier, in which order |
 //! | 6 | [`night`] | the session: events, state, journal, replay |
 //! | 7 | [`screen`] | the terminal |
 //! | 8 | [`command`] | one file per command |

@@ -39,7 +39,7 @@ pub(super) fn route(list: &List) -> Vec<Node> {
 }
 
 /// The objects that can be had and are not in a route.
-fn left_out(route: &Route<'_>) -> Vec<usize> {
+pub(super) fn left_out(route: &Route<'_>) -> Vec<usize> {
     let mut taken = vec![false; route.list.objects.len()];
     for node in &route.nodes {
         if let Some(taken) = taken.get_mut(node.object) {

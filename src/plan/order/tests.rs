@@ -2,6 +2,7 @@
 
 use proptest::prelude::*;
 
+use super::route::Route;
 use super::*;
 use crate::angle::{Altitude, Azimuth, Declination, HourAngle, Latitude};
 use crate::metal::{Kind, Limits, Side};
@@ -243,6 +244,32 @@ proptest! {
         }
         prop_assert_eq!(given.len(), most);
         prop_assert!(given.is_empty() || (list.tally(&given).price_deg() - least).abs() < 1e-6);
+    }
+
+    #[test]
+    fn every_change_of_a_route_makes_it_better((objects, each_s) in any_objects(25)) {
+        let list = list(&objects, each_s);
+        let mut route = Route::new(&list, given::route(&list));
+        let mut out: Vec<usize> = search::left_out(&route);
+        for _ in 0..3 {
+            let changes: [&mut dyn FnMut(&mut Route<'_>) -> bool; 5] = [
+                &mut |route| route.put_in(&mut out),
+                &mut |route| route.move_few(),
+                &mut |route| route.turn_round(),
+                &mut |route| route.take_from_elsewhere(),
+                &mut |route| route.take_others(&mut search::left_out(route)),
+            ];
+            for (number, change) in changes.into_iter().enumerate() {
+                let before = route.clone();
+                let did = change(&mut route);
+                // what is kept of the route is what it is worked out to be from its stops
+                let stops = list.stops(&route.nodes);
+                assert_can_be_taken(&objects, each_s, &stops);
+                prop_assert!((route.price() - list.tally(&stops).price_deg()).abs() < 1e-6);
+                prop_assert_eq!(did, route.is_better_than(&before), "{} {} {}", number, before.price(), route.price());
+            }
+            out = search::left_out(&route);
+        }
     }
 
     #[test]
