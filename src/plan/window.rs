@@ -14,7 +14,7 @@ use crate::plan::night::{Almanac, Span};
 use crate::plan::sides::Site;
 use crate::plan::stand::Stand;
 use crate::plan::why_not::{Floor, WhyNot};
-use crate::sky::{Body, Course, Observed, Passage, Source, Turning, crossings};
+use crate::sky::{Body, Course, Observed, Passage, Source, Turning, crossings_between, look_times};
 use crate::time::Utc;
 
 /// A time in which an object can be had from one side of the pier.
@@ -66,11 +66,11 @@ pub struct Watch<'a> {
     moon: Course<'a>,
 }
 
-/// What is seen of an object at one time.
+/// An object as it stands at one time.
 struct Look {
+    utc: Utc,
+    after_s: f64,
     place: Observed,
-    /// How far the Moon is too far away to matter; negative if it is too near.
-    clear_of_moon: Angle,
 }
 
 /// An object under way, and the Moon.
@@ -85,21 +85,16 @@ fn lesser(a: Angle, b: Angle) -> Angle {
 }
 
 impl Sight<'_> {
-    fn look(&self, after_s: f64) -> Look {
-        let place = self.object.observed(after_s);
-        let clear_of_moon = if self.from_moon > Angle::ZERO {
-            let moon = self.moon.observed(after_s);
-            let beyond = moon.separation(&place) - self.from_moon;
-            let below = -moon.altitude.angle();
-            // either will do
-            if beyond < below { below } else { beyond }
-        } else {
-            Angle::TURN
-        };
-        Look {
-            place,
-            clear_of_moon,
+    /// How much farther the Moon is than it must be, or how far below the horizon; negative if it is too near.
+    fn clear_of_moon(&self, place: &Observed, after_s: f64) -> Angle {
+        if self.from_moon <= Angle::ZERO {
+            return Angle::TURN;
         }
+        let moon = self.moon.observed(after_s);
+        let beyond = moon.separation(place) - self.from_moon;
+        let below = -moon.altitude.angle();
+        // either will do
+        if beyond < below { below } else { beyond }
     }
 }
 
@@ -163,16 +158,27 @@ impl<'a> Watch<'a> {
         let mut windows = Vec::new();
         for dark in self.almanac.dark_as_asked(needs.light) {
             let (start, span_s) = (self.after_s(dark.from), dark.seconds());
+            let seen: Vec<(f64, Observed)> = look_times(span_s)
+                .into_iter()
+                .map(|at| (at, sight.object.observed(start + at)))
+                .collect();
             for &side in self.site.sides() {
-                let margin = |at: f64| {
-                    let look = sight.look(start + at);
-                    let within = self.site.within(side, look.place.hour_angle);
-                    lesser(
-                        lesser(self.site.above(&look.place), within),
-                        look.clear_of_moon,
-                    )
+                let margin_of = |at: f64, place: &Observed| {
+                    let within = self.site.within(side, place.hour_angle);
+                    let margin = lesser(self.site.above(place), within);
+                    if margin < Angle::ZERO {
+                        // the Moon makes it no better
+                        margin
+                    } else {
+                        lesser(margin, sight.clear_of_moon(place, start + at))
+                    }
                 };
-                let passages = crossings(span_s, |at| margin(at).radians());
+                let margin = |at: f64| margin_of(at, &sight.object.observed(start + at));
+                let looks: Vec<(f64, f64)> = seen
+                    .iter()
+                    .map(|(at, place)| (*at, margin_of(*at, place).radians()))
+                    .collect();
+                let passages = crossings_between(&looks, |at| margin(at).radians());
                 let mut from = (margin(0.0) >= Angle::ZERO).then_some(0.0);
                 let mut open = |from: f64, until: f64| {
                     let middle = start + f64::midpoint(from, until);
@@ -246,7 +252,13 @@ impl<'a> Watch<'a> {
         let looks = (self.turning.span_s() / LOOK_S).ceil();
         #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // a span of days
         let times = (0..=looks as u32).map(|look| f64::from(look) * LOOK_S);
-        let looks: Vec<(Utc, Look)> = times.map(|at| (self.utc(at), sight.look(at))).collect();
+        let looks: Vec<Look> = times
+            .map(|at| Look {
+                utc: self.utc(at),
+                after_s: at,
+                place: sight.object.observed(at),
+            })
+            .collect();
         let up = |look: &Look| self.site.above(&look.place) >= Angle::ZERO;
         let dark = |utc: Utc| almanac.dark(light).iter().any(|span| span.holds(utc));
         let reached = |look: &Look| {
@@ -254,33 +266,31 @@ impl<'a> Watch<'a> {
                 |side: &Side| self.site.within(*side, look.place.hour_angle) >= Angle::ZERO;
             self.site.sides().iter().any(within)
         };
-        let mut left: Vec<&(Utc, Look)> = looks.iter().filter(|(_, look)| up(look)).collect();
+        let clear = |look: &Look| sight.clear_of_moon(&look.place, look.after_s);
+        let mut left: Vec<&Look> = looks.iter().filter(|look| up(look)).collect();
         if left.is_empty() {
             return self.never_up(&looks);
         }
-        left.retain(|(utc, _)| dark(*utc));
+        left.retain(|look| dark(look.utc));
         if left.is_empty() {
             return WhyNot::UpInLight(light);
         }
-        left.retain(|(_, look)| reached(look));
+        left.retain(|look| reached(look));
         if left.is_empty() {
             return WhyNot::Limits;
         }
-        let farthest = left
-            .iter()
-            .map(|(_, look)| sight.from_moon + look.clear_of_moon)
-            .fold(
-                Angle::ZERO,
-                |far, apart| if apart > far { apart } else { far },
-            );
-        left.retain(|(_, look)| look.clear_of_moon >= Angle::ZERO);
+        let farthest = left.iter().map(|look| sight.from_moon + clear(look)).fold(
+            Angle::ZERO,
+            |far, apart| if apart > far { apart } else { far },
+        );
+        left.retain(|look| clear(look) >= Angle::ZERO);
         if left.is_empty() {
             return WhyNot::NearMoon {
                 apart: farthest,
                 illuminated: almanac.moon.illuminated,
             };
         }
-        left.retain(|(utc, _)| almanac.asked.holds(*utc));
+        left.retain(|look| almanac.asked.holds(look.utc));
         if left.is_empty() {
             WhyNot::OtherHours
         } else {
@@ -289,12 +299,10 @@ impl<'a> Watch<'a> {
     }
 
     /// What is in the way of something never above its floor: at the look where the least is missing.
-    fn never_up(&self, looks: &[(Utc, Look)]) -> WhyNot {
+    fn never_up(&self, looks: &[Look]) -> WhyNot {
         let above = |look: &Look| self.site.above(&look.place).radians();
-        let best = looks
-            .iter()
-            .max_by(|(_, a), (_, b)| above(a).total_cmp(&above(b)));
-        let Some((_, Look { place, .. })) = best else {
+        let best = looks.iter().max_by(|a, b| above(a).total_cmp(&above(b)));
+        let Some(Look { place, .. }) = best else {
             return WhyNot::Minutes;
         };
         let mask = self.site.horizon.altitude_at(place.azimuth);

@@ -25,6 +25,8 @@ const TABLE_STEP_DEG: f64 = 0.1;
 #[derive(Clone, Debug)]
 pub struct Turning {
     start: Moment,
+    /// Half-way through.
+    middle: Moment,
     span_s: f64,
     /// Refraction by true altitude.
     lifts: Vec<Angle>,
@@ -57,6 +59,7 @@ impl Turning {
         let lift = |degrees| refraction::at_true(Altitude::from_degrees(degrees), air);
         Self {
             start: *start,
+            middle: start.later(span_s / 2.0),
             span_s,
             lifts: altitudes.map(lift).collect(),
         }
@@ -85,8 +88,7 @@ impl Turning {
     pub fn course(&self, source: &Source) -> Course<'_> {
         let way = match source {
             Source::Catalogue(_) => {
-                let middle = self.start.later(self.span_s / 2.0);
-                let place = middle.apparent(source);
+                let place = self.middle.apparent(source);
                 Way::Fixed(place.right_ascension, place.declination)
             }
             Source::Body(body) => {

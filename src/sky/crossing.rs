@@ -28,17 +28,26 @@ pub struct Crossing {
 /// All the crossings of a height within so many seconds, in order. The height is a function of seconds from the
 /// beginning, continuous, in any unit.
 pub fn crossings(span_s: f64, height: impl Fn(f64) -> f64) -> Vec<Crossing> {
-    let mut found = Vec::new();
+    let times = look_times(span_s).into_iter();
+    let looks: Vec<(f64, f64)> = times.map(|at| (at, height(at))).collect();
+    crossings_between(&looks, height)
+}
+
+/// When a height is looked at within so many seconds; never in no time.
+#[must_use]
+pub fn look_times(span_s: f64) -> Vec<f64> {
     if !(span_s > 0.0 && span_s.is_finite()) {
-        return found;
+        return Vec::new();
     }
     let looks = (span_s / LOOK_S).ceil();
     #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // a span of days
-    let times: Vec<f64> = (0..=looks as u32)
-        .map(|look| f64::from(look) / looks * span_s)
-        .collect();
-    let heights: Vec<f64> = times.iter().map(|&at| height(at)).collect();
-    let looks: Vec<(f64, f64)> = times.into_iter().zip(heights).collect();
+    let times = (0..=looks as u32).map(|look| f64::from(look) / looks * span_s);
+    times.collect()
+}
+
+/// All the crossings of a height that has been looked at already, at each of [`look_times`].
+pub fn crossings_between(looks: &[(f64, f64)], height: impl Fn(f64) -> f64) -> Vec<Crossing> {
+    let mut found = Vec::new();
     for (place, pair) in looks.windows(2).enumerate() {
         let &[from, to] = pair else { continue };
         if (from.1 >= 0.0) != (to.1 >= 0.0) {

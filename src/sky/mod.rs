@@ -35,7 +35,7 @@ pub use body::Body;
 pub use catalogue_place::{CataloguePlace, Equinox};
 pub use compass::compass_point;
 pub use course::{Course, Turning};
-pub use crossing::{Crossing, crossings};
+pub use crossing::{Crossing, crossings, crossings_between, look_times};
 pub use equinox::EquinoxFault;
 pub use horizon::HorizonMask;
 pub use moment::Moment;

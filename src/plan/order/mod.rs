@@ -11,7 +11,7 @@
 //!
 //! Where the tube is before the first object is not known: the way there costs nothing. Lists of up to [`EXACT_UP_TO`]
 //! objects get the best order there is (`exact.rs`); longer ones a good one (`search.rs`), which is never worse than the
-//! order given: that is where one of the searches starts from. Nothing is left to chance or to the clock: the same
+//! order given: where nothing better is found, that is what is worked on. Nothing is left to chance or to the clock: the same
 //! list gives the same order.
 //!
 //! Times are seconds from the night's noon.

@@ -203,7 +203,8 @@ impl Route<'_> {
         let most_saved = self.most_saved(0);
         let mut weigh = |gap: usize, whole: &dyn Fn(Part) -> Part| {
             let (from, to) = (self.previous(gap), self.node(gap));
-            for turned in [false, true] {
+            // one alone is the same turned round
+            for turned in [false, true].into_iter().take(count.min(2)) {
                 let (few, first, last) = if turned {
                     (round, last, first)
                 } else {

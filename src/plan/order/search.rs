@@ -1,5 +1,6 @@
-//! A good order of a long list: from several beginnings, one of them the order given, changes are tried as long as one makes
-//! the route better; then parts are torn out of the best route and put back, over and over, and kept where that is better.
+//! A good order of a long list: from two beginnings, and from the order given where that is better than what comes of
+//! both, changes are tried as long as one makes the route better; then parts are torn out of the best route and put back,
+//! over and over, and kept where that is better.
 
 use crate::plan::order::given;
 use crate::plan::order::route::{Node, Route, link};
@@ -12,23 +13,22 @@ const MOST_ROUNDS: usize = 60;
 const MOST_TEARS: usize = 300;
 
 /// Trying all changes of a route takes time as the square of its length: torn so often that this many are tried.
-const LOOKS: usize = 150_000;
+const LOOKS: usize = 25_000;
+
+/// Objects left out are tried so many times over, on all the places of a route, each time it is made better.
+const LOOKS_AT_OTHERS: usize = 1_000_000;
 
 /// A good order.
 pub(super) fn route(list: &List) -> Vec<Node> {
-    let beginnings = [given::route(list), by_end(list), by_way(list)];
-    let mut best: Option<Route<'_>> = None;
-    for nodes in beginnings {
-        let mut route = Route::new(list, nodes);
-        let mut out = left_out(&route);
-        improve(&mut route, &mut out);
-        if best.as_ref().is_none_or(|best| route.is_better_than(best)) {
-            best = Some(route);
-        }
+    let [mut best, other] = [by_end(list), by_way(list)].map(|nodes| improved(list, nodes));
+    if other.is_better_than(&best) {
+        best = other;
     }
-    let Some(mut best) = best else {
-        return Vec::new();
-    };
+    // seldom a good beginning, and worked on only where it is
+    let given = Route::new(list, given::route(list));
+    if given.is_better_than(&best) {
+        best = improved(list, given.nodes);
+    }
     tear(&mut best);
     let objects: Vec<usize> = best.nodes.iter().map(|node| node.object).collect();
     let again = Route::new(list, given::best_windows(list, &objects));
@@ -53,13 +53,23 @@ pub(super) fn left_out(route: &Route<'_>) -> Vec<usize> {
         .collect()
 }
 
-fn improve(route: &mut Route<'_>, out: &mut Vec<usize>) {
+fn improved(list: &List, nodes: Vec<Node>) -> Route<'_> {
+    let mut route = Route::new(list, nodes);
+    improve(&mut route);
+    route
+}
+
+fn improve(route: &mut Route<'_>) {
+    let mut out = left_out(route);
+    let mut looks = 0;
     for _ in 0..MOST_ROUNDS {
-        let mut did = !out.is_empty() && route.put_in(out);
+        let others = !out.is_empty() && looks < LOOKS_AT_OTHERS;
+        looks += out.len() * route.nodes.len();
+        let mut did = others && route.put_in(&mut out);
         did |= route.move_few();
         did |= route.turn_round();
         did |= route.take_from_elsewhere();
-        did |= !out.is_empty() && route.take_others(out);
+        did |= others && route.take_others(&mut out);
         if !did {
             break;
         }
@@ -148,8 +158,7 @@ fn tear(best: &mut Route<'_>) {
         let turn = numbers.below(torn.len());
         torn.rotate_left(turn);
         route.put_in(&mut torn);
-        let mut out = left_out(&route);
-        improve(&mut route, &mut out);
+        improve(&mut route);
         if route.is_better_than(best) {
             *best = route;
         }
