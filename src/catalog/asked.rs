@@ -102,6 +102,11 @@ impl Asked {
         }
     }
 
+    /// Every spelling of it, folded.
+    pub fn spellings(&self) -> impl Iterator<Item = &str> {
+        self.spellings.iter().map(String::as_str)
+    }
+
     /// True if nothing was asked for.
     #[must_use]
     pub fn is_empty(&self) -> bool {

@@ -1,7 +1,11 @@
 //! All catalogues together: from a name to a target.
 
+use std::sync::{Arc, OnceLock};
+
 use crate::catalog::asked::{Asked, Fit};
+use crate::catalog::builtin_index::BuiltInIndex;
 use crate::catalog::deep_sky::DeepSky;
+use crate::catalog::own::OwnCatalogue;
 use crate::catalog::stars::{Star, StarNames, Stars};
 use crate::catalog::target::Origin;
 use crate::catalog::{Filter, Target, given, solar_system};
@@ -18,6 +22,8 @@ pub struct Catalogue {
     pub(super) messier: DeepSky,
     pub(super) ngc: DeepSky,
     pub(super) own: Vec<Target>,
+    pub(super) catalogues: Vec<Arc<OwnCatalogue>>,
+    built_in: OnceLock<Arc<BuiltInIndex>>,
 }
 
 /// Why a text is no target.
@@ -107,6 +113,8 @@ impl Catalogue {
             messier: DeepSky::new(Origin::Messier, messier),
             ngc: DeepSky::new(Origin::Ngc, ngc),
             own: Vec::new(),
+            catalogues: Vec::new(),
+            built_in: OnceLock::new(),
         }
     }
 
@@ -115,6 +123,24 @@ impl Catalogue {
     pub fn with_own(mut self, own: Vec<Target>) -> Self {
         self.own.extend(own);
         self
+    }
+
+    /// With the observer's own catalogues, which win over built-in ones, and the earlier over the later.
+    #[must_use]
+    pub fn with_catalogues(mut self, own: impl IntoIterator<Item = Arc<OwnCatalogue>>) -> Self {
+        self.catalogues.extend(own);
+        self
+    }
+
+    /// Makes ready for a search that will follow: the first one would else take a few milliseconds longer.
+    pub fn prepare_search(&self) {
+        let _ = self.built_in();
+    }
+
+    /// The index of the built-in tables, made when it is first asked for.
+    pub(super) fn built_in(&self) -> &BuiltInIndex {
+        self.built_in
+            .get_or_init(|| Arc::new(BuiltInIndex::new(&self.stars, &[self.messier, self.ngc])))
     }
 
     /// The target of a name, or of coordinates, forgiving of case, gaps and usual spellings.
@@ -165,6 +191,9 @@ impl Catalogue {
             .find(|target| target.names().any(|name| asked.is(name)));
         if let Some(own) = own {
             return Some(own.clone());
+        }
+        if let Some(own) = self.catalogues.iter().find_map(|own| own.named(asked)) {
+            return Some(own);
         }
         if let Some(body) = Body::ALL.into_iter().find(|body| asked.is(body.name())) {
             return Some(solar_system::target(body));

@@ -152,6 +152,12 @@ impl Constellation {
             .ok()
     }
 
+    /// Where it stands among [`CONSTELLATIONS`], as the row of an index keeps it.
+    #[must_use]
+    pub fn position_in_table(&self) -> Option<u8> {
+        u8::try_from(Self::position(self.abbreviation)?).ok()
+    }
+
     /// The constellation a folded text spells whole: abbreviation, name or genitive.
     fn spelt(folded_text: &str) -> Option<&'static Self> {
         CONSTELLATIONS.iter().find(|entry| {

@@ -96,7 +96,23 @@ fn listed() -> String {
     words.join(", ")
 }
 
+// a row of an index has a bit for each kind
+const _: () = assert!(Kind::ALL.len() <= 32);
+
 impl Kind {
+    /// A bit of its own among those of all kinds.
+    #[must_use]
+    pub const fn bit(self) -> u32 {
+        1 << self as u32
+    }
+
+    /// The bits of all kinds that someone asking for this one wants.
+    #[must_use]
+    pub fn bits_asked(self) -> u32 {
+        let wanted = Self::ALL.iter().filter(|kind| kind.is_a(self));
+        wanted.fold(0, |bits, kind| bits | kind.bit())
+    }
+
     /// True if `self` is what someone asking for `asked` wants: an asked "nebula" is any nebula, a
     /// "cluster" in a nebula is an open cluster, a double star is a star.
     #[must_use]

@@ -7,23 +7,91 @@
 use crate::catalog::Greek;
 use crate::catalog::fold::Words;
 
-/// For a word given whole.
-const WHOLE: f64 = 1.0;
 /// For the beginning of a word, and what is added as it nears the whole.
 const BEGINNING: (f64, f64) = (0.8, 0.2);
-/// For the first digits of a number, which are another number.
-const FIRST_DIGITS: f64 = 0.6;
-/// For a word with one slip.
-const ONE_SLIP: f64 = 0.7;
 /// The shortest word in which a slip is looked for: shorter ones are too easily another.
 const SLIP_FROM_LETTERS: usize = 4;
 /// The shortest words that may tell of the thing without being of its name, right and with a slip.
 const BESIDE_FROM_LETTERS: usize = 3;
 const BESIDE_SLIP_FROM_LETTERS: usize = 5;
 /// For a word that is not of the name but tells of the thing.
-const BESIDE: f64 = 0.5;
+pub(super) const BESIDE: f64 = 0.5;
 /// The share of the score that depends on how much of the name was typed.
 const OF_THE_NAME: f64 = 0.1;
+
+/// How near a word typed is to a word of a name.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum Nearness {
+    /// It is that word.
+    Whole,
+    /// It is the first letters of it.
+    Beginning {
+        /// So many.
+        letters: usize,
+        /// Of so many.
+        of: usize,
+    },
+    /// It is the first digits of it, which are another number.
+    FirstDigits,
+    /// It is that word but for one slip.
+    OneSlip,
+}
+
+impl Nearness {
+    /// On the scale of likeness.
+    pub fn value(self) -> f64 {
+        match self {
+            Self::Whole => 1.0,
+            Self::Beginning { letters, of } => {
+                let (least, more) = BEGINNING;
+                least + more * letters as f64 / of.max(1) as f64
+            }
+            Self::FirstDigits => 0.6,
+            Self::OneSlip => 0.7,
+        }
+    }
+
+    /// Of two folded words; nothing if they are not near.
+    fn of(typed: &str, word: &str) -> Option<Self> {
+        if typed == word {
+            return Some(Self::Whole);
+        }
+        if word.starts_with(typed) {
+            return Some(if is_number(word) {
+                Self::FirstDigits
+            } else {
+                Self::Beginning {
+                    letters: typed.len(),
+                    of: word.len(),
+                }
+            });
+        }
+        (may_have_a_slip(typed) && is_one_slip(typed, word)).then_some(Self::OneSlip)
+    }
+}
+
+/// True of a folded word that is a number.
+pub(super) fn is_number(word: &str) -> bool {
+    word.starts_with(|c: char| c.is_ascii_digit())
+}
+
+/// True of a folded word in which a slip is looked for.
+pub(super) fn may_have_a_slip(typed: &str) -> bool {
+    !is_number(typed) && typed.len() >= SLIP_FROM_LETTERS
+}
+
+/// True if a word is another but for one slip.
+pub(super) fn is_one_slip(typed: &str, word: &str) -> bool {
+    !is_number(word)
+        && may_be_one_slip(typed.as_bytes(), word.as_bytes())
+        && strsim::damerau_levenshtein(typed, word) == 1
+}
+
+/// The likeness of a whole name: the mean of those of the words typed, a little less where little of the name was typed.
+pub(super) fn whole(sum: f64, typed: usize, of_name: usize, length: usize) -> f64 {
+    let share = of_name as f64 / length.max(of_name).max(1) as f64;
+    sum / typed.max(1) as f64 * (1.0 - OF_THE_NAME + OF_THE_NAME * share)
+}
 
 /// What was typed.
 #[derive(Clone, Debug)]
@@ -64,6 +132,11 @@ impl Typed {
         self.0.is_empty()
     }
 
+    /// The words.
+    pub fn words(&self) -> impl Iterator<Item = &str> {
+        self.0.iter().map(String::as_str)
+    }
+
     /// The digits typed after "HIP", if that is all.
     #[must_use]
     pub fn hip_digits(&self) -> Option<&str> {
@@ -85,7 +158,7 @@ impl Typed {
     pub fn beside(&self, words: &Words) -> Vec<f64> {
         let strict = |typed: &String| {
             let likeness = likest(typed, words);
-            let slip = likeness <= ONE_SLIP && typed.len() < BESIDE_SLIP_FROM_LETTERS;
+            let slip = likeness <= Nearness::OneSlip.value() && typed.len() < BESIDE_SLIP_FROM_LETTERS;
             if slip || typed.len() < BESIDE_FROM_LETTERS {
                 0.0
             } else {
@@ -93,17 +166,6 @@ impl Typed {
             }
         };
         self.0.iter().map(strict).collect()
-    }
-
-    /// True if no name such as "NGC 2099" can fit, whatever else it is; `best` says for every word
-    /// typed how like it can be to what is beside a name.
-    #[must_use]
-    pub fn need_a_name(&self, best: &[f64]) -> bool {
-        let number = |word: &str| word.starts_with(|c: char| c.is_ascii_digit());
-        let fits =
-            |word: &String| number(word) || "ngc".starts_with(word) || "ic".starts_with(word);
-        let mut words = self.0.iter().zip(best);
-        words.any(|(word, best)| *best <= 0.0 && !fits(word))
     }
 
     /// How like a name is; 0 if a word typed is nowhere in it, nor beside it.
@@ -137,8 +199,7 @@ impl Typed {
             }
         }
         let length = words.count() + usize::from(last.is_some());
-        let share = of_name as f64 / length.max(of_name).max(1) as f64;
-        sum / self.0.len() as f64 * (1.0 - OF_THE_NAME + OF_THE_NAME * share)
+        whole(sum, self.0.len(), of_name, length)
     }
 }
 
@@ -164,25 +225,7 @@ fn likest(typed: &str, words: &Words) -> f64 {
 
 /// How like one word is to another, both folded.
 fn word_likeness(typed: &str, word: &str) -> f64 {
-    if typed == word {
-        return WHOLE;
-    }
-    let number = |word: &str| word.starts_with(|c: char| c.is_ascii_digit());
-    if word.starts_with(typed) {
-        if number(word) {
-            return FIRST_DIGITS;
-        }
-        let (least, more) = BEGINNING;
-        return least + more * typed.len() as f64 / word.len() as f64;
-    }
-    if number(typed) || number(word) || !may_be_one_slip(typed.as_bytes(), word.as_bytes()) {
-        return 0.0;
-    }
-    if strsim::damerau_levenshtein(typed, word) == 1 {
-        ONE_SLIP
-    } else {
-        0.0
-    }
+    Nearness::of(typed, word).map_or(0.0, Nearness::value)
 }
 
 /// A quick look that passes every pair one slip apart, and few others: what is alike at both ends

@@ -6,19 +6,23 @@
 //! read in place, so that a run that wants one target pays for one.
 
 mod asked;
+mod builtin_index;
 mod catalogue;
 pub mod constellation;
 mod deep_sky;
 mod fold;
 pub mod given;
 pub mod greek;
+pub mod index;
 pub mod kind;
 mod likeness;
 pub mod list;
+mod own;
 pub mod report;
 mod rows;
 mod scorer;
 pub mod search;
+mod sieve;
 mod solar_system;
 mod stars;
 mod surroundings;
@@ -29,6 +33,7 @@ pub use constellation::Constellation;
 pub use greek::Greek;
 pub use kind::{Kind, UnknownKind};
 pub use list::{TargetList, clean};
+pub use own::{OwnCatalogue, Rows};
 pub use report::FindReport;
 pub use search::{Filter, Found, Near};
 pub use target::{Origin, Target};

@@ -5,8 +5,7 @@ use crate::catalog::fold::Words;
 use crate::catalog::likeness::Typed;
 use crate::catalog::stars::{Star, StarNames};
 use crate::catalog::surroundings::Surroundings;
-use crate::catalog::{Constellation, Kind, Target, solar_system};
-use crate::sky::Body;
+use crate::catalog::{Constellation, Kind, Target};
 
 /// What is typed, and the words of one entry after another.
 #[derive(Clone, Debug)]
@@ -35,6 +34,12 @@ impl Scorer {
         &self.typed
     }
 
+    /// What the words typed tell of kinds and constellations.
+    #[must_use]
+    pub const fn around(&self) -> &Surroundings {
+        &self.around
+    }
+
     /// Takes what stands beside the names that follow.
     fn beside(
         &mut self,
@@ -55,31 +60,20 @@ impl Scorer {
         best
     }
 
-    /// The likeness of a target of the observer's own.
-    pub fn own(&mut self, target: &Target) -> f64 {
+    /// The likeness of a target by its names; 1 where nothing was typed.
+    pub fn target(&mut self, target: &Target) -> f64 {
+        if self.typed.is_empty() {
+            return 1.0;
+        }
         let position = || Constellation::position(target.constellation?.abbreviation);
         self.beside(|| target.kind, position);
         self.best(target.names())
     }
 
-    /// The likeness of a body of the solar system.
-    pub fn body(&mut self, body: Body) -> f64 {
-        self.beside(|| solar_system::kind(body), || None);
-        self.best([body.name()])
-    }
-
     /// The likeness of a cluster, nebula or galaxy.
     pub fn deep_sky(&mut self, object: DeepSkyObject) -> f64 {
-        // most of the NGC, done with at little cost
-        let number = object.only_number();
-        if number.is_some() && self.around.need_a_name() {
-            return 0.0;
-        }
         self.beside(|| object.kind(), || object.constellation_position());
-        match number {
-            Some(words) => self.typed.likeness(words.into_iter(), None, &self.beside),
-            None => self.best(object.names()),
-        }
+        self.best(object.names())
     }
 
     /// The likeness of a star by its names.

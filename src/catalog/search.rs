@@ -1,12 +1,12 @@
 //! The search through all catalogues: one engine for the command and for the screen.
 
-use std::cmp::Ordering;
-
 use crate::angle::Angle;
+use crate::catalog::builtin_index::Entry;
 use crate::catalog::catalogue::distance_deg;
-use crate::catalog::deep_sky::DeepSkyObject;
+use crate::catalog::index::{Candidates, Index};
 use crate::catalog::likeness::Typed;
 use crate::catalog::scorer::Scorer;
+use crate::catalog::sieve::Sieve;
 use crate::catalog::stars::Star;
 use crate::catalog::{Catalogue, Constellation, Kind, Target, solar_system};
 use crate::sky::{Body, CataloguePlace};
@@ -57,20 +57,21 @@ pub struct Found {
     pub score: f64,
 }
 
-/// Something in the catalogues, not yet made into a target.
-#[derive(Clone, Copy)]
-enum Entry<'a> {
-    Own(&'a Target),
-    Body(Body),
-    DeepSky(DeepSkyObject),
-    Star(Star),
-}
+/// Rows of a large catalogue read and found less like what was typed than their words promised, after which a search gives
+/// up looking for better: it only happens where the words typed belong to different names of one thing.
+const MOST_DISAPPOINTMENTS: usize = 20_000;
 
-/// An entry that fits.
-struct Hit<'a> {
-    entry: Entry<'a>,
+/// Something in the catalogues that fits.
+struct Hit {
+    target: Target,
     score: f64,
     magnitude: f64,
+}
+
+/// The best found so far.
+struct Best {
+    hits: Vec<Hit>,
+    limit: usize,
 }
 
 impl Catalogue {
@@ -79,149 +80,172 @@ impl Catalogue {
     /// Without words, everything that passes the filter, the brightest first.
     #[must_use]
     pub fn search(&self, typed: &str, filter: &Filter) -> Vec<Found> {
-        let words = Typed::new(typed);
-        let all = if words.is_empty() {
-            self.everything()
-        } else {
-            self.alike(words)
-        };
-        let mut hits: Vec<Hit<'_>> = all
-            .into_iter()
-            .filter(|(entry, _)| filter.passes(entry))
-            .map(|(entry, score)| Hit {
-                entry,
-                score,
-                magnitude: entry.magnitude().unwrap_or(f64::INFINITY),
-            })
-            .collect();
-        // of ten thousand galaxies only the first few need be in order
-        if filter.limit < hits.len() {
-            hits.select_nth_unstable_by(filter.limit, Hit::order);
-            hits.truncate(filter.limit);
+        self.search_among(typed, filter, &|_| true)
+    }
+
+    /// The same among those of which something is true that only the target itself can tell.
+    #[must_use]
+    pub fn search_among(
+        &self,
+        typed: &str,
+        filter: &Filter,
+        passes: &dyn Fn(&Target) -> bool,
+    ) -> Vec<Found> {
+        let mut scorer = Scorer::new(Typed::new(typed));
+        let mut best = Best::of(filter.limit);
+        let bodies: Vec<Target> = Body::ALL.into_iter().map(solar_system::target).collect();
+        for target in self.own.iter().chain(&bodies) {
+            if filter.passes(target) && passes(target) {
+                let score = scorer.target(target);
+                best.offer(score, || Some(target.clone()));
+            }
         }
-        hits.sort_by(Hit::order);
-        hits.into_iter()
-            .filter_map(|Hit { entry, score, .. }| {
+        for own in &self.catalogues {
+            let read = |scorer: &mut Scorer, row| {
+                let target = own.row(row)?;
+                let score = scorer.target(&target);
+                passes(&target).then_some((score, target))
+            };
+            best.join(looked_through(own.index(), &mut scorer, filter, read));
+        }
+        let built_in = self.built_in();
+        if let Some(index) = &built_in.index {
+            let read = |scorer: &mut Scorer, row| {
+                let entry = built_in.entry(row)?;
+                let score = self.score(scorer, entry);
+                if score <= 0.0 {
+                    return None;
+                }
                 let target = self.target(entry)?;
-                Some(Found { target, score })
-            })
-            .collect()
-    }
-
-    fn everything(&self) -> Vec<(Entry<'_>, f64)> {
-        let own = self.own.iter().map(Entry::Own);
-        let bodies = Body::ALL.into_iter().map(Entry::Body);
-        let deep_sky = self.messier.all().chain(self.ngc.all()).map(Entry::DeepSky);
-        let stars = self.stars.all().map(Entry::Star);
-        own.chain(bodies)
-            .chain(deep_sky)
-            .chain(stars)
-            .map(|entry| (entry, 1.0))
-            .collect()
-    }
-
-    /// Everything with a likeness to the words above nothing.
-    fn alike(&self, typed: Typed) -> Vec<(Entry<'_>, f64)> {
-        let mut scorer = Scorer::new(typed);
-        let mut alike = Vec::new();
-        for own in &self.own {
-            alike.push((Entry::Own(own), scorer.own(own)));
-        }
-        for body in Body::ALL {
-            alike.push((Entry::Body(body), scorer.body(body)));
-        }
-        for object in self.messier.all().chain(self.ngc.all()) {
-            let score = scorer.deep_sky(object);
-            if score > 0.0 {
-                alike.push((Entry::DeepSky(object), score));
-            }
-        }
-        for names in self.stars.named() {
-            let score = scorer.star(&names);
-            if score > 0.0 {
-                alike.extend(self.star(&names).map(|star| (Entry::Star(star), score)));
-            }
+                passes(&target).then_some((score, target))
+            };
+            best.join(looked_through(index, &mut scorer, filter, read));
         }
         if let Some(number) = scorer.typed().hip_digits() {
             let begins = |star: &Star| star.hip_text().starts_with(number);
             for star in self.stars.all().filter(begins) {
-                alike.push((Entry::Star(star), scorer.hip(star)));
+                let passing = |target: &Target| filter.passes(target) && passes(target);
+                best.offer(scorer.hip(star), || self.stars.target(star).filter(passing));
             }
         }
-        alike.retain(|(_, score)| *score > 0.0);
-        alike
+        best.found()
     }
 
-    fn target(&self, entry: Entry<'_>) -> Option<Target> {
+    fn score(&self, scorer: &mut Scorer, entry: Entry) -> f64 {
+        if scorer.typed().is_empty() {
+            return 1.0;
+        }
         match entry {
-            Entry::Own(target) => Some(target.clone()),
-            Entry::Body(body) => Some(solar_system::target(body)),
+            Entry::DeepSky(object) => scorer.deep_sky(object),
+            Entry::Star(star) => {
+                let names = self.stars.names_of(star);
+                names.map_or(0.0, |names| scorer.star(&names))
+            }
+        }
+    }
+
+    fn target(&self, entry: Entry) -> Option<Target> {
+        match entry {
             Entry::DeepSky(object) => object.target(),
             Entry::Star(star) => self.stars.target(star),
         }
     }
 }
 
-impl Hit<'_> {
-    /// The best first, among equals the brightest.
-    fn order(a: &Self, b: &Self) -> Ordering {
-        b.score
-            .total_cmp(&a.score)
-            .then(a.magnitude.total_cmp(&b.magnitude))
+/// The best of the rows of an index; `read` gives a row's score and target, or nothing if it does not pass.
+fn looked_through(
+    index: &Index,
+    scorer: &mut Scorer,
+    filter: &Filter,
+    mut read: impl FnMut(&mut Scorer, usize) -> Option<(f64, Target)>,
+) -> Best {
+    let candidates = if scorer.typed().is_empty() {
+        index.everything()
+    } else {
+        index.candidates(scorer.typed(), scorer.around())
+    };
+    let sieve = Sieve::new(index, filter);
+    let mut best = Best::of(filter.limit);
+    let mut disappointments = 0;
+    for (row, most) in candidates.iter() {
+        // what is still to come is no better, and among equals no brighter
+        if best.is_full_of(most - Candidates::step()) || disappointments > MOST_DISAPPOINTMENTS {
+            break;
+        }
+        if !sieve.passes(row) {
+            continue;
+        }
+        let Some((score, target)) = read(scorer, row) else {
+            continue;
+        };
+        disappointments += usize::from(score < most - Candidates::step());
+        best.offer(score, || Some(target));
     }
+    best
 }
 
-impl Entry<'_> {
-    fn magnitude(&self) -> Option<f64> {
-        match self {
-            Self::Own(target) => target.magnitude,
-            Self::Body(_) => None,
-            Self::DeepSky(object) => object.magnitude(),
-            Self::Star(star) => star.magnitude(),
+impl Best {
+    const fn of(limit: usize) -> Self {
+        Self {
+            hits: Vec::new(),
+            limit,
         }
     }
 
-    fn kind(&self) -> Kind {
-        match self {
-            Self::Own(target) => target.kind,
-            Self::Body(body) => solar_system::kind(*body),
-            Self::DeepSky(object) => object.kind(),
-            Self::Star(_) => Kind::Star,
+    /// True if there are as many as are wanted, none worse than this.
+    fn is_full_of(&self, score: f64) -> bool {
+        self.hits.len() >= self.limit && self.hits.last().is_none_or(|worst| worst.score >= score)
+    }
+
+    /// Takes one in if it is among the best, after those that are as good.
+    fn offer(&mut self, score: f64, target: impl FnOnce() -> Option<Target>) {
+        let full = self.hits.len() >= self.limit;
+        if score <= 0.0 || (full && self.hits.last().is_none_or(|worst| worst.score > score)) {
+            return;
+        }
+        let Some(target) = target() else { return };
+        let magnitude = target.magnitude.unwrap_or(f64::INFINITY);
+        let place = self.hits.partition_point(|hit| {
+            let worse = hit.score.total_cmp(&score).reverse();
+            worse.then(hit.magnitude.total_cmp(&magnitude)).is_le()
+        });
+        self.hits.insert(
+            place,
+            Hit {
+                target,
+                score,
+                magnitude,
+            },
+        );
+        self.hits.truncate(self.limit);
+    }
+
+    fn join(&mut self, other: Self) {
+        for Hit { target, score, .. } in other.hits {
+            self.offer(score, || Some(target));
         }
     }
 
-    fn constellation(&self) -> Option<&'static Constellation> {
-        match self {
-            Self::Own(target) => target.constellation,
-            Self::Body(_) => None,
-            Self::DeepSky(object) => object.constellation(),
-            Self::Star(star) => star.constellation(),
-        }
-    }
-
-    /// In the ICRS at J2000.0.
-    fn place(&self) -> Option<CataloguePlace> {
-        match self {
-            Self::Own(target) => Catalogue::fixed_place(target),
-            Self::Body(_) => None,
-            Self::DeepSky(object) => object.place(),
-            Self::Star(star) => star.place(),
-        }
+    fn found(self) -> Vec<Found> {
+        let found = self.hits.into_iter();
+        found
+            .map(|Hit { target, score, .. }| Found { target, score })
+            .collect()
     }
 }
 
 impl Filter {
-    fn passes(&self, entry: &Entry<'_>) -> bool {
-        self.kind.is_none_or(|kind| entry.kind().is_a(kind))
+    /// True of a target that passes.
+    fn passes(&self, target: &Target) -> bool {
+        self.kind.is_none_or(|kind| target.kind.is_a(kind))
             && self
                 .constellation
-                .is_none_or(|wanted| entry.constellation() == Some(wanted))
+                .is_none_or(|wanted| target.constellation == Some(wanted))
             && self
                 .brighter_than
-                .is_none_or(|limit| entry.magnitude().is_some_and(|magnitude| magnitude < limit))
+                .is_none_or(|limit| target.magnitude.is_some_and(|magnitude| magnitude < limit))
             && self.near.is_none_or(|near| {
-                entry
-                    .place()
+                Catalogue::fixed_place(target)
                     .is_some_and(|place| distance_deg(&near.place, &place) <= near.within.degrees())
             })
     }

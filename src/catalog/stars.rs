@@ -122,6 +122,12 @@ impl Star {
         Constellation::abbreviated(self.row.field_from_end(0))
     }
 
+    /// The same by its place in the table of constellations.
+    #[must_use]
+    pub fn constellation_position(self) -> Option<usize> {
+        Constellation::position(self.row.field_from_end(0))
+    }
+
     /// Its place in the ICRS at J2000.0, with its motion; radial velocity unknown, taken as zero.
     #[must_use]
     pub fn place(self) -> Option<CataloguePlace> {

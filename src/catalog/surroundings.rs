@@ -3,7 +3,7 @@
 use crate::catalog::Kind;
 use crate::catalog::constellation::CONSTELLATIONS;
 use crate::catalog::fold::Words;
-use crate::catalog::likeness::Typed;
+use crate::catalog::likeness::{BESIDE, Typed};
 
 /// For every kind and every constellation, and every word typed, the likeness of its likest word.
 #[derive(Clone, Debug)]
@@ -18,8 +18,6 @@ pub struct Surroundings {
     nothing: Vec<f64>,
     /// Some word typed is like some kind or constellation beside a name.
     matter: bool,
-    /// Some word typed is like none, and not the beginning of "ngc" or "ic" or a number: it needs a proper name.
-    need_a_name: bool,
 }
 
 impl Surroundings {
@@ -50,16 +48,30 @@ impl Surroundings {
             within: spelt.iter().map(|words| typed.each(words)).collect(),
             nothing: typed.beside(&Words::default()),
             matter: best.iter().any(|likeness| *likeness > 0.0),
-            need_a_name: typed.need_a_name(&best),
             kinds,
             constellations,
         }
     }
 
-    /// True if nothing that goes by a number of the NGC or the IC alone can fit.
+    /// True if some word typed tells of a kind or a constellation.
     #[must_use]
-    pub const fn need_a_name(&self) -> bool {
-        self.need_a_name
+    pub const fn matter(&self) -> bool {
+        self.matter
+    }
+
+    /// What a word typed is worth beside a name: a bit for each kind it tells of and the most it is worth so, and its worth
+    /// by each constellation, in the order of [`CONSTELLATIONS`].
+    #[must_use]
+    pub fn worth(&self, word: usize) -> (u32, f64, Vec<f64>) {
+        let of = |likenesses: &Vec<f64>| BESIDE * likenesses.get(word).copied().unwrap_or(0.0);
+        let (mut told, mut most) = (0, 0.0);
+        for (kind, likenesses) in Kind::ALL.iter().zip(&self.kinds) {
+            if of(likenesses) > 0.0 {
+                told |= kind.bit();
+                most = of(likenesses).max(most);
+            }
+        }
+        (told, most, self.constellations.iter().map(of).collect())
     }
 
     /// For every word typed, its likeness to the spellings of a constellation within a name.

@@ -1,0 +1,94 @@
+//! The index of the tables compiled into the program, made when something is searched for the first time.
+
+use crate::catalog::deep_sky::{DeepSky, DeepSkyObject};
+use crate::catalog::index::{Builder, Facts, Index, Stamp};
+use crate::catalog::sieve::kept_direction;
+use crate::catalog::stars::{Star, StarNames, Stars};
+use crate::catalog::{Constellation, Kind};
+
+/// A row of one of the tables.
+#[derive(Clone, Copy, Debug)]
+pub enum Entry {
+    /// A cluster, nebula or galaxy.
+    DeepSky(DeepSkyObject),
+    /// A star.
+    Star(Star),
+}
+
+/// The index, and the rows it speaks of.
+#[derive(Debug)]
+pub struct BuiltInIndex {
+    /// The index; nothing could be made of tables too large for it.
+    pub index: Option<Index>,
+    entries: Vec<Entry>,
+}
+
+impl BuiltInIndex {
+    /// Of the stars and the tables of clusters, nebulae and galaxies.
+    #[must_use]
+    pub fn new(stars: &Stars, deep_sky: &[DeepSky]) -> Self {
+        let mut builder = Builder::default();
+        let mut entries = Vec::new();
+        for object in deep_sky.iter().flat_map(|table| table.all()) {
+            builder.row(Facts {
+                reference: entries.len() as u64,
+                magnitude: object.magnitude().map(single),
+                direction: object.place().map(|place| kept_direction(&place)),
+                kinds: object.kind().bit(),
+                constellation: position(object.constellation_position()),
+            });
+            for name in object.names() {
+                builder.name(name);
+            }
+            entries.push(Entry::DeepSky(object));
+        }
+        let mut named = stars.named().peekable();
+        for star in stars.all() {
+            builder.row(Facts {
+                reference: entries.len() as u64,
+                magnitude: star.magnitude().map(single),
+                direction: star.place().map(|place| kept_direction(&place)),
+                kinds: Kind::Star.bit(),
+                constellation: position(star.constellation_position()),
+            });
+            // both tables are in order of the number
+            let number = |hip: &str| hip.parse::<u32>().ok();
+            let passed = |names: &StarNames| number(names.hip) < star.hip();
+            while named.next_if(passed).is_some() {}
+            if let Some(names) = named.next_if(|names| names.hip == star.hip_text()) {
+                for name in names.proper() {
+                    builder.name(name);
+                }
+                let of = Constellation::abbreviated(names.constellation);
+                let spellings = of.map(Constellation::spellings).unwrap_or_default();
+                for before in [names.bayer, names.flamsteed] {
+                    if !before.is_empty() {
+                        builder.designation(before, spellings);
+                    }
+                }
+            }
+            entries.push(Entry::Star(star));
+        }
+        Self {
+            index: builder.index(&Stamp::default()),
+            entries,
+        }
+    }
+
+    /// The table's row of a row of the index.
+    #[must_use]
+    pub fn entry(&self, row: usize) -> Option<Entry> {
+        let reference = self.index.as_ref()?.reference(row)?;
+        self.entries.get(usize::try_from(reference).ok()?).copied()
+    }
+}
+
+/// A magnitude as an index keeps it.
+#[allow(clippy::cast_possible_truncation)] // to a millionth of a magnitude
+const fn single(magnitude: f64) -> f32 {
+    magnitude as f32
+}
+
+fn position(of_constellation: Option<usize>) -> Option<u8> {
+    u8::try_from(of_constellation?).ok()
+}
