@@ -119,6 +119,8 @@ pub const AXES_ABOVE_FLOOR: Bound = Bound::new("height of the axes", "metres", 0
 pub const MAGNITUDE: Bound = Bound::new("magnitude", "", -27.0, 40.0);
 /// Proper motion in one direction; the fastest star moves 10,400 mas a year.
 pub const PROPER_MOTION: Bound = Bound::new("proper motion", "mas a year", -20_000.0, 20_000.0);
+/// Parallax; that of the nearest star is 768 mas. A measured one may come out a little below zero.
+pub const PARALLAX: Bound = Bound::new("parallax", "mas", -100.0, 1_000.0);
 /// Length or width of a target.
 pub const SIZE: Bound = Bound::new("size", "minutes of arc", 0.0, 5400.0);
 

@@ -8,19 +8,27 @@ use std::path::{Path, PathBuf};
 use nonius::catalog::Catalogue;
 use nonius::site::{
     Checker, FileText, Folders, Ink, ListFile, MountFile, ReadingsFile, Shelf, SiteFile, builtin,
+    own,
 };
 use proptest::prelude::*;
 
 const GOOD: &str = "tests/files/good";
 const BAD: &str = "tests/files/bad";
 
-/// The files of a folder that are not expectations, by name; paths stay relative, as messages quote them.
+/// The files of a folder and of its folder of catalogues that are not expectations, by name; paths stay relative, as
+/// messages quote them.
 fn files(folder: &str) -> Vec<PathBuf> {
-    let mut files: Vec<PathBuf> = fs::read_dir(folder)
-        .unwrap()
-        .map(|entry| Path::new(folder).join(entry.unwrap().file_name()))
-        .filter(|path| path.extension().is_none_or(|ending| ending != "expected"))
-        .collect();
+    let catalogues = format!("{folder}/catalogs");
+    let of = |folder: &str| -> Vec<PathBuf> {
+        let entries = fs::read_dir(folder).unwrap();
+        entries
+            .map(|entry| Path::new(folder).join(entry.unwrap().file_name()))
+            .collect()
+    };
+    let mut files: Vec<PathBuf> = [of(folder), of(&catalogues)].concat();
+    files.retain(|path| {
+        path.is_file() && path.extension().is_none_or(|ending| ending != "expected")
+    });
     files.sort();
     files
 }
@@ -34,7 +42,7 @@ fn expectation(bad: &Path) -> PathBuf {
 /// All that is said of a file held against what is built in, the readings against the six-inch mount.
 fn said(path: &Path, ink: Ink) -> Option<String> {
     let nowhere = Path::new("tests/files/no-such-folder");
-    let folders = Folders::at(nowhere, nowhere);
+    let folders = Folders::at(nowhere, nowhere, nowhere);
     let mount = folders.mount("six-inch").unwrap().mount;
     let checker = Checker {
         folders: &folders,
@@ -89,8 +97,10 @@ fn every_message_has_its_place_and_a_hint() {
 
 #[test]
 fn every_expectation_belongs_to_a_file() {
-    let expected = fs::read_dir(BAD)
-        .unwrap()
+    let folders = [BAD.to_owned(), format!("{BAD}/catalogs")];
+    let expected = folders
+        .iter()
+        .flat_map(|folder| fs::read_dir(folder).unwrap())
         .map(|entry| entry.unwrap().path())
         .filter(|path| path.extension().is_some_and(|ending| ending == "expected"));
     let mut count = 0;
@@ -130,8 +140,26 @@ fn no_message_carries_a_control_character_to_the_terminal() {
     }
 }
 
+/// Reads bytes as a catalogue, and writes out whatever is wrong with it.
+fn read_as_a_catalogue(bytes: &[u8]) {
+    let folder = tempfile::tempdir().unwrap();
+    let path = folder.path().join("any.csv");
+    fs::write(&path, bytes).unwrap();
+    let faults = own::check(&path).err();
+    let opened = own::open(&path, folder.path(), &mut |_, _| {});
+    // what is opened is checked without fault, but for the rows left out of it
+    match (&faults, opened) {
+        (None, opened) => assert_eq!(opened.unwrap().unread, 0),
+        (Some(faults), opened) => {
+            assert!(!faults.list().is_empty());
+            assert!(opened.is_err() || faults.to_string().contains("any.csv:"));
+        }
+    }
+}
+
 /// Reads a text as every kind of file, and writes out whatever is wrong with it.
 fn read_as_everything(bytes: &[u8]) {
+    read_as_a_catalogue(bytes);
     let file = match FileText::from_bytes("any".to_owned(), bytes.to_vec()) {
         Ok(file) => file,
         Err(faults) => {

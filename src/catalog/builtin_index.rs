@@ -2,9 +2,9 @@
 
 use crate::catalog::deep_sky::{DeepSky, DeepSkyObject};
 use crate::catalog::index::{Builder, Facts, Index, Stamp};
-use crate::catalog::sieve::kept_direction;
 use crate::catalog::stars::{Star, StarNames, Stars};
 use crate::catalog::{Constellation, Kind};
+use crate::sky::CataloguePlace;
 
 /// A row of one of the tables.
 #[derive(Clone, Copy, Debug)]
@@ -15,7 +15,18 @@ pub enum Entry {
     Star(Star),
 }
 
-/// The index, and the rows it speaks of.
+impl Entry {
+    /// In the ICRS at J2000.0.
+    #[must_use]
+    pub fn place(self) -> Option<CataloguePlace> {
+        match self {
+            Self::DeepSky(object) => object.place(),
+            Self::Star(star) => star.place(),
+        }
+    }
+}
+
+/// The index, and the rows it speaks of. It knows no directions: a place is read from the row when it is asked about.
 #[derive(Debug)]
 pub struct BuiltInIndex {
     /// The index; nothing could be made of tables too large for it.
@@ -33,7 +44,7 @@ impl BuiltInIndex {
             builder.row(Facts {
                 reference: entries.len() as u64,
                 magnitude: object.magnitude().map(single),
-                direction: object.place().map(|place| kept_direction(&place)),
+                direction: None,
                 kinds: object.kind().bit(),
                 constellation: position(object.constellation_position()),
             });
@@ -47,7 +58,7 @@ impl BuiltInIndex {
             builder.row(Facts {
                 reference: entries.len() as u64,
                 magnitude: star.magnitude().map(single),
-                direction: star.place().map(|place| kept_direction(&place)),
+                direction: None,
                 kinds: Kind::Star.bit(),
                 constellation: position(star.constellation_position()),
             });

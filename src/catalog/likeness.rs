@@ -158,7 +158,8 @@ impl Typed {
     pub fn beside(&self, words: &Words) -> Vec<f64> {
         let strict = |typed: &String| {
             let likeness = likest(typed, words);
-            let slip = likeness <= Nearness::OneSlip.value() && typed.len() < BESIDE_SLIP_FROM_LETTERS;
+            let slip =
+                likeness <= Nearness::OneSlip.value() && typed.len() < BESIDE_SLIP_FROM_LETTERS;
             if slip || typed.len() < BESIDE_FROM_LETTERS {
                 0.0
             } else {

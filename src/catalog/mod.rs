@@ -36,4 +36,5 @@ pub use list::{TargetList, clean};
 pub use own::{OwnCatalogue, Rows};
 pub use report::FindReport;
 pub use search::{Filter, Found, Near};
+pub use sieve::kept_direction;
 pub use target::{Origin, Target};

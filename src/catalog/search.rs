@@ -97,7 +97,7 @@ impl Catalogue {
         for target in self.own.iter().chain(&bodies) {
             if filter.passes(target) && passes(target) {
                 let score = scorer.target(target);
-                best.offer(score, || Some(target.clone()));
+                best.offer(score, target.magnitude, || Some(target.clone()));
             }
         }
         for own in &self.catalogues {
@@ -106,12 +106,22 @@ impl Catalogue {
                 let score = scorer.target(&target);
                 passes(&target).then_some((score, target))
             };
-            best.join(looked_through(own.index(), &mut scorer, filter, read));
+            let sieve = Sieve::new(own.index(), filter);
+            best.join(looked_through(
+                own.index(),
+                &sieve,
+                &mut scorer,
+                filter.limit,
+                read,
+            ));
         }
         let built_in = self.built_in();
         if let Some(index) = &built_in.index {
             let read = |scorer: &mut Scorer, row| {
                 let entry = built_in.entry(row)?;
+                if !filter.is_near(|| entry.place()) {
+                    return None;
+                }
                 let score = self.score(scorer, entry);
                 if score <= 0.0 {
                     return None;
@@ -119,13 +129,22 @@ impl Catalogue {
                 let target = self.target(entry)?;
                 passes(&target).then_some((score, target))
             };
-            best.join(looked_through(index, &mut scorer, filter, read));
+            let sieve = Sieve::without_places(index, filter);
+            best.join(looked_through(
+                index,
+                &sieve,
+                &mut scorer,
+                filter.limit,
+                read,
+            ));
         }
         if let Some(number) = scorer.typed().hip_digits() {
             let begins = |star: &Star| star.hip_text().starts_with(number);
             for star in self.stars.all().filter(begins) {
                 let passing = |target: &Target| filter.passes(target) && passes(target);
-                best.offer(scorer.hip(star), || self.stars.target(star).filter(passing));
+                best.offer(scorer.hip(star), star.magnitude(), || {
+                    self.stars.target(star).filter(passing)
+                });
             }
         }
         best.found()
@@ -155,8 +174,9 @@ impl Catalogue {
 /// The best of the rows of an index; `read` gives a row's score and target, or nothing if it does not pass.
 fn looked_through(
     index: &Index,
+    sieve: &Sieve,
     scorer: &mut Scorer,
-    filter: &Filter,
+    limit: usize,
     mut read: impl FnMut(&mut Scorer, usize) -> Option<(f64, Target)>,
 ) -> Best {
     let candidates = if scorer.typed().is_empty() {
@@ -164,8 +184,7 @@ fn looked_through(
     } else {
         index.candidates(scorer.typed(), scorer.around())
     };
-    let sieve = Sieve::new(index, filter);
-    let mut best = Best::of(filter.limit);
+    let mut best = Best::of(limit);
     let mut disappointments = 0;
     for (row, most) in candidates.iter() {
         // what is still to come is no better, and among equals no brighter
@@ -179,7 +198,7 @@ fn looked_through(
             continue;
         };
         disappointments += usize::from(score < most - Candidates::step());
-        best.offer(score, || Some(target));
+        best.offer(score, target.magnitude, || Some(target));
     }
     best
 }
@@ -197,32 +216,35 @@ impl Best {
         self.hits.len() >= self.limit && self.hits.last().is_none_or(|worst| worst.score >= score)
     }
 
-    /// Takes one in if it is among the best, after those that are as good.
-    fn offer(&mut self, score: f64, target: impl FnOnce() -> Option<Target>) {
-        let full = self.hits.len() >= self.limit;
-        if score <= 0.0 || (full && self.hits.last().is_none_or(|worst| worst.score > score)) {
-            return;
-        }
-        let Some(target) = target() else { return };
-        let magnitude = target.magnitude.unwrap_or(f64::INFINITY);
+    /// Takes one in if it is among the best, after those that are as good and as bright.
+    fn offer(
+        &mut self,
+        score: f64,
+        magnitude: Option<f64>,
+        target: impl FnOnce() -> Option<Target>,
+    ) {
+        let magnitude = magnitude.unwrap_or(f64::INFINITY);
         let place = self.hits.partition_point(|hit| {
             let worse = hit.score.total_cmp(&score).reverse();
             worse.then(hit.magnitude.total_cmp(&magnitude)).is_le()
         });
-        self.hits.insert(
-            place,
-            Hit {
-                target,
-                score,
-                magnitude,
-            },
-        );
+        if score <= 0.0 || place >= self.limit {
+            return;
+        }
+        let Some(target) = target() else { return };
+        let hit = Hit {
+            target,
+            score,
+            magnitude,
+        };
+        self.hits.insert(place, hit);
         self.hits.truncate(self.limit);
     }
 
     fn join(&mut self, other: Self) {
-        for Hit { target, score, .. } in other.hits {
-            self.offer(score, || Some(target));
+        for hit in other.hits {
+            let target = hit.target;
+            self.offer(hit.score, target.magnitude, || Some(target));
         }
     }
 
@@ -244,10 +266,14 @@ impl Filter {
             && self
                 .brighter_than
                 .is_none_or(|limit| target.magnitude.is_some_and(|magnitude| magnitude < limit))
-            && self.near.is_none_or(|near| {
-                Catalogue::fixed_place(target)
-                    .is_some_and(|place| distance_deg(&near.place, &place) <= near.within.degrees())
-            })
+            && self.is_near(|| Catalogue::fixed_place(target))
+    }
+
+    /// True if a place is within the distance wanted, or none is.
+    fn is_near(&self, place: impl FnOnce() -> Option<CataloguePlace>) -> bool {
+        self.near.is_none_or(|near| {
+            place().is_some_and(|place| distance_deg(&near.place, &place) <= near.within.degrees())
+        })
     }
 }
 
@@ -359,6 +385,60 @@ mod tests {
             ..Filter::default()
         };
         assert_eq!(names("", &near), ["Sheliak", "M 57"]);
+    }
+
+    /// The best scores of everything built in, each row held against the words without an index.
+    fn read_through(typed: &str, limit: usize) -> Vec<f64> {
+        let catalogue = Catalogue::builtin();
+        let mut scorer = Scorer::new(Typed::new(typed));
+        let mut scores: Vec<f64> = Body::ALL
+            .into_iter()
+            .map(|body| scorer.target(&solar_system::target(body)))
+            .collect();
+        let objects = catalogue.messier.all().chain(catalogue.ngc.all());
+        scores.extend(objects.map(|object| scorer.deep_sky(object)));
+        scores.extend(catalogue.stars.named().map(|names| scorer.star(&names)));
+        scores.retain(|score| *score > 0.0);
+        scores.sort_by(|a, b| b.total_cmp(a));
+        scores.truncate(limit);
+        scores
+    }
+
+    #[test]
+    fn the_index_finds_what_reading_through_finds() {
+        let catalogue = Catalogue::builtin();
+        for typed in [
+            "m",
+            "ngc 1",
+            "owl",
+            "galaxy virgo",
+            "alpha",
+            "alp cen",
+            "betelguese",
+            "cluster double",
+            "planetary",
+            "ic 4 nebula",
+            "tau",
+            "1",
+            "gam 2",
+            "great neb",
+            "the ring",
+            "and",
+            "z",
+            "dra galxy",
+        ] {
+            let expected = read_through(typed, 20);
+            let found = catalogue.search(typed, &Filter::default());
+            let scores: Vec<f64> = found.iter().map(|found| found.score).collect();
+            assert_eq!(scores.len(), expected.len(), "{typed}");
+            for (score, expected) in scores.iter().zip(&expected) {
+                // no nearer are they told apart
+                assert!(
+                    (score - expected).abs() <= Candidates::step(),
+                    "{typed}: {scores:?} {expected:?}"
+                );
+            }
+        }
     }
 
     proptest! {

@@ -21,9 +21,23 @@ pub struct Sieve {
 }
 
 impl Sieve {
-    /// For the rows of an index.
+    /// For the rows of an index that knows where they are.
     #[must_use]
     pub fn new(index: &Index, filter: &Filter) -> Self {
+        let near = filter.near.map(|near| {
+            let half = (near.within.radians() + FINENESS_RAD).min(std::f64::consts::PI) / 2.0;
+            let chord = 2.0 * half.sin();
+            (index.directions(), direction(&near.place), chord * chord)
+        });
+        Self {
+            near,
+            ..Self::without_places(index, filter)
+        }
+    }
+
+    /// For the rows of an index that does not.
+    #[must_use]
+    pub fn without_places(index: &Index, filter: &Filter) -> Self {
         Self {
             too_faint: filter
                 .brighter_than
@@ -33,11 +47,7 @@ impl Sieve {
                 let position = wanted.position_in_table();
                 (index.constellations(), position.unwrap_or(u8::MAX - 1))
             }),
-            near: filter.near.map(|near| {
-                let half = (near.within.radians() + FINENESS_RAD).min(std::f64::consts::PI) / 2.0;
-                let chord = 2.0 * half.sin();
-                (index.directions(), direction(&near.place), chord * chord)
-            }),
+            near: None,
         }
     }
 

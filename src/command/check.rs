@@ -7,7 +7,7 @@ use anyhow::Context as _;
 use clap::Args;
 use serde::Serialize;
 
-use crate::catalog::Catalogue;
+use crate::command::catalogues;
 use crate::command::exit::FaultsFound;
 use crate::command::options::Common;
 use crate::site::{Checked, Checker, Faults, FileKind, Folders, Ink};
@@ -29,7 +29,8 @@ pub fn run(args: &CheckArgs, common: &Common, out: &mut dyn Write) -> anyhow::Re
         .as_deref()
         .map(|name| folders.mount(name))
         .transpose()?;
-    let catalogue = Catalogue::builtin().with_own(folders.own_targets().unwrap_or_default());
+    // what is wrong with the catalogues is said with the rest, if they are checked
+    let (catalogue, _) = catalogues::opened(&folders)?;
     let checker = Checker {
         folders: &folders,
         catalogue: &catalogue,

@@ -6,6 +6,7 @@ use std::process::ExitCode;
 use clap::{Parser, Subcommand};
 
 pub mod calibrate;
+mod catalogues;
 pub mod check;
 pub mod completions;
 mod demonstration;
@@ -24,7 +25,6 @@ mod station;
 
 use options::Common;
 
-use crate::catalog::Catalogue;
 use crate::site::Folders;
 
 /// The setting-circle dial-in assistant for manual equatorial mounts.
@@ -84,7 +84,7 @@ fn run(line: &Line, out: &mut dyn Write) -> anyhow::Result<()> {
         Some(Command::Calibrate(args)) => calibrate::run(args, common, out),
         Some(Command::Plan(args)) => plan::run(args, common, out),
         Some(Command::Find(args)) => {
-            let catalogue = Catalogue::builtin().with_own(Folders::of_the_user()?.own_targets()?);
+            let catalogue = catalogues::open(&Folders::of_the_user()?)?;
             find::run(args, &catalogue, common.json, out)
         }
         Some(Command::Check(args)) => check::run(args, common, out),

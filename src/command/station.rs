@@ -6,6 +6,7 @@ use std::path::Path;
 use crate::angle::HourAngle;
 use crate::catalog::{Catalogue, Target};
 use crate::command::calibrate::suspicions;
+use crate::command::catalogues;
 use crate::command::exit::Refused;
 use crate::command::options::Common;
 use crate::command::readings;
@@ -67,9 +68,8 @@ impl Station {
         if let (Some(_), Err(faults)) = (&common.list, &list) {
             return Err(faults.clone().into());
         }
-        let catalogue = Catalogue::builtin();
-        let mut own = placed(&list, &catalogue);
-        own.extend(folders.own_targets()?);
+        let catalogue = catalogues::open(&folders)?;
+        let own = placed(&list, &catalogue);
         let prior = Prior::from_expected(&mount.mount.expected);
         let mut station = Self {
             catalogue: catalogue.with_own(own),

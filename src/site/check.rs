@@ -13,6 +13,7 @@ use crate::site::file_kind::FileKind;
 use crate::site::folders::{Folders, Shelf, stem};
 use crate::site::list_file::{self, ListFile};
 use crate::site::mount_file::MountFile;
+use crate::site::own;
 use crate::site::readings_file::{RawReading, ReadingsFile};
 use crate::site::site_file::SiteFile;
 
@@ -42,6 +43,13 @@ impl Checker<'_> {
     /// Checks one file.
     #[must_use]
     pub fn file(&self, path: &Path) -> Checked {
+        if FileKind::is_catalogue(path) {
+            return Checked {
+                name: path.display().to_string(),
+                kind: Some(FileKind::Catalogue),
+                faults: own::check(path).err(),
+            };
+        }
         match FileText::read(path) {
             Ok(file) => self.text(path, file),
             Err(faults) => Checked {
@@ -74,9 +82,7 @@ impl Checker<'_> {
             FileKind::Site => SiteFile::read(&id, file).and_then(|site| self.mount_of(&site)),
             FileKind::Mount => MountFile::read(&id, file).map(|_| ()),
             FileKind::List => ListFile::read(&id, file).and_then(|list| self.names_of(&list)),
-            FileKind::Catalogue => {
-                ListFile::read(&id, file).and_then(|list| list.own_targets().map(|_| ()))
-            }
+            FileKind::Catalogue => own::check(path),
             FileKind::Readings => ReadingsFile::read(file).and_then(|file| self.readings(file)),
         };
         Checked {
@@ -148,7 +154,7 @@ mod tests {
             std::fs::write(path, text).unwrap();
         }
         let checker = Checker {
-            folders: &Folders::at(home.path(), home.path()),
+            folders: &Folders::at(home.path(), home.path(), home.path()),
             catalogue: &Catalogue::builtin(),
             mount,
         };
@@ -182,7 +188,7 @@ mod tests {
         let text = "utc,star,hour,dec,side\n2026-12-01T21:30:00Z,Vega,20h 61m,38 47,single\n\
             2026-12-01T21:30:00Z,Vgea,20h 51m,98,tube-west\n";
         let home = tempfile::tempdir().unwrap();
-        let six_inch = Folders::at(home.path(), home.path())
+        let six_inch = Folders::at(home.path(), home.path(), home.path())
             .mount("six-inch")
             .unwrap()
             .mount;

@@ -4,6 +4,7 @@
 use std::path::Path;
 
 use crate::site::folders::Shelf;
+use crate::site::own;
 use crate::site::readings_file;
 
 /// What a file is.
@@ -15,7 +16,7 @@ pub enum FileKind {
     Mount,
     /// A target list.
     List,
-    /// The user's own catalogue: a list with a place on every line.
+    /// The user's own catalogue: a place in every row.
     Catalogue,
     /// Readings of the circles.
     Readings,
@@ -32,6 +33,14 @@ impl FileKind {
             Self::Catalogue => "catalogue",
             Self::Readings => "readings",
         }
+    }
+
+    /// True of a file that is a catalogue of the user's own by its folder or by what it begins with; it may be of any size.
+    #[must_use]
+    pub fn is_catalogue(path: &Path) -> bool {
+        let folder = path.parent().and_then(Path::file_name);
+        let among = folder.is_some_and(|folder| folder == Shelf::Catalogs.folder());
+        path.is_file() && (among || own::is_told_by_beginning(path))
     }
 
     /// What a file is, by its text, else by its folder and ending.

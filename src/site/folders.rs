@@ -9,12 +9,12 @@ use std::path::{Path, PathBuf, is_separator};
 
 use etcetera::BaseStrategy;
 
-use crate::catalog::Target;
 use crate::site::builtin;
 use crate::site::fault::{Fault, Faults, FileText};
 use crate::site::likely::nearest;
 use crate::site::list_file::ListFile;
 use crate::site::mount_file::MountFile;
+use crate::site::own;
 use crate::site::readings_file::ReadingsFile;
 use crate::site::site_file::SiteFile;
 
@@ -33,7 +33,7 @@ pub enum Shelf {
     Mounts,
     /// Target lists.
     Lists,
-    /// The user's own catalogues: lists whose every line has a place.
+    /// The user's own catalogues: a place in every row.
     Catalogs,
 }
 
@@ -68,7 +68,8 @@ impl Shelf {
     pub const fn endings(self) -> &'static [&'static str] {
         match self {
             Self::Sites | Self::Mounts => &["toml"],
-            Self::Lists | Self::Catalogs => &["txt", "csv"],
+            Self::Lists => &["txt", "csv"],
+            Self::Catalogs => &["csv", "txt", "vot", "xml", "dat", "mpc"],
         }
     }
 }
@@ -78,6 +79,7 @@ impl Shelf {
 pub struct Folders {
     config: PathBuf,
     nights: PathBuf,
+    indexes: PathBuf,
 }
 
 /// The user's own folder cannot be told.
@@ -93,15 +95,17 @@ impl Folders {
         Ok(Self::at(
             &strategy.config_dir().join(PROGRAM),
             &state.join(PROGRAM),
+            &strategy.cache_dir().join(PROGRAM),
         ))
     }
 
-    /// With the program's own folders for configuration and for state.
+    /// With the program's own folders for configuration, for state, and for what can be made again.
     #[must_use]
-    pub fn at(config: &Path, state: &Path) -> Self {
+    pub fn at(config: &Path, state: &Path, cache: &Path) -> Self {
         Self {
             config: config.to_owned(),
             nights: state.join("nights"),
+            indexes: cache.join("catalogs"),
         }
     }
 
@@ -157,14 +161,16 @@ impl Folders {
         ReadingsFile::read(FileText::read(path)?)
     }
 
-    /// The targets of the user's own catalogues.
-    pub fn own_targets(&self) -> Result<Vec<Target>, Faults> {
-        let mut targets = Vec::new();
-        for path in self.paths(Shelf::Catalogs)? {
-            let (id, file) = Self::open(&path)?;
-            targets.extend(ListFile::read(&id, file)?.own_targets()?);
-        }
-        Ok(targets)
+    /// The user's own catalogues, in alphabetical order, each opened or with what is wrong with it as a whole.
+    pub fn catalogues(
+        &self,
+        progress: &mut own::Progress<'_>,
+    ) -> Result<Vec<(PathBuf, Result<own::Opened, Faults>)>, Faults> {
+        let opened = self.paths(Shelf::Catalogs)?.into_iter().map(|path| {
+            let opened = own::open(&path, &self.indexes, progress);
+            (path, opened)
+        });
+        Ok(opened.collect())
     }
 
     /// The names on a shelf, the user's and the built-in ones, in alphabetical order.
@@ -295,7 +301,7 @@ mod tests {
             fs::create_dir_all(path.parent().unwrap()).unwrap();
             fs::write(path, text).unwrap();
         }
-        let folders = Folders::at(home.path(), home.path());
+        let folders = Folders::at(home.path(), home.path(), home.path());
         (home, folders)
     }
 
@@ -371,16 +377,5 @@ mod tests {
     fn a_path_or_an_ending_makes_a_file_of_a_name() {
         assert!(is_file("./here") && is_file("here.toml") && is_file("a.csv") && is_file("x/y"));
         assert!(!is_file("tarn-hollow") && !is_file("v1.2"));
-    }
-
-    #[test]
-    fn the_users_catalogues_give_targets_with_places() {
-        let (_home, folders) =
-            with_user_files(&[("catalogs/own.csv", "name,ra,dec\nField nine,1h 2m,+3\n")]);
-        let targets = folders.own_targets().unwrap();
-        assert_eq!(targets[0].name, "Field nine");
-        let (_home, folders) = with_user_files(&[("catalogs/own.csv", "name,ra,dec\nVega,,\n")]);
-        let message = folders.own_targets().unwrap_err().to_string();
-        assert!(message.contains("own.csv:2:1\n"), "{message}");
     }
 }

@@ -6,11 +6,10 @@
 use std::ops::Range;
 
 use crate::catalog::list::{Entry, Written};
-use crate::catalog::{Catalogue, Kind, Origin, Target, Unresolved, clean};
+use crate::catalog::{Catalogue, Unresolved, clean};
 use crate::site::fault::{Fault, Faults, FileText};
 use crate::site::list_row;
 use crate::site::table;
-use crate::sky::Source;
 
 /// A list and the file it came from.
 #[derive(Clone, Debug, PartialEq)]
@@ -72,43 +71,6 @@ impl ListFile {
                     .map_err(|unresolved| unknown(line.name_at.clone(), &unresolved))
             })
             .collect()
-    }
-}
-
-impl ListFile {
-    /// The targets of a list that is a catalogue of the user's own: every line must have a place.
-    pub fn own_targets(&self) -> Result<Vec<Target>, Faults> {
-        let mut faults = Vec::new();
-        let targets = self.lines.iter().filter_map(|line| {
-            let written = &line.written;
-            let Some(place) = written.place else {
-                faults.push(
-                    Fault::new(
-                        line.name_at.clone(),
-                        "this target of a catalogue has no place",
-                    )
-                    .hint("write a table with the header name,ra,dec and fill in both"),
-                );
-                return None;
-            };
-            Some(Target {
-                name: written.name.clone(),
-                also: Vec::new(),
-                kind: Kind::Place,
-                source: Source::Catalogue(place),
-                magnitude: written.magnitude,
-                size_arcmin: written.size_arcmin,
-                constellation: None,
-                catalogue: Origin::List,
-                note: written.note.clone(),
-            })
-        });
-        let targets = targets.collect();
-        if faults.is_empty() {
-            Ok(targets)
-        } else {
-            Err(Faults::new(self.file.clone(), faults))
-        }
     }
 }
 

@@ -12,7 +12,7 @@ use crate::catalog::{clean, given};
 use crate::sexagesimal::{self, TextFault, Unit};
 use crate::site::fault::Fault;
 use crate::site::list_file::ListLine;
-use crate::site::table::{Cell, Columns, Row};
+use crate::site::table::{Cell, Columns, Others, Row};
 use crate::site::value::out_of_range_hint;
 use crate::sky::{CataloguePlace, Equinox};
 
@@ -28,6 +28,7 @@ pub const COLUMNS: Columns = Columns {
         "size",
         "note",
     ],
+    others: Others::AreFaults,
 };
 
 /// The target of a row.
@@ -100,7 +101,8 @@ fn epoch(cell: &Cell, faults: &mut Vec<Fault>) -> Option<f64> {
     number_of(cell, year, &EPOCH, faults)
 }
 
-fn number(cell: &Cell, bound: &Bound, faults: &mut Vec<Fault>) -> Option<f64> {
+/// A number within its range.
+pub(super) fn number(cell: &Cell, bound: &Bound, faults: &mut Vec<Fault>) -> Option<f64> {
     number_of(cell, &cell.text, bound, faults)
 }
 

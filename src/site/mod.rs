@@ -11,6 +11,7 @@
 //! | [`list_file`] | a target list, plain or as a table |
 //! | [`mount_file`] | a mount: circles, limits, expected errors, dome, tube, optics |
 //! | [`new`] | a commented starting file for a new site, mount or list |
+//! | [`own`] | the observer's own catalogues, of any size |
 //! | [`readings_file`] | readings of both circles on known stars |
 //! | [`site_file`] | a place: coordinates, air, horizon, its mount |
 //! | [`table`] | a CSV table whose cells know their place |
@@ -27,6 +28,7 @@ pub mod list_file;
 mod list_row;
 pub mod mount_file;
 pub mod new;
+pub mod own;
 pub mod readings_file;
 pub mod site_file;
 pub mod table;

@@ -131,7 +131,7 @@ mod tests {
 
     fn home() -> (tempfile::TempDir, Folders) {
         let home = tempfile::tempdir().unwrap();
-        let folders = Folders::at(&home.path().join("config"), home.path());
+        let folders = Folders::at(&home.path().join("config"), home.path(), home.path());
         (home, folders)
     }
 

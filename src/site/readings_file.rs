@@ -11,12 +11,13 @@ use crate::metal::{Mount, Reading, Side, read_dec, read_hour};
 use crate::sexagesimal::{self, TextFault, Unit};
 use crate::site::fault::{Fault, Faults, FileText};
 use crate::site::likely::did_you_mean;
-use crate::site::table::{self, Cell, Columns, Row};
+use crate::site::table::{self, Cell, Columns, Others, Row};
 use crate::time::Utc;
 
 const COLUMNS: Columns = Columns {
     required: &["utc", "star", "hour", "dec", "side"],
     optional: &["hour-b", "dec-b", "timed", "note"],
+    others: Others::AreFaults,
 };
 
 const SIDES: [Side; 3] = [Side::TubeWest, Side::TubeEast, Side::Single];

@@ -10,7 +10,7 @@ use csv_core::{ReadFieldResult, Reader};
 
 use crate::sexagesimal::TextFault;
 use crate::site::fault::Fault;
-use crate::site::likely::did_you_mean;
+use crate::site::likely::{did_you_mean, nearest};
 
 /// One cell: its text without quotes and surrounding space, and its place.
 #[derive(Clone, Debug, PartialEq, Eq)]
@@ -30,7 +30,22 @@ pub struct Columns {
     pub required: &'static [&'static str],
     /// Those it may have.
     pub optional: &'static [&'static str],
+    /// What columns of other names are.
+    pub others: Others,
 }
+
+/// What a column is that is not one of those known.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Others {
+    /// A slip.
+    AreFaults,
+    /// Of no interest, unless it is much like one of those known.
+    ArePassedOver,
+}
+
+/// The columns of one table in their order, each by its known name; nothing for one that is passed over.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct Header(Vec<Option<&'static str>>);
 
 /// One row, its cells under their columns.
 #[derive(Clone, Debug)]
@@ -91,43 +106,75 @@ impl Row {
     }
 }
 
-/// Reads a table; its faults are noted, and the rows that could be read are given.
-pub fn read(text: &str, columns: Columns, faults: &mut Vec<Fault>) -> Vec<Row> {
+/// The bytes of a text in which its header stands: its first line that says anything, with what goes before.
+#[must_use]
+pub fn header_line(text: &str) -> Range<usize> {
     let mut records = Records::new(text);
-    let Some(header) = records.next(faults) else {
-        faults.push(Fault::new(0..0, "this table is empty").hint(format!(
-            "begin with the header {}",
-            columns.required.join(",")
-        )));
-        return Vec::new();
-    };
-    let names = header_names(&header, columns, faults);
-    let mut rows = Vec::new();
-    while let Some(cells) = records.next(faults) {
-        let (Some(first), Some(last)) = (cells.first(), cells.last()) else {
-            continue;
-        };
-        let span = first.span.start..last.span.end;
-        if cells.len() == names.len() {
-            let named = names.iter().zip(cells);
+    records.pass_over();
+    let line = records.rest().split_inclusive('\n').next().unwrap_or("");
+    records.at..records.at + line.len()
+}
+
+impl Header {
+    /// Reads the header that stands at these bytes of a text.
+    pub fn read(
+        text: &str,
+        line: Range<usize>,
+        columns: Columns,
+        faults: &mut Vec<Fault>,
+    ) -> Option<Self> {
+        let mut records = Records::new(text.get(..line.end).unwrap_or(text));
+        Self::of(&mut records, columns, faults)
+    }
+
+    fn of(records: &mut Records<'_>, columns: Columns, faults: &mut Vec<Fault>) -> Option<Self> {
+        let header = records.next(faults);
+        if header.is_none() {
+            let begin = format!("begin with the header {}", columns.required.join(","));
+            faults.push(Fault::new(0..0, "this table is empty").hint(begin));
+        }
+        Some(Self(header_names(&header?, columns, faults)))
+    }
+
+    /// Reads a row that is a line of its own.
+    pub fn row(&self, line: &str, faults: &mut Vec<Fault>) -> Option<Row> {
+        let cells = Records::new(line).next(faults)?;
+        self.named(cells, faults)
+    }
+
+    /// The cells under their columns.
+    fn named(&self, cells: Vec<Cell>, faults: &mut Vec<Fault>) -> Option<Row> {
+        let span = cells.first()?.span.start..cells.last()?.span.end;
+        if cells.len() == self.0.len() {
+            let named = self.0.iter().zip(cells);
             let cells = named.filter_map(|(name, cell)| name.map(|name| (name, cell)));
-            rows.push(Row {
+            return Some(Row {
                 cells: cells.collect(),
                 span,
             });
-        } else {
-            faults.push(
-                Fault::new(
-                    span,
-                    format!(
-                        "this row has {} cells, the header {}",
-                        cells.len(),
-                        names.len()
-                    ),
-                )
-                .hint("a cell that holds a comma stands in quotes; an empty one keeps its comma"),
-            );
         }
+        let message = format!(
+            "this row has {} cells, the header {}",
+            cells.len(),
+            self.0.len()
+        );
+        faults.push(
+            Fault::new(span, message)
+                .hint("a cell that holds a comma stands in quotes; an empty one keeps its comma"),
+        );
+        None
+    }
+}
+
+/// Reads a table; its faults are noted, and the rows that could be read are given.
+pub fn read(text: &str, columns: Columns, faults: &mut Vec<Fault>) -> Vec<Row> {
+    let mut records = Records::new(text);
+    let Some(header) = Header::of(&mut records, columns, faults) else {
+        return Vec::new();
+    };
+    let mut rows = Vec::new();
+    while let Some(cells) = records.next(faults) {
+        rows.extend(header.named(cells, faults));
     }
     rows
 }
@@ -142,7 +189,12 @@ fn header_names(
     let mut names = Vec::new();
     for cell in header {
         let name = known.iter().copied().find(|name| *name == cell.text);
-        let fault = if name.is_none() {
+        let passed_over = columns.others == Others::ArePassedOver
+            && header.len() > 1
+            && nearest(&cell.text, known.iter().copied()).is_none();
+        let fault = if name.is_none() && passed_over {
+            None
+        } else if name.is_none() {
             let parted = [';', '\t'].iter().any(|mark| cell.text.contains(*mark));
             let hint = if parted {
                 "save the table with commas between the cells".to_owned()
@@ -150,7 +202,7 @@ fn header_names(
                 did_you_mean(&cell.text, &known)
             };
             Some((format!("unknown column \"{}\"", cell.text), hint))
-        } else if names.contains(&name) {
+        } else if name.is_some() && names.contains(&name) {
             let hint = "leave one of them out".to_owned();
             Some((format!("the column {} stands here twice", cell.text), hint))
         } else {
@@ -204,14 +256,19 @@ impl<'t> Records<'t> {
         self.text.get(self.at..).unwrap_or("")
     }
 
-    /// The cells of the next record; none at the end.
-    fn next(&mut self, faults: &mut Vec<Fault>) -> Option<Vec<Cell>> {
+    /// Passes over empty lines and comments.
+    fn pass_over(&mut self) {
         while let Some(line) = self.rest().split_inclusive('\n').next() {
             if !line.trim().is_empty() && !line.starts_with('#') {
                 break;
             }
             self.at += line.len();
         }
+    }
+
+    /// The cells of the next record; none at the end.
+    fn next(&mut self, faults: &mut Vec<Fault>) -> Option<Vec<Cell>> {
+        self.pass_over();
         if self.rest().is_empty() {
             return None;
         }
@@ -305,6 +362,7 @@ mod tests {
     const COLUMNS: Columns = Columns {
         required: &["star", "dec"],
         optional: &["note"],
+        others: Others::AreFaults,
     };
 
     fn rows(text: &str) -> (Vec<Row>, Vec<String>) {

@@ -77,7 +77,10 @@ pub const SALTPAN_RIDGE: Station = Station {
 impl Station {
     pub fn moment(&self, utc: &str) -> Moment {
         let nowhere = std::path::Path::new("no-such-folder");
-        let site = Folders::at(nowhere, nowhere).site(self.site).unwrap().site;
+        let site = Folders::at(nowhere, nowhere, nowhere)
+            .site(self.site)
+            .unwrap()
+            .site;
         Moment::new(&site.observer(), Utc::parse(utc).unwrap())
     }
 

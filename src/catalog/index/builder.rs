@@ -154,7 +154,11 @@ impl Builder {
         for section in Section::ALL {
             match section {
                 Section::References => {
-                    bytes.extend(order.iter().flat_map(|&row| of(row).reference.to_le_bytes()));
+                    bytes.extend(
+                        order
+                            .iter()
+                            .flat_map(|&row| of(row).reference.to_le_bytes()),
+                    );
                 }
                 Section::Magnitudes => bytes.extend(
                     order
@@ -191,12 +195,9 @@ impl Builder {
                         end.to_le_bytes()
                     }));
                 }
-                Section::RowEnds => bytes.extend(
-                    postings
-                        .ends
-                        .iter()
-                        .flat_map(|end| end.to_le_bytes()),
-                ),
+                Section::RowEnds => {
+                    bytes.extend(postings.ends.iter().flat_map(|end| end.to_le_bytes()))
+                }
                 Section::Rows => {
                     bytes.extend(postings.rows.iter().flat_map(|row| row.to_le_bytes()));
                 }

@@ -35,7 +35,7 @@ impl Bytes {
                 // a search that panicked leaves nothing half done in a file that is only read
                 let mut file = file.lock().unwrap_or_else(PoisonError::into_inner);
                 file.seek(SeekFrom::Start(range.start)).ok()?;
-                let mut bytes = Vec::new();
+                let mut bytes = Vec::with_capacity(length);
                 let read = (&mut *file)
                     .take(u64::try_from(length).ok()?)
                     .read_to_end(&mut bytes)

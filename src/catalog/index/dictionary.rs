@@ -13,6 +13,7 @@ use crate::catalog::likeness::{self, Nearness};
 pub(super) struct Likenesses {
     codes: Vec<u8>,
     values: [f64; 256],
+    nowhere: bool,
 }
 
 /// No word of the row is like it.
@@ -27,17 +28,29 @@ const LEAST_BEGINNING: u8 = 3;
 const WHOLE: u8 = u8::MAX;
 
 impl Likenesses {
-    /// The code of every row.
-    pub fn codes(&self) -> &[u8] {
-        &self.codes
+    /// The codes of the rows of a block, blocks being of so many rows.
+    pub fn block(&self, block: usize, rows: usize) -> &[u8] {
+        let start = (block * rows).min(self.codes.len());
+        let end = (start + rows).min(self.codes.len());
+        self.codes.get(start..end).unwrap_or(&[])
     }
 
-    /// What a code is worth.
-    pub fn value(&self, code: u8) -> f64 {
-        self.values.get(usize::from(code)).copied().unwrap_or(0.0)
+    /// What a code is worth; for a row without such a word less than anything.
+    #[inline]
+    pub fn value_or_lost(&self, code: u8) -> f64 {
+        self.values
+            .get(usize::from(code))
+            .copied()
+            .unwrap_or(f64::NEG_INFINITY)
+    }
+
+    /// True if no row has a word like it.
+    pub const fn is_nowhere(&self) -> bool {
+        self.nowhere
     }
 
     fn note(&mut self, code: u8, rows: &[u8]) {
+        self.nowhere = false;
         for row in numbers(rows) {
             if let Some(known) = self.codes.get_mut(row as usize) {
                 *known = code.max(*known);
@@ -51,7 +64,7 @@ fn values(letters: usize) -> [f64; 256] {
     let mut values = [0.0; 256];
     for (code, value) in (0..=u8::MAX).zip(&mut values) {
         *value = match code {
-            NONE => 0.0,
+            NONE => f64::NEG_INFINITY,
             DIGITS => Nearness::FirstDigits.value(),
             SLIP => Nearness::OneSlip.value(),
             WHOLE => Nearness::Whole.value(),
@@ -71,15 +84,17 @@ impl Index {
         let mut found = Likenesses {
             codes: vec![NONE; self.rows()],
             values: values(typed.len()),
+            nowhere: true,
         };
         if typed.is_empty() {
             return found;
         }
         let begin = self.first_word(|word| word >= typed.as_bytes());
-        let end = self.first_word(|word| word >= typed.as_bytes() && !word.starts_with(typed.as_bytes()));
+        let end =
+            self.first_word(|word| word >= typed.as_bytes() && !word.starts_with(typed.as_bytes()));
         let number = likeness::is_number(typed);
         self.each_of(begin..end, |word, rows| {
-            let more = word.len() - typed.len();
+            let more = word.len().saturating_sub(typed.len());
             let code = match u8::try_from(more) {
                 Ok(0) => WHOLE,
                 _ if number => DIGITS,
@@ -108,7 +123,9 @@ impl Index {
             let mut pair = numbers(&entry);
             Some((pair.next()?, pair.next()?))
         };
-        let first = halved(self.names(), |at| of(at).is_some_and(|(sum, _)| sum >= wanted));
+        let first = halved(self.names(), |at| {
+            of(at).is_some_and(|(sum, _)| sum >= wanted)
+        });
         let found = (first..self.names())
             .map_while(of)
             .take_while(|(sum, _)| *sum == wanted);
@@ -150,8 +167,8 @@ impl Index {
         let row_ends = self.entries(Section::RowEnds, words);
         let (mut letter, mut row) = (0, 0);
         for (word_end, row_end) in numbers(&word_ends).zip(numbers(&row_ends)) {
-            let word_end = (u64::from(word_end) - letters_at.start) as usize;
-            let row_end = (u64::from(row_end) - rows_at.start) as usize * 4;
+            let word_end = u64::from(word_end).saturating_sub(letters_at.start) as usize;
+            let row_end = u64::from(row_end).saturating_sub(rows_at.start) as usize * 4;
             let word = letters.get(letter..word_end).unwrap_or(&[]);
             if let (Ok(word), Some(rows)) = (std::str::from_utf8(word), rows.get(row..row_end)) {
                 then(word, rows);

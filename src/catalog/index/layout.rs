@@ -225,7 +225,7 @@ impl Index {
         let place = self.place(section);
         let at = |entry: u64| place.start + entry * section.width();
         let (start, end) = (at(range.start), at(range.end));
-        if end > place.end {
+        if start > end || end > place.end {
             return Cow::Borrowed(&[]);
         }
         self.bytes.part(start..end).unwrap_or_default()

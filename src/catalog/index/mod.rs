@@ -10,6 +10,8 @@ mod bytes;
 mod candidates;
 mod dictionary;
 mod layout;
+#[cfg(test)]
+mod tests;
 
 pub use builder::{Builder, Facts};
 pub use bytes::Bytes;

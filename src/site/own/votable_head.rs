@@ -1,0 +1,380 @@
+//! What stands before the rows of a VOTable: the frame of its coordinates and what each column holds.
+//!
+//! Source: IVOA Recommendation *VOTable Format Definition* 1.4 (elements `COOSYS`, `TABLE`, `FIELD`, `DATA`, `TABLEDATA`),
+//! the IVOA's *UCD1+ Controlled Vocabulary* 1.4, and *Units in the VO* 1.0; all from memory. A column is known by its UCD
+//! (of the older vocabulary too), else by its name if that is one of the usual ones. A unit is never guessed at: a column
+//! of coordinates without one, or with one not known, is a fault. A table that states no frame is taken to be in the ICRS.
+
+use std::collections::HashMap;
+use std::ops::Range;
+
+use quick_xml::Reader;
+use quick_xml::events::{BytesStart, Event};
+
+use crate::site::fault::Fault;
+use crate::site::own::votable_unit::{Angular, PerYear};
+use crate::sky::Equinox;
+
+/// What the head says.
+#[derive(Clone, Debug)]
+pub struct Head {
+    /// Of each column in order.
+    pub columns: Vec<Column>,
+    /// Of the places.
+    pub equinox: Equinox,
+    /// Of the places, where no column says it, a Julian year.
+    pub epoch: f64,
+    /// Where the rows begin.
+    pub begin: usize,
+}
+
+/// A column.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Column {
+    /// Its name.
+    pub name: String,
+    /// What it holds.
+    pub holds: Holds,
+    /// The text that stands for nothing.
+    pub null: Option<String>,
+}
+
+/// What a column holds.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Holds {
+    /// The name a row goes by.
+    Name,
+    /// A further name.
+    Also,
+    /// Right ascension.
+    Ra(Angular),
+    /// Declination.
+    Dec(Angular),
+    /// Proper motion in right ascension, on the sky.
+    PmRa(PerYear),
+    /// Proper motion in declination.
+    PmDec(PerYear),
+    /// Parallax, of so many milliseconds of arc a unit.
+    Parallax(f64),
+    /// Magnitude.
+    Magnitude,
+    /// The epoch of the place, in years.
+    Epoch,
+    /// Nothing that is wanted.
+    Other,
+}
+
+/// A `FIELD` as it is written.
+#[derive(Clone, Debug, Default)]
+struct Field {
+    name: String,
+    ucd: String,
+    unit: Option<String>,
+    reference: Option<String>,
+    null: Option<String>,
+    is_text: bool,
+    at: Range<usize>,
+}
+
+/// A `COOSYS` as it is written.
+#[derive(Clone, Debug)]
+struct Frame {
+    system: String,
+    equinox: Option<String>,
+    epoch: Option<String>,
+    at: Range<usize>,
+}
+
+impl Head {
+    /// Reads the head of the first table of a document.
+    pub fn read(text: &str) -> Result<Self, Vec<Fault>> {
+        let mut reader = Reader::from_str(text);
+        let mut frames: HashMap<String, Frame> = HashMap::new();
+        let mut fields: Vec<Field> = Vec::new();
+        let mut from = 0;
+        let whole = |message: String, hint: &str| vec![Fault::new(0..0, message).hint(hint)];
+        loop {
+            let event = reader.read_event();
+            let at = from..position(&reader);
+            from = at.end;
+            match event {
+                Ok(Event::Start(tag)) if tag.local_name().as_ref() == "TABLEDATA" => {
+                    return of(&frames, &fields, at.end);
+                }
+                Ok(Event::Start(tag) | Event::Empty(tag)) => match tag.local_name().as_ref() {
+                    "COOSYS" => {
+                        let id = attribute(&tag, "ID").unwrap_or_default();
+                        frames.insert(
+                            id,
+                            Frame {
+                                system: attribute(&tag, "system").unwrap_or_default(),
+                                equinox: attribute(&tag, "equinox"),
+                                epoch: attribute(&tag, "epoch"),
+                                at,
+                            },
+                        );
+                    }
+                    "FIELD" => fields.push(Field::of(&tag, at)),
+                    "VALUES" => {
+                        if let Some(field) = fields.last_mut() {
+                            field.null = attribute(&tag, "null");
+                        }
+                    }
+                    "BINARY" | "BINARY2" | "FITS" => {
+                        return Err(vec![
+                            Fault::new(at, "rows in this form are not read")
+                                .hint("save the table with its rows as TABLEDATA"),
+                        ]);
+                    }
+                    _ => {}
+                },
+                Ok(Event::Eof) => {
+                    return Err(whole(
+                        "this VOTable has no rows in a TABLEDATA".to_owned(),
+                        "save it with its rows as TABLEDATA",
+                    ));
+                }
+                Ok(_) => {}
+                Err(error) => {
+                    let message = format!("this is not well-formed XML: {error}");
+                    return Err(vec![Fault::new(at, message).hint("save the table anew")]);
+                }
+            }
+        }
+    }
+}
+
+fn position(reader: &Reader<&[u8]>) -> usize {
+    usize::try_from(reader.buffer_position()).unwrap_or(usize::MAX)
+}
+
+fn attribute(tag: &BytesStart<'_>, name: &str) -> Option<String> {
+    let found = tag.try_get_attribute(name).ok()??;
+    let text = quick_xml::escape::unescape(&found.value).ok()?;
+    Some(text.trim().to_owned()).filter(|text| !text.is_empty())
+}
+
+impl Field {
+    fn of(tag: &BytesStart<'_>, at: Range<usize>) -> Self {
+        let datatype = attribute(tag, "datatype");
+        Self {
+            name: attribute(tag, "name").unwrap_or_default(),
+            ucd: attribute(tag, "ucd").unwrap_or_default().to_lowercase(),
+            unit: attribute(tag, "unit"),
+            reference: attribute(tag, "ref"),
+            null: None,
+            is_text: datatype.is_some_and(|of| matches!(of.as_str(), "char" | "unicodeChar")),
+            at,
+        }
+    }
+
+    fn has(&self, parts: &[&str]) -> bool {
+        let ucd = self.ucd.as_str();
+        !ucd.contains("error") && parts.iter().all(|part| ucd.contains(part))
+    }
+
+    fn is_main(&self) -> bool {
+        self.ucd.contains("main")
+    }
+
+    fn is_called(&self, names: &[&str]) -> bool {
+        self.ucd.is_empty()
+            && names
+                .iter()
+                .any(|name| name.eq_ignore_ascii_case(&self.name))
+    }
+
+    fn is_ra(&self) -> bool {
+        (self.has(&["pos.eq.ra"]) && !self.has(&["pos.pm"]))
+            || self.has(&["pos_eq_ra"])
+            || self.is_called(&["ra", "raj2000", "_raj2000", "ra_icrs", "ra2000"])
+    }
+
+    fn is_dec(&self) -> bool {
+        (self.has(&["pos.eq.dec"]) && !self.has(&["pos.pm"]))
+            || self.has(&["pos_eq_dec"])
+            || self.is_called(&["dec", "de", "dej2000", "_dej2000", "de_icrs", "dec2000"])
+    }
+
+    fn is_name(&self) -> bool {
+        self.has(&["meta.id"])
+            || self.has(&["id_main"])
+            || self.is_called(&["name", "id", "designation", "main_id"])
+    }
+
+    fn is_magnitude(&self) -> bool {
+        self.has(&["phot.mag"])
+            || self.has(&["phot_mag"])
+            || self.is_called(&["mag", "vmag", "magnitude"])
+    }
+}
+
+/// The one of the columns it is: the main one, else the first.
+fn chosen(
+    fields: &[Field],
+    is_one: impl Fn(&Field) -> bool,
+    is_better: impl Fn(&Field) -> bool,
+) -> Option<usize> {
+    let ones = || fields.iter().enumerate().filter(|(_, field)| is_one(field));
+    let better = ones().find(|(_, field)| is_better(field));
+    better.or_else(|| ones().next()).map(|(at, _)| at)
+}
+
+/// From what is written to what it means.
+fn of(frames: &HashMap<String, Frame>, fields: &[Field], begin: usize) -> Result<Head, Vec<Fault>> {
+    let mut faults = Vec::new();
+    let mut holds = vec![Holds::Other; fields.len()];
+    let set = |holds: &mut Vec<Holds>, at: usize, what: Holds| {
+        if let Some(held) = holds.get_mut(at) {
+            *held = what;
+        }
+    };
+    for (at, _) in fields
+        .iter()
+        .enumerate()
+        .filter(|(_, field)| field.is_name())
+    {
+        set(&mut holds, at, Holds::Also);
+    }
+    let name = chosen(fields, Field::is_name, Field::is_main);
+    let ra = chosen(fields, Field::is_ra, Field::is_main);
+    let dec = chosen(fields, Field::is_dec, Field::is_main);
+    for (what, found, ucd) in [
+        ("the name of a row", name, "meta.id;meta.main"),
+        ("the right ascension", ra, "pos.eq.ra;meta.main"),
+        ("the declination", dec, "pos.eq.dec;meta.main"),
+    ] {
+        if found.is_none() {
+            let hint = format!("give the FIELD that does ucd=\"{ucd}\"");
+            faults.push(Fault::new(begin..begin, format!("no column holds {what}")).hint(hint));
+        }
+    }
+    if let Some(at) = name {
+        set(&mut holds, at, Holds::Name);
+    }
+    let mut angle = |at: Option<usize>, hours: bool, hold: fn(Angular) -> Holds| {
+        let Some((at, field)) = at.and_then(|at| Some((at, fields.get(at)?))) else {
+            return;
+        };
+        match Angular::of(field.unit.as_deref(), field.is_text, hours) {
+            Some(unit) => set(&mut holds, at, hold(unit)),
+            None => faults.push(unit_fault(
+                field,
+                "deg, rad, or for text \"h:m:s\" and \"d:m:s\"",
+            )),
+        }
+    };
+    angle(ra, true, Holds::Ra);
+    angle(dec, false, Holds::Dec);
+    for (part, hold) in [
+        ("ra", Holds::PmRa as fn(PerYear) -> Holds),
+        ("dec", Holds::PmDec),
+    ] {
+        let is_motion = |field: &Field| {
+            field.has(&["pos.pm", &format!("pos.eq.{part}")])
+                || field.has(&[&format!("pos_eq_pm{part}")])
+                || field.is_called(&[&format!("pm{part}")])
+        };
+        let Some(at) = chosen(fields, is_motion, Field::is_main) else {
+            continue;
+        };
+        let Some(field) = fields.get(at) else {
+            continue;
+        };
+        match PerYear::of(field.unit.as_deref()) {
+            Some(unit) => set(&mut holds, at, hold(unit)),
+            None => faults.push(unit_fault(field, "mas/yr, arcsec/yr, deg/yr or rad/yr")),
+        }
+    }
+    let is_parallax = |field: &Field| field.has(&["pos.parallax"]);
+    if let Some(at) = chosen(fields, is_parallax, Field::is_main)
+        && let Some(field) = fields.get(at)
+    {
+        match field.unit.as_deref() {
+            Some("mas") => set(&mut holds, at, Holds::Parallax(1.0)),
+            Some("arcsec") => set(&mut holds, at, Holds::Parallax(1000.0)),
+            _ => faults.push(unit_fault(field, "mas or arcsec")),
+        }
+    }
+    let visual = |field: &Field| field.has(&["em.opt.v"]) || field.name.starts_with(['V', 'v']);
+    if let Some(at) = chosen(fields, Field::is_magnitude, visual) {
+        set(&mut holds, at, Holds::Magnitude);
+    }
+    if let Some(at) = chosen(fields, |field| field.has(&["time.epoch"]), Field::is_main)
+        && fields
+            .get(at)
+            .is_some_and(|field| matches!(field.unit.as_deref(), Some("yr" | "a" | "year")))
+    {
+        set(&mut holds, at, Holds::Epoch);
+    }
+    let frame = frame(frames, ra.and_then(|at| fields.get(at)));
+    let (equinox, epoch) = frame.unwrap_or_else(|fault| {
+        faults.push(fault);
+        (Equinox::Icrs, 2000.0)
+    });
+    if !faults.is_empty() {
+        return Err(faults);
+    }
+    let columns = fields.iter().zip(holds).map(|(field, holds)| Column {
+        name: field.name.replace('_', " "),
+        holds,
+        null: field.null.clone(),
+    });
+    Ok(Head {
+        columns: columns.collect(),
+        equinox,
+        epoch,
+        begin,
+    })
+}
+
+fn unit_fault(field: &Field, known: &str) -> Fault {
+    let message = match &field.unit {
+        Some(unit) => format!("the unit \"{unit}\" is not known here"),
+        None => format!("the column {} states no unit", field.name),
+    };
+    Fault::new(field.at.clone(), message).hint(format!("known are {known}"))
+}
+
+/// Equinox and epoch of the places, by the frame their column names, else the only one.
+fn frame(frames: &HashMap<String, Frame>, column: Option<&Field>) -> Result<(Equinox, f64), Fault> {
+    let named = column.and_then(|field| frames.get(field.reference.as_ref()?));
+    let only = || frames.values().next().filter(|_| frames.len() == 1);
+    let Some(frame) = named.or_else(only) else {
+        return Ok((Equinox::Icrs, 2000.0));
+    };
+    let fault = |message: String| {
+        Fault::new(frame.at.clone(), message)
+            .hint("known are ICRS, FK5 and FK4 with their equinoxes")
+    };
+    let system = frame.system.to_lowercase();
+    let (usual, letter) = match system.trim_start_matches("eq_") {
+        "icrs" | "" => (Equinox::Icrs, 'J'),
+        "fk5" => (Equinox::J2000, 'J'),
+        "fk4" => (Equinox::B1950, 'B'),
+        _ => {
+            let system = &frame.system;
+            return Err(fault(format!(
+                "the frame \"{system}\" is not one of right ascension and declination known here"
+            )));
+        }
+    };
+    let year = |text: &str| -> Result<Equinox, Fault> {
+        let lettered = if text.starts_with(|c: char| c.is_ascii_digit()) {
+            format!("{letter}{text}")
+        } else {
+            text.to_owned()
+        };
+        let read = lettered.parse::<Equinox>();
+        read.map_err(|wrong| fault(wrong.to_string()))
+    };
+    let equinox = match (&usual, &frame.equinox) {
+        (Equinox::Icrs, _) | (_, None) => usual,
+        (_, Some(text)) => year(text)?,
+    };
+    let epoch = match &frame.epoch {
+        Some(text) => year(text)?.epoch(),
+        None => equinox.epoch(),
+    };
+    Ok((equinox, epoch))
+}
