@@ -13,6 +13,7 @@ mod faults;
 mod learnt;
 mod mark;
 mod misread;
+mod own_catalogues;
 mod page;
 mod plan;
 mod pretended;

@@ -50,6 +50,7 @@ impl Home {
             .env("HOME", self.folder.path())
             .env("XDG_CONFIG_HOME", self.path("config"))
             .env("XDG_STATE_HOME", self.path("state"))
+            .env("XDG_CACHE_HOME", self.path("cache"))
             .args(words);
         command
     }
