@@ -162,10 +162,7 @@ impl Folders {
     }
 
     /// The user's own catalogues, in alphabetical order, each opened or with what is wrong with it as a whole.
-    pub fn catalogues(
-        &self,
-        progress: &mut own::Progress<'_>,
-    ) -> Result<Vec<(PathBuf, Result<own::Opened, Faults>)>, Faults> {
+    pub fn catalogues(&self, progress: &mut own::Progress<'_>) -> Result<Vec<own::Tried>, Faults> {
         let opened = self.paths(Shelf::Catalogs)?.into_iter().map(|path| {
             let opened = own::open(&path, &self.indexes, progress);
             (path, opened)

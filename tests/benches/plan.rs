@@ -45,7 +45,7 @@ fn targets(count: usize) -> Vec<Target> {
 
 fn station() -> (nonius::site::Site, Mount) {
     let nowhere = Path::new("no folder of anyone's");
-    let folders = Folders::at(nowhere, nowhere);
+    let folders = Folders::at(nowhere, nowhere, nowhere);
     let site = folders.site("tarn-hollow").unwrap();
     let mount = folders.mount_of(&site).unwrap().mount;
     (site.site, mount)

@@ -5,6 +5,7 @@
 //! one reading of the same run: adding up the bytes of the built-in table of the NGC.
 //!
 //! `cargo bench --bench search`; `-- ROWS` for another number of rows.
+#![allow(clippy::unwrap_used, clippy::cast_possible_truncation, missing_docs)]
 
 use std::hint::black_box;
 use std::io::Write as _;
@@ -129,8 +130,7 @@ fn keys(what: &str, catalogue: &Catalogue, reference: f64) {
 
 fn main() {
     let rows = std::env::args()
-        .filter_map(|word| word.parse().ok())
-        .next()
+        .find_map(|word| word.parse().ok())
         .unwrap_or(ROWS);
     let table = include_bytes!("../../catalogs/ngc.csv");
     let reference = typical(|| {

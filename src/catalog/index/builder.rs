@@ -196,7 +196,7 @@ impl Builder {
                     }));
                 }
                 Section::RowEnds => {
-                    bytes.extend(postings.ends.iter().flat_map(|end| end.to_le_bytes()))
+                    bytes.extend(postings.ends.iter().flat_map(|end| end.to_le_bytes()));
                 }
                 Section::Rows => {
                     bytes.extend(postings.rows.iter().flat_map(|row| row.to_le_bytes()));

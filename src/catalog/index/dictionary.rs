@@ -167,8 +167,8 @@ impl Index {
         let row_ends = self.entries(Section::RowEnds, words);
         let (mut letter, mut row) = (0, 0);
         for (word_end, row_end) in numbers(&word_ends).zip(numbers(&row_ends)) {
-            let word_end = u64::from(word_end).saturating_sub(letters_at.start) as usize;
-            let row_end = u64::from(row_end).saturating_sub(rows_at.start) as usize * 4;
+            let word_end = within(word_end, letters_at.start);
+            let row_end = within(row_end, rows_at.start).saturating_mul(4);
             let word = letters.get(letter..word_end).unwrap_or(&[]);
             if let (Ok(word), Some(rows)) = (std::str::from_utf8(word), rows.get(row..row_end)) {
                 then(word, rows);
@@ -176,6 +176,12 @@ impl Index {
             (letter, row) = (word_end, row_end);
         }
     }
+}
+
+/// How far an end is from where the part read begins.
+fn within(end: u32, start: u64) -> usize {
+    let distance = u64::from(end).saturating_sub(start);
+    usize::try_from(distance).unwrap_or(usize::MAX)
 }
 
 /// The first of so many places of which something is true that is true of all that follow it.

@@ -125,6 +125,7 @@ proptest! {
     ) {
         let mut bytes = built(&rows);
         let whole = bytes.len();
+        #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // within the bytes
         let at = |share: f64| ((share * whole as f64) as usize).min(whole - 1);
         if let Some((place, byte)) = change {
             bytes[at(place)] = byte;

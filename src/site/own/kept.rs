@@ -7,7 +7,7 @@ use std::path::{Path, PathBuf};
 use std::time::UNIX_EPOCH;
 
 use crate::catalog::index::{Builder, Bytes, Facts, Index, Stamp};
-use crate::catalog::{Catalogue, Target, kept_direction};
+use crate::catalog::{Catalogue, Constellation, Target, kept_direction};
 use crate::site::fault::Faults;
 use crate::site::folders::stem;
 use crate::site::own::format::{Format, Read};
@@ -121,7 +121,7 @@ fn add(builder: &mut Builder, at: u64, target: &Target) {
         kinds: target.kind.bit(),
         constellation: target
             .constellation
-            .and_then(|constellation| constellation.position_in_table()),
+            .and_then(Constellation::position_in_table),
     });
     for name in target.names() {
         builder.name(name);

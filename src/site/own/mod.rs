@@ -15,7 +15,7 @@ mod votable_unit;
 mod wrong;
 
 use std::fs::File;
-use std::path::Path;
+use std::path::{Path, PathBuf};
 use std::sync::Arc;
 
 use crate::catalog::OwnCatalogue;
@@ -32,6 +32,9 @@ pub struct Opened {
     /// How many of its rows could not be read.
     pub unread: u64,
 }
+
+/// A catalogue's file, and the catalogue or what is wrong with it as a whole.
+pub type Tried = (PathBuf, Result<Opened, Faults>);
 
 /// Opens a catalogue; `kept` is the folder in which the indexes of large ones are kept.
 ///

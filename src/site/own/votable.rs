@@ -1,4 +1,4 @@
-//! A catalogue as a VOTable: the first table of the document, its rows in a TABLEDATA.
+//! A catalogue as a `VOTable`: the first table of the document, its rows in a TABLEDATA.
 
 use std::ops::Range;
 
@@ -22,7 +22,7 @@ use crate::sky::{CataloguePlace, Source};
 pub struct Votable(Head);
 
 impl Votable {
-    /// True of a text that begins a VOTable.
+    /// True of a text that begins a `VOTable`.
     pub fn is_begun_by(text: &str) -> bool {
         let begin = text.trim_start_matches('\u{feff}').trim_start();
         let near = begin.get(..4096).unwrap_or(begin);
@@ -47,9 +47,10 @@ impl Format for Votable {
 
     fn read(&self, piece: &str) -> Read {
         let Some(start) = row_start(piece) else {
-            return match piece.contains("</TABLEDATA>") {
-                true => Read::End,
-                false => Read::Nothing,
+            return if piece.contains("</TABLEDATA>") {
+                Read::End
+            } else {
+                Read::Nothing
             };
         };
         if piece

@@ -1,6 +1,6 @@
-//! What stands before the rows of a VOTable: the frame of its coordinates and what each column holds.
+//! What stands before the rows of a `VOTable`: the frame of its coordinates and what each column holds.
 //!
-//! Source: IVOA Recommendation *VOTable Format Definition* 1.4 (elements `COOSYS`, `TABLE`, `FIELD`, `DATA`, `TABLEDATA`),
+//! Source: IVOA Recommendation *`VOTable` Format Definition* 1.4 (elements `COOSYS`, `TABLE`, `FIELD`, `DATA`, `TABLEDATA`),
 //! the IVOA's *UCD1+ Controlled Vocabulary* 1.4, and *Units in the VO* 1.0; all from memory. A column is known by its UCD
 //! (of the older vocabulary too), else by its name if that is one of the usual ones. A unit is never guessed at: a column
 //! of coordinates without one, or with one not known, is a fault. A table that states no frame is taken to be in the ICRS.
@@ -222,100 +222,25 @@ fn chosen(
 
 /// From what is written to what it means.
 fn of(frames: &HashMap<String, Frame>, fields: &[Field], begin: usize) -> Result<Head, Vec<Fault>> {
-    let mut faults = Vec::new();
-    let mut holds = vec![Holds::Other; fields.len()];
-    let set = |holds: &mut Vec<Holds>, at: usize, what: Holds| {
-        if let Some(held) = holds.get_mut(at) {
-            *held = what;
-        }
+    let mut found = Finding {
+        fields,
+        holds: vec![Holds::Other; fields.len()],
+        faults: Vec::new(),
     };
-    for (at, _) in fields
-        .iter()
-        .enumerate()
-        .filter(|(_, field)| field.is_name())
-    {
-        set(&mut holds, at, Holds::Also);
-    }
-    let name = chosen(fields, Field::is_name, Field::is_main);
     let ra = chosen(fields, Field::is_ra, Field::is_main);
-    let dec = chosen(fields, Field::is_dec, Field::is_main);
-    for (what, found, ucd) in [
-        ("the name of a row", name, "meta.id;meta.main"),
-        ("the right ascension", ra, "pos.eq.ra;meta.main"),
-        ("the declination", dec, "pos.eq.dec;meta.main"),
-    ] {
-        if found.is_none() {
-            let hint = format!("give the FIELD that does ucd=\"{ucd}\"");
-            faults.push(Fault::new(begin..begin, format!("no column holds {what}")).hint(hint));
-        }
-    }
-    if let Some(at) = name {
-        set(&mut holds, at, Holds::Name);
-    }
-    let mut angle = |at: Option<usize>, hours: bool, hold: fn(Angular) -> Holds| {
-        let Some((at, field)) = at.and_then(|at| Some((at, fields.get(at)?))) else {
-            return;
-        };
-        match Angular::of(field.unit.as_deref(), field.is_text, hours) {
-            Some(unit) => set(&mut holds, at, hold(unit)),
-            None => faults.push(unit_fault(
-                field,
-                "deg, rad, or for text \"h:m:s\" and \"d:m:s\"",
-            )),
-        }
-    };
-    angle(ra, true, Holds::Ra);
-    angle(dec, false, Holds::Dec);
-    for (part, hold) in [
-        ("ra", Holds::PmRa as fn(PerYear) -> Holds),
-        ("dec", Holds::PmDec),
-    ] {
-        let is_motion = |field: &Field| {
-            field.has(&["pos.pm", &format!("pos.eq.{part}")])
-                || field.has(&[&format!("pos_eq_pm{part}")])
-                || field.is_called(&[&format!("pm{part}")])
-        };
-        let Some(at) = chosen(fields, is_motion, Field::is_main) else {
-            continue;
-        };
-        let Some(field) = fields.get(at) else {
-            continue;
-        };
-        match PerYear::of(field.unit.as_deref()) {
-            Some(unit) => set(&mut holds, at, hold(unit)),
-            None => faults.push(unit_fault(field, "mas/yr, arcsec/yr, deg/yr or rad/yr")),
-        }
-    }
-    let is_parallax = |field: &Field| field.has(&["pos.parallax"]);
-    if let Some(at) = chosen(fields, is_parallax, Field::is_main)
-        && let Some(field) = fields.get(at)
-    {
-        match field.unit.as_deref() {
-            Some("mas") => set(&mut holds, at, Holds::Parallax(1.0)),
-            Some("arcsec") => set(&mut holds, at, Holds::Parallax(1000.0)),
-            _ => faults.push(unit_fault(field, "mas or arcsec")),
-        }
-    }
-    let visual = |field: &Field| field.has(&["em.opt.v"]) || field.name.starts_with(['V', 'v']);
-    if let Some(at) = chosen(fields, Field::is_magnitude, visual) {
-        set(&mut holds, at, Holds::Magnitude);
-    }
-    if let Some(at) = chosen(fields, |field| field.has(&["time.epoch"]), Field::is_main)
-        && fields
-            .get(at)
-            .is_some_and(|field| matches!(field.unit.as_deref(), Some("yr" | "a" | "year")))
-    {
-        set(&mut holds, at, Holds::Epoch);
-    }
+    found.names(begin);
+    found.place(ra, begin);
+    found.motion();
+    found.light_and_time();
     let frame = frame(frames, ra.and_then(|at| fields.get(at)));
     let (equinox, epoch) = frame.unwrap_or_else(|fault| {
-        faults.push(fault);
+        found.faults.push(fault);
         (Equinox::Icrs, 2000.0)
     });
-    if !faults.is_empty() {
-        return Err(faults);
+    if !found.faults.is_empty() {
+        return Err(found.faults);
     }
-    let columns = fields.iter().zip(holds).map(|(field, holds)| Column {
+    let columns = fields.iter().zip(found.holds).map(|(field, holds)| Column {
         name: field.name.replace('_', " "),
         holds,
         null: field.null.clone(),
@@ -326,6 +251,108 @@ fn of(frames: &HashMap<String, Frame>, fields: &[Field], begin: usize) -> Result
         epoch,
         begin,
     })
+}
+
+/// What has been found out of the columns.
+struct Finding<'f> {
+    fields: &'f [Field],
+    holds: Vec<Holds>,
+    faults: Vec<Fault>,
+}
+
+impl Finding<'_> {
+    fn set(&mut self, at: usize, what: Holds) {
+        if let Some(held) = self.holds.get_mut(at) {
+            *held = what;
+        }
+    }
+
+    /// A column in its unit, if that is one of the known ones.
+    fn in_its_unit(
+        &mut self,
+        at: Option<usize>,
+        holds: impl FnOnce(&Field) -> Option<Holds>,
+        known: &str,
+    ) {
+        let Some((at, field)) = at.and_then(|at| Some((at, self.fields.get(at)?))) else {
+            return;
+        };
+        match holds(field) {
+            Some(holds) => self.set(at, holds),
+            None => self.faults.push(unit_fault(field, known)),
+        }
+    }
+
+    fn missing(&mut self, begin: usize, what: &str, ucd: &str) {
+        let hint = format!("give the FIELD that does ucd=\"{ucd}\"");
+        let message = format!("no column holds {what}");
+        self.faults
+            .push(Fault::new(begin..begin, message).hint(hint));
+    }
+
+    fn names(&mut self, begin: usize) {
+        for (at, field) in self.fields.iter().enumerate() {
+            if field.is_name() {
+                self.set(at, Holds::Also);
+            }
+        }
+        match chosen(self.fields, Field::is_name, Field::is_main) {
+            Some(at) => self.set(at, Holds::Name),
+            None => self.missing(begin, "the name of a row", "meta.id;meta.main"),
+        }
+    }
+
+    fn place(&mut self, ra: Option<usize>, begin: usize) {
+        const KNOWN: &str = "deg, rad, or for text \"h:m:s\" and \"d:m:s\"";
+        let dec = chosen(self.fields, Field::is_dec, Field::is_main);
+        if ra.is_none() {
+            self.missing(begin, "the right ascension", "pos.eq.ra;meta.main");
+        }
+        if dec.is_none() {
+            self.missing(begin, "the declination", "pos.eq.dec;meta.main");
+        }
+        let unit = |field: &Field, hours| Angular::of(field.unit.as_deref(), field.is_text, hours);
+        self.in_its_unit(ra, |field| unit(field, true).map(Holds::Ra), KNOWN);
+        self.in_its_unit(dec, |field| unit(field, false).map(Holds::Dec), KNOWN);
+    }
+
+    fn motion(&mut self) {
+        for (part, hold) in [
+            ("ra", Holds::PmRa as fn(PerYear) -> Holds),
+            ("dec", Holds::PmDec),
+        ] {
+            let is_motion = |field: &Field| {
+                field.has(&["pos.pm", &format!("pos.eq.{part}")])
+                    || field.has(&[&format!("pos_eq_pm{part}")])
+                    || field.is_called(&[&format!("pm{part}")])
+            };
+            let at = chosen(self.fields, is_motion, Field::is_main);
+            let unit = |field: &Field| PerYear::of(field.unit.as_deref()).map(hold);
+            self.in_its_unit(at, unit, "mas/yr, arcsec/yr, deg/yr or rad/yr");
+        }
+        let is_parallax = |field: &Field| field.has(&["pos.parallax"]);
+        let at = chosen(self.fields, is_parallax, Field::is_main);
+        let unit = |field: &Field| match field.unit.as_deref() {
+            Some("mas") => Some(Holds::Parallax(1.0)),
+            Some("arcsec") => Some(Holds::Parallax(1000.0)),
+            _ => None,
+        };
+        self.in_its_unit(at, unit, "mas or arcsec");
+    }
+
+    fn light_and_time(&mut self) {
+        let visual = |field: &Field| field.has(&["em.opt.v"]) || field.name.starts_with(['V', 'v']);
+        if let Some(at) = chosen(self.fields, Field::is_magnitude, visual) {
+            self.set(at, Holds::Magnitude);
+        }
+        let is_epoch = |field: &Field| {
+            let in_years = matches!(field.unit.as_deref(), Some("yr" | "a" | "year"));
+            field.has(&["time.epoch"]) && in_years
+        };
+        if let Some(at) = chosen(self.fields, is_epoch, Field::is_main) {
+            self.set(at, Holds::Epoch);
+        }
+    }
 }
 
 fn unit_fault(field: &Field, known: &str) -> Fault {

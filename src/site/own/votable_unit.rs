@@ -1,4 +1,4 @@
-//! The units of the columns of a VOTable, as *Units in the VO* 1.0 and the tables of the data centres write them.
+//! The units of the columns of a `VOTable`, as *Units in the VO* 1.0 and the tables of the data centres write them.
 
 use crate::angle::Angle;
 
