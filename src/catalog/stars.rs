@@ -116,6 +116,13 @@ impl Star {
         self.row.field_from_end(2).parse().ok()
     }
 
+    /// Its declination in the ICRS at J2000.0.
+    #[must_use]
+    pub fn declination(self) -> Option<Declination> {
+        let [_, _, dec] = self.row.all();
+        Some(Declination::from_degrees(dec.parse().ok()?))
+    }
+
     /// The constellation it stands in by the boundaries.
     #[must_use]
     pub fn constellation(self) -> Option<&'static Constellation> {
