@@ -96,6 +96,8 @@ pub const EQUINOX_YEAR: Bound = Bound::new("year of the equinox", "", 1750.0, 22
 pub const EPOCH: Bound = Bound::new("epoch", "", 1750.0, 2200.0);
 /// Field of an optic.
 pub const FIELD: Bound = Bound::new("field", "degrees", 0.001, 60.0);
+/// Place of an eyepiece about the tube.
+pub const TURNED: Bound = Bound::new("turned", "degrees", 0.0, 360.0);
 /// Smallest engraved division of a circle, or the least count of its vernier.
 pub const DIVISION: Bound = Bound::new("division", "seconds of arc", 1.0, 324_000.0);
 /// Error of one look at a circle, 1 sigma.

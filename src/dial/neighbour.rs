@@ -157,7 +157,7 @@ mod tests {
     use crate::catalog::Catalogue;
     use crate::dial::dial;
     use crate::dial::trial::{Trial, moment, target};
-    use crate::metal::{MountErrors, Optic, to_axes, to_sky};
+    use crate::metal::{MountErrors, Optic, View, to_axes, to_sky};
 
     fn stars() -> Vec<Target> {
         Catalogue::builtin().bright_stars(bright::FAINTEST_RIVAL_HP)
@@ -234,6 +234,8 @@ mod tests {
         trial.mount.optics = vec![Optic {
             name: "40 mm".to_owned(),
             field: Angle::from_degrees(1.0),
+            view: View::default(),
+            turned: None,
         }];
         let now = moment("2026-12-01T21:30:00Z");
         let found = of(&trial, "2026-12-01T21:30:00Z", "M 37").unwrap();

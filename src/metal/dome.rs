@@ -7,7 +7,7 @@
 
 use crate::angle::{Altitude, Angle, Azimuth, Declination, HourAngle, Latitude};
 use crate::metal::errors::MountErrors;
-use crate::metal::frames::{direction, to_horizon};
+use crate::metal::frames::{direction, dot, northward, scaled, sum, to_horizon};
 use crate::metal::geometry::{Axes, to_sky};
 use crate::metal::mount::{Dome, Tube};
 
@@ -18,6 +18,8 @@ pub struct TubeDirections {
     sky: [f64; 3],
     /// From the crossing of the axes toward the tube.
     tube_end: [f64; 3],
+    /// Across the line of sight, toward the north celestial pole.
+    north: [f64; 3],
 }
 
 /// Where the slit must stand, from the centre of the dome's sphere.
@@ -61,7 +63,23 @@ impl TubeDirections {
         Self {
             sky: to_horizon(direction(hour_angle, declination), latitude),
             tube_end: to_horizon(direction(end_hour_angle, end_declination), latitude),
+            north: to_horizon(northward(hour_angle, declination), latitude),
         }
+    }
+
+    /// Toward the sky; east, north and up.
+    pub(super) const fn sky(&self) -> [f64; 3] {
+        self.sky
+    }
+
+    /// From the crossing of the axes toward the tube; east, north and up.
+    pub(super) const fn tube_end(&self) -> [f64; 3] {
+        self.tube_end
+    }
+
+    /// Across the line of sight, toward the north celestial pole; east, north and up.
+    pub(super) const fn north(&self) -> [f64; 3] {
+        self.north
     }
 
     /// The point of the line of sight so far toward the sky from the foot of the tube, from the crossing of
@@ -110,18 +128,6 @@ impl Tube {
             north_m,
         }
     }
-}
-
-fn sum([a, b, c]: [f64; 3], [x, y, z]: [f64; 3]) -> [f64; 3] {
-    [a + x, b + y, c + z]
-}
-
-fn scaled([a, b, c]: [f64; 3], factor: f64) -> [f64; 3] {
-    [a * factor, b * factor, c * factor]
-}
-
-fn dot([a, b, c]: [f64; 3], [x, y, z]: [f64; 3]) -> f64 {
-    a * x + b * y + c * z
 }
 
 #[cfg(test)]

@@ -20,6 +20,7 @@ pub mod side;
 pub mod side_choice;
 pub mod strip;
 pub mod typed;
+pub mod view;
 
 pub use circle::{
     DeclinationCircle, DeclinationNumbering, HourCircle, HourNumbering, Increases, Ring,
@@ -37,3 +38,4 @@ pub use side::Side;
 pub use side_choice::{NoSuchSide, SideRequest, UnknownSide};
 pub use strip::StripMark;
 pub use typed::{read_dec, read_hour};
+pub use view::{Orientation, View};

@@ -3,6 +3,7 @@
 use crate::angle::{Altitude, Angle, HourAngle};
 use crate::metal::circle::{DeclinationCircle, HourCircle};
 use crate::metal::errors::COUNT;
+use crate::metal::view::View;
 
 /// How the mount carries its tube.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -123,6 +124,11 @@ pub struct Optic {
     pub name: String,
     /// The diameter of its field on the sky.
     pub field: Angle,
+    /// How its picture stands against what the naked eye sees.
+    pub view: View,
+    /// Where an eyepiece that looks out at the side of the tube stands, about the tube; nothing for one looked through along
+    /// the tube, and for one that is turned upward for every object.
+    pub turned: Option<Angle>,
 }
 
 /// A mount.

@@ -4,10 +4,10 @@
 use crate::angle::{Altitude, Angle, HourAngle};
 use crate::bounds::{
     AXES_ABOVE_FLOOR, AXES_IN_DOME, Bound, DOME_RADIUS, ECCENTRICITY, EXPECTED_ERROR, EYEPIECE,
-    FIELD, LIMIT_HOUR_ANGLE, LOWEST_ALTITUDE, TUBE_OFFSET,
+    FIELD, LIMIT_HOUR_ANGLE, LOWEST_ALTITUDE, TUBE_OFFSET, TURNED,
 };
 use crate::metal::{
-    Dome, ExpectedErrors, HourAngleSpan, HourCircle, Kind, Limits, Mount, Optic, Ring, Tube,
+    Dome, ExpectedErrors, HourAngleSpan, HourCircle, Kind, Limits, Mount, Optic, Ring, Tube, View,
 };
 use crate::sexagesimal::Unit;
 use crate::site::circle_file;
@@ -21,6 +21,13 @@ const KINDS: [(&str, Kind); 4] = [
     ("cross-axis", Kind::CrossAxis),
     ("fork", Kind::Fork),
     ("yoke", Kind::Yoke),
+];
+
+const VIEWS: [(&str, View); 4] = [
+    (View::Upright.word(), View::Upright),
+    (View::Inverted.word(), View::Inverted),
+    (View::Mirrored.word(), View::Mirrored),
+    (View::UpsideDown.word(), View::UpsideDown),
 ];
 
 /// A mount and the file it came from.
@@ -259,9 +266,15 @@ fn optics(top: &mut Section<'_>) -> Vec<Optic> {
         let field = section
             .required("field")
             .and_then(|v| written_angle::size(&v, Some(Unit::Degrees), &FIELD, Angle::degrees));
+        let view = section.optional("view").and_then(|v| v.word(&VIEWS));
+        let turned = section
+            .optional("turned")
+            .and_then(|v| written_angle::size(&v, Some(Unit::Degrees), &TURNED, Angle::degrees));
         Some(Optic {
             name: name?.to_owned(),
             field: field?,
+            view: view.unwrap_or_default(),
+            turned,
         })
     })
 }
@@ -314,6 +327,20 @@ mod tests {
             ExpectedErrors::default().polar_high
         );
         assert!((east.expected.polar_east.arcminutes() - 10.0).abs() < 1e-12);
+    }
+
+    #[test]
+    fn an_optic_is_looked_through_straight_and_inverts_if_nothing_is_said() {
+        let text = format!(
+            "{LEAST}[[optic]]\nname = \"a\"\nfield = \"1d\"\n\
+             [[optic]]\nname = \"b\"\nfield = \"1d\"\nview = \"mirrored\"\nturned = \"270d\"\n"
+        );
+        let optics = read(&text).unwrap().optics;
+        assert_eq!((optics[0].view, optics[0].turned), (View::Inverted, None));
+        assert_eq!(
+            (optics[1].view, optics[1].turned),
+            (View::Mirrored, Some(Angle::from_degrees(270.0)))
+        );
     }
 
     #[test]

@@ -51,6 +51,19 @@ impl Apparent {
 }
 
 impl Observed {
+    /// The position angle in which another place is seen from here, from north through east, by spherical
+    /// trigonometry.
+    #[must_use]
+    pub fn position_angle_of(&self, other: &Self) -> Angle {
+        let (here, there) = (self.declination.angle(), other.declination.angle());
+        // hour angles run westward
+        let east = self.hour_angle.angle() - other.hour_angle.angle();
+        Angle::from_radians(f64::atan2(
+            there.cos() * east.sin(),
+            here.cos() * there.sin() - here.sin() * there.cos() * east.cos(),
+        ))
+    }
+
     /// How far it is from another place on the sky.
     #[must_use]
     pub fn separation(&self, other: &Self) -> Angle {

@@ -168,6 +168,13 @@ impl Utc {
         Tt(day, (elapsed + tai_minus_utc + TT_MINUS_TAI_S) / 86_400.0)
     }
 
+    /// The same instant as a Julian year, as epochs and equinoxes are named.
+    #[must_use]
+    pub fn julian_year(self) -> f64 {
+        let Tt(day, fraction) = self.tt();
+        sofars::cal::epj(day, fraction)
+    }
+
     /// RFC 3339 text with as many decimals of a second as it has, up to milliseconds.
     #[must_use]
     pub fn rfc3339(self) -> String {

@@ -6,6 +6,7 @@ mod chance;
 mod circles;
 mod dome;
 mod equinoxes;
+mod eyepiece;
 mod fit;
 mod meeus;
 mod moon;

@@ -11,7 +11,7 @@ use nonius::catalog::Catalogue;
 use nonius::estimate::Prior;
 use nonius::metal::{
     DeclinationCircle, DeclinationNumbering, ExpectedErrors, HourCircle, HourNumbering, Increases,
-    Kind, Limits, Mount, MountErrors, Optic, Ring,
+    Kind, Limits, Mount, MountErrors, Optic, Ring, View,
 };
 use nonius::night::{Begun, JournalFault, ListedTarget, Opening, Session, SessionFault};
 use nonius::screen::desk::Desk;
@@ -65,10 +65,14 @@ pub fn mount() -> Mount {
             Optic {
                 name: "finder".to_owned(),
                 field: Angle::from_degrees(6.0),
+                view: View::Inverted,
+                turned: None,
             },
             Optic {
                 name: "40 mm".to_owned(),
                 field: Angle::from_degrees(1.0),
+                view: View::Mirrored,
+                turned: None,
             },
         ],
     }
