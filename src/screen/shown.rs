@@ -8,10 +8,11 @@ use crate::catalog::{Filter, Target};
 use crate::dial::bright::Placed;
 use crate::dial::neighbour::{self, Neighbour};
 use crate::dial::ring::RingSetting;
-use crate::dial::{self, CautionCode, Dial, NotDialled, Setup};
+use crate::dial::{self, Field, NotDialled, Setup};
 use crate::metal::Side;
 use crate::night::{Known, Night, Setting};
 use crate::screen::ahead::{self, Ahead};
+use crate::screen::field::MOST_STARS;
 use crate::screen::insight::Insight;
 use crate::screen::keys::Mode;
 use crate::screen::observatory::Observatory;
@@ -19,34 +20,14 @@ use crate::screen::outlook::{Foresight, Outlook};
 use crate::screen::panel::Panel;
 use crate::screen::pretence;
 use crate::screen::reading::{Sitting, TypedReading};
+use crate::screen::settings::{near_the_sun, stopped};
 use crate::screen::standing::{request, tube};
 use crate::sky::Moment;
 
+pub use crate::screen::settings::Settings;
+
 /// More matches than a screen has lines.
 const MATCHES: usize = 30;
-
-/// What there is to set.
-#[derive(Clone, Debug, PartialEq)]
-pub enum Settings {
-    /// These are the settings.
-    Dialled(Box<Dial>),
-    /// Following them could hurt: the words stand in their place.
-    Stopped {
-        /// What it is about, in a word or two.
-        heading: &'static str,
-        /// The words.
-        words: String,
-        /// The observer may answer for it.
-        answerable: bool,
-    },
-    /// There is nothing to set.
-    Nothing {
-        /// Why.
-        words: String,
-        /// What else is worth knowing; may be empty.
-        after: &'static str,
-    },
-}
 
 /// What the screen shows at one instant.
 #[derive(Clone, Debug)]
@@ -65,6 +46,8 @@ pub struct Shown {
     pub insight: Option<Rc<Insight>>,
     /// What there is to expect of the objects of the list, while the observer looks at that.
     pub ahead: Rc<Vec<Option<Ahead>>>,
+    /// The field of the optic chosen, while the observer looks at that and nothing withholds it.
+    pub field: Option<Field>,
     /// The stars to choose from.
     pub stars: Vec<Placed>,
     /// The objects that match what is typed.
@@ -141,9 +124,11 @@ impl From<'_> {
             foresight.insight(self.moment.utc(), work_out)
         });
         let neighbour = self.neighbour(&settings, foresight);
+        let field = self.field(&settings, target.as_ref());
         Shown {
             moment: *self.moment,
             settings,
+            field,
             neighbour,
             ahead: match panel.mode {
                 Mode::Objects => {
@@ -167,6 +152,20 @@ impl From<'_> {
             pretended: self.pretended(),
             target,
         }
+    }
+
+    /// The field of the optic chosen: of what is dialled, and of nothing that is withheld.
+    fn field(&self, settings: &Settings, target: Option<&Target>) -> Option<Field> {
+        let (Settings::Dialled(dial), Mode::Field) = (settings, self.panel.mode) else {
+            return None;
+        };
+        let optic = self.observatory.mount.optics.get(self.panel.chosen)?;
+        Some(Field::of(
+            (&self.setup(false), &self.observatory.lead(self.moment)),
+            (&self.observatory.catalogue, target?),
+            (dial, optic),
+            MOST_STARS,
+        ))
     }
 
     /// A bright star to start from, where that is worth the detour.
@@ -325,14 +324,11 @@ impl From<'_> {
     }
 }
 
-/// The heading over an object below the horizon.
-const NOT_UP: &str = "not up";
-
 impl Shown {
     /// True if the object being dialled is below the horizon.
     #[must_use]
     pub fn is_not_up(&self) -> bool {
-        matches!(&self.settings, Settings::Stopped { heading, .. } if *heading == NOT_UP)
+        self.settings.are_of_what_is_not_up()
     }
 
     /// The settings shown, for the record.
@@ -347,47 +343,5 @@ impl Shown {
             side: dial.side,
             axes: dial.axes.into(),
         })
-    }
-}
-
-/// What stops settings that could be followed to someone's harm.
-fn stopped(
-    dial: &Dial,
-    sun_risk_accepted: bool,
-    rises: &str,
-    side_is_forced: bool,
-) -> Option<Settings> {
-    let caution = dial.cautions.iter().find(|caution| match caution.code {
-        CautionCode::NearSun => !sun_risk_accepted,
-        CautionCode::BelowHorizon | CautionCode::BeyondLimit => true,
-        _ => false,
-    })?;
-    Some(match caution.code {
-        CautionCode::NearSun => near_the_sun(&caution.text),
-        CautionCode::BelowHorizon => Settings::Stopped {
-            heading: NOT_UP,
-            words: caution.text.clone() + rises,
-            answerable: false,
-        },
-        _ => Settings::Stopped {
-            heading: "out of reach",
-            words: if side_is_forced {
-                format!("{}. t goes back to the usual side", caution.text)
-            } else {
-                caution.text.clone()
-            },
-            answerable: false,
-        },
-    })
-}
-
-fn near_the_sun(why: &str) -> Settings {
-    Settings::Stopped {
-        heading: "THE SUN",
-        words: format!(
-            "{why}. Sunlight in a telescope or a finder blinds at once and sets things on fire. \
-             The settings are withheld. The rules of the house and the person in charge come first."
-        ),
-        answerable: true,
     }
 }

@@ -12,7 +12,7 @@ use crate::screen::keys::{self, Act, DOUBLE_STRIKE, Mode};
 use crate::screen::panel::{Centred, Doing, Panel};
 use crate::screen::scene::{Scene, record};
 use crate::screen::shown::Settings;
-use crate::screen::{doubt, objects, sweeping, typing};
+use crate::screen::{doubt, looking, objects, sweeping, typing};
 use crate::time::Utc;
 
 /// Takes in what happened.
@@ -61,6 +61,7 @@ fn struck(panel: &mut Panel, scene: &Scene<'_>, stroke: Stroke) -> Vec<Doing> {
         }
         Mode::Calibration => calibrating(panel, scene, act),
         Mode::Objects => objects::looking(panel, scene, act),
+        Mode::Field => looking::looking(panel, scene, act),
         Mode::Doubting => doubt::doubting(panel, act),
         Mode::Sweeping => sweeping::sweeping(panel, scene, act),
         _ => typing::typing(panel, scene, act),
@@ -114,6 +115,7 @@ fn acted(panel: &mut Panel, scene: &Scene<'_>, act: Act) -> Vec<Doing> {
         Act::Calibration => panel.enter(Mode::Calibration),
         Act::Sweep => sweeping::begin(panel, scene),
         Act::Objects => objects::open(panel, scene.from.night.state()),
+        Act::Field => looking::open(panel, scene),
         Act::Search => panel.enter(Mode::Searching),
         Act::Note => panel.enter(Mode::Noting),
         Act::Clock => panel.enter(Mode::Clock),

@@ -15,7 +15,9 @@ use crate::screen::scene::SUN_WORD;
 use crate::screen::shown::{From, Settings, Shown};
 use crate::screen::target_line::{self, place_in_list};
 use crate::screen::words::chance;
-use crate::screen::{calibration, circle, doubt, entry, help, lists, objects, stopped, truth};
+use crate::screen::{
+    calibration, circle, doubt, entry, field, help, lists, objects, stopped, truth,
+};
 
 /// Draws the screen.
 pub fn view(look: Look, buffer: &mut Buffer, from: &From<'_>, shown: &Shown) {
@@ -77,6 +79,7 @@ fn draw_body(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown
         Mode::Reading => draw_reading(look, buffer, body, from, shown),
         Mode::Calibration => calibration::draw(look, buffer, body, from, shown),
         Mode::Objects => objects::draw(look, buffer, body, from, &shown.ahead),
+        Mode::Field => draw_field(look, buffer, body, shown),
         Mode::Doubting => doubt::draw(look, buffer, body, from),
 
         Mode::Help => help::draw(look, buffer, body, panel.help_from, panel.help_page),
@@ -103,6 +106,13 @@ fn draw_body(look: Look, buffer: &mut Buffer, body: Rect, from: &From<'_>, shown
             );
             draw_line(look, buffer, body, from, (&words, "answer"));
         }
+    }
+}
+
+fn draw_field(look: Look, buffer: &mut Buffer, body: Rect, shown: &Shown) {
+    match (&shown.field, &shown.target) {
+        (Some(field), Some(target)) => field::draw(look, buffer, body, &target.name, field),
+        _ => stopped::draw(look, buffer, body, &shown.settings),
     }
 }
 

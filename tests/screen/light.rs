@@ -7,7 +7,7 @@ use ratatui::style::Color;
 use crate::scene::{EVENING, NOON, Picture, Scene};
 
 /// Scenes that draw every pane.
-const SCENES: [&str; 11] = [
+const SCENES: [&str; 13] = [
     "",
     "<space>",
     "<space> f",
@@ -19,6 +19,8 @@ const SCENES: [&str; 11] = [
     "c 2",
     "?",
     "x",
+    "<space> v",
+    "<space> v <space>",
 ];
 
 fn reds(picture: &Picture) -> Vec<u8> {

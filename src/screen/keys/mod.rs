@@ -47,6 +47,8 @@ pub enum Mode {
     Sweeping,
     /// Looking at the list.
     Objects,
+    /// Looking at the field as an optic shows it.
+    Field,
     /// Looking at the keys.
     Help,
 }
@@ -84,6 +86,7 @@ impl Mode {
             Self::Doubting => "doubting a reading",
             Self::Sweeping => "sweeping for an object",
             Self::Objects => "looking at the list",
+            Self::Field => "looking at the field",
             Self::Help => "these keys",
         }
     }
@@ -110,6 +113,8 @@ pub enum Act {
     Calibration,
     /// The list.
     Objects,
+    /// The field as an optic shows it.
+    Field,
     /// A reading set aside, or used again.
     SetAside,
     /// What an earlier night taught: as the mount stood, moved since, or not at all.
@@ -218,7 +223,7 @@ pub fn hints(mode: Mode, width: usize) -> String {
 mod tests {
     use super::*;
 
-    const MODES: [Mode; 14] = [
+    const MODES: [Mode; 15] = [
         Mode::Stepping,
         Mode::ChoosingStar,
         Mode::Centring,
@@ -232,6 +237,7 @@ mod tests {
         Mode::Doubting,
         Mode::Sweeping,
         Mode::Objects,
+        Mode::Field,
         Mode::Help,
     ];
 

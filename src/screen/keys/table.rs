@@ -25,6 +25,7 @@ const AWAY: &[Mode] = &[
     Mode::Doubting,
     Mode::Sweeping,
     Mode::Objects,
+    Mode::Field,
     Mode::Help,
 ];
 
@@ -132,6 +133,14 @@ pub(super) const KEYS: &[Key] = &[
         Some(10),
     ),
     key(
+        &[Char('v')],
+        ("v", "view"),
+        "the field as finder and eyepiece show it",
+        STEPPING,
+        Act::Field,
+        Some(11),
+    ),
+    key(
         &[Char('t')],
         ("t", "side"),
         "the other side of the pier; again: the usual side",
@@ -191,7 +200,7 @@ pub(super) const KEYS: &[Key] = &[
         &[Char('l')],
         ("l", "light"),
         "night, dim and day in turn",
-        &[Mode::Stepping, Mode::Centring, Mode::Help],
+        &[Mode::Stepping, Mode::Centring, Mode::Field, Mode::Help],
         Act::Light,
         Some(13),
     ),
@@ -251,6 +260,30 @@ pub(super) const KEYS: &[Key] = &[
         &[Mode::Sweeping],
         Act::Missed,
         Some(3),
+    ),
+    key(
+        &[Char(' '), Right],
+        ("space", "next optic"),
+        "the field in the next optic",
+        &[Mode::Field],
+        Act::Next,
+        Some(1),
+    ),
+    key(
+        &[Char('b'), Left],
+        ("b", "optic before"),
+        "the field in the optic before",
+        &[Mode::Field],
+        Act::Back,
+        Some(3),
+    ),
+    key(
+        &[Char('v')],
+        ("v", "back"),
+        "back to the settings",
+        &[Mode::Field],
+        Act::Cancel,
+        Some(2),
     ),
     key(
         &[Char('s')],
