@@ -5,7 +5,7 @@
 //!      . : : : .         M 45 in the finder
 //!    :     o     :       field 6°
 //! E :   . >  < O  :      inverted: turned by half a turn
-//!    :    .   o  :       stars to 9.0
+//!    :    .   o  :       faintest drawn 8.9
 //!      ' : : : '         ...
 //! ```
 //!
@@ -107,11 +107,11 @@ fn sentences(target: &str, field: &Field) -> Vec<(String, Strength)> {
     ];
     said.push((
         match field.faintest() {
-            Some(faintest) if faintest > COMPLETE_TO => {
-                format!("stars to {faintest:.1}; of the faint ones some are missing")
+            Some(faintest) if field.stars.len() < MOST_STARS || faintest > COMPLETE_TO => {
+                format!("faintest drawn {faintest:.1}; beyond {COMPLETE_TO} some are missing")
             }
-            Some(faintest) => format!("stars to {faintest:.1}"),
-            None => "no star to 9.0 in the field".to_owned(),
+            Some(faintest) => format!("faintest drawn {faintest:.1}"),
+            None => "no star of the tables is in it".to_owned(),
         },
         Strength::Plain,
     ));
