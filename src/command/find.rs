@@ -7,15 +7,22 @@ use clap::Args;
 use crate::angle::Angle;
 use crate::catalog::report::stated_place;
 use crate::catalog::{
-    Catalogue, Constellation, Filter, FindReport, Found, Kind, Near, Unresolved, clean,
+    Catalogue, Constellation, Filter, FindReport, Found, Kind, Near, Target, Unresolved, clean,
 };
+use crate::command::catalogues;
+use crate::command::new;
+use crate::command::options::Common;
+use crate::command::station::Station;
+use crate::command::up::{Overhead, Up};
 use crate::sexagesimal::{self, Notation, Unit};
+use crate::site::Folders;
+use crate::site::list_edit::{self, Added, NotAdded};
 
 /// What to search for.
 #[derive(Args, Clone, Debug)]
 pub struct FindArgs {
     /// Words of the name, or their beginnings, in any order; one slip a word is forgiven.
-    #[arg(value_name = "TEXT", required_unless_present_any = ["kind", "constellation", "brighter_than", "near"])]
+    #[arg(value_name = "TEXT", required_unless_present_any = ["kind", "constellation", "brighter_than", "near", "up"])]
     pub text: Vec<String>,
     /// Only this kind, as in "open cluster", galaxy, star.
     #[arg(long)]
@@ -32,6 +39,9 @@ pub struct FindArgs {
     /// How near, as in 5d or 30'.
     #[arg(long, value_name = "DISTANCE", requires = "near", default_value = "5d", value_parser = distance)]
     pub within: Angle,
+    /// Only what can be seen from the site: above its horizon now, or at some time tonight as `nonius plan` has it.
+    #[arg(long, value_name = "WHEN")]
+    pub up: Option<Up>,
     /// No more than so many.
     #[arg(long, value_name = "N", default_value_t = 20, value_parser = clap::value_parser!(u16).range(1..))]
     pub limit: u16,
@@ -61,25 +71,68 @@ impl NearFault {
     }
 }
 
-/// Searches and prints: a table for people, or one JSON value.
+/// Searches and prints: a table for people, or one JSON value; with `--list`, what is found is added to that list.
 ///
 /// Fails with [`NearFault`] if `--near` names nothing that can be searched near.
-pub fn run(
-    args: &FindArgs,
-    catalogue: &Catalogue,
-    json: bool,
-    out: &mut dyn Write,
-) -> anyhow::Result<()> {
+pub fn run(args: &FindArgs, common: &Common, out: &mut dyn Write) -> anyhow::Result<()> {
     let query = args.text.join(" ");
-    let found = catalogue.search(&query, &filter(args, catalogue)?);
+    let folders = Folders::of_the_user()?;
+    let found = match args.up {
+        None => searched(args, &query, &catalogues::open(&folders)?, &|_| true)?,
+        Some(up) => {
+            // the list is where what is found goes, not what is looked through
+            let station = Station::open(&Common {
+                list: None,
+                ..common.clone()
+            })?;
+            let overhead = Overhead::of(up, &station)?;
+            searched(args, &query, &station.catalogue, &overhead.test())?
+        }
+    };
+    print(&query, &found, common.json, out)?;
+    if let Some(list) = &common.list {
+        let names: Vec<&str> = found
+            .iter()
+            .map(|found| found.target.name.as_str())
+            .collect();
+        let added = list_edit::add(&folders, list, &names).map_err(|why| match why {
+            NotAdded::Faults(faults) => anyhow::Error::from(faults),
+            NotAdded::Cannot(cannot) => new::refused(cannot),
+        })?;
+        if !common.json {
+            writeln!(out, "\n{}", said_of(&added))?;
+        }
+    }
+    Ok(())
+}
+
+fn print(query: &str, found: &[Found], json: bool, out: &mut dyn Write) -> anyhow::Result<()> {
     if json {
-        serde_json::to_writer(&mut *out, &FindReport::new(&query, &found))?;
+        serde_json::to_writer(&mut *out, &FindReport::new(query, found))?;
         return Ok(writeln!(out)?);
     }
     if found.is_empty() {
         return Ok(writeln!(out, "nothing in the catalogues fits")?);
     }
-    table(&found, out)
+    table(found, out)
+}
+
+fn searched(
+    args: &FindArgs,
+    query: &str,
+    catalogue: &Catalogue,
+    passes: &dyn Fn(&Target) -> bool,
+) -> Result<Vec<Found>, NearFault> {
+    let filter = filter(args, catalogue)?;
+    Ok(catalogue.search_among(query, &filter, passes))
+}
+
+fn said_of(added: &Added) -> String {
+    let path = added.path.display();
+    match (added.new, added.there) {
+        (new, 0) => format!("{new} added to {path}"),
+        (new, there) => format!("{new} added to {path}, {there} in it already"),
+    }
 }
 
 fn filter(args: &FindArgs, catalogue: &Catalogue) -> Result<Filter, NearFault> {
@@ -213,13 +266,11 @@ mod tests {
     }
 
     fn printed(words: &[&str], json: bool) -> anyhow::Result<String> {
+        let args = parsed(words).unwrap();
+        let query = args.text.join(" ");
+        let found = searched(&args, &query, &Catalogue::builtin(), &|_| true)?;
         let mut out = Vec::new();
-        run(
-            &parsed(words).unwrap(),
-            &Catalogue::builtin(),
-            json,
-            &mut out,
-        )?;
+        print(&query, &found, json, &mut out)?;
         Ok(String::from_utf8(out).unwrap())
     }
 

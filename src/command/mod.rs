@@ -22,6 +22,7 @@ pub mod plan;
 mod readings;
 mod screen;
 mod station;
+mod up;
 
 use options::Common;
 
@@ -83,10 +84,7 @@ fn run(line: &Line, out: &mut dyn Write) -> anyhow::Result<()> {
         Some(Command::Dial(args)) => dial::run(args, common, out),
         Some(Command::Calibrate(args)) => calibrate::run(args, common, out),
         Some(Command::Plan(args)) => plan::run(args, common, out),
-        Some(Command::Find(args)) => {
-            let catalogue = catalogues::open(&Folders::of_the_user()?)?;
-            find::run(args, &catalogue, common.json, out)
-        }
+        Some(Command::Find(args)) => find::run(args, common, out),
         Some(Command::Check(args)) => check::run(args, common, out),
         Some(Command::New(args)) => new::run(args, out),
         Some(Command::Log(args)) => {

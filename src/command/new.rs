@@ -48,7 +48,7 @@ pub fn run(args: &NewArgs, out: &mut dyn Write) -> anyhow::Result<()> {
 }
 
 /// A name that cannot be used is the request's fault, a disk that cannot be written is not.
-fn refused(cannot: Cannot) -> anyhow::Error {
+pub(super) fn refused(cannot: Cannot) -> anyhow::Error {
     match cannot {
         Cannot::Write { .. } => cannot.into(),
         other => Refused {

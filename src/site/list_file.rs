@@ -93,6 +93,14 @@ fn is_table(text: &str) -> bool {
         .is_some_and(|first| first.trim().trim_matches('"').eq_ignore_ascii_case("name"))
 }
 
+/// How many columns a list has that is a table; nothing for plain lines.
+#[must_use]
+pub fn columns(text: &str) -> Option<usize> {
+    let header = is_table(text).then(|| table::header_line(text))?;
+    let line = text.get(header)?.lines().last()?;
+    Some(line.split(',').count())
+}
+
 fn plain(text: &str) -> Vec<ListLine> {
     let mut lines = Vec::new();
     let mut at = 0;

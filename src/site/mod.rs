@@ -8,6 +8,7 @@
 //! | [`check`] | all that is wrong with any file |
 //! | [`file_kind`] | what a file is |
 //! | [`folders`] | where files live, and the file of a name |
+//! | [`list_edit`] | adding to a list |
 //! | [`list_file`] | a target list, plain or as a table |
 //! | [`mount_file`] | a mount: circles, limits, expected errors, dome, tube, optics |
 //! | [`new`] | a commented starting file for a new site, mount or list |
@@ -24,6 +25,7 @@ pub mod fault;
 pub mod file_kind;
 pub mod folders;
 mod likely;
+pub mod list_edit;
 pub mod list_file;
 mod list_row;
 pub mod mount_file;

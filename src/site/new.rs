@@ -48,14 +48,17 @@ const fn template(shelf: Shelf) -> Option<&'static str> {
     }
 }
 
+/// True of what will do as the name of a file.
+#[must_use]
+pub fn is_a_name(name: &str) -> bool {
+    let fits = |c: char| c.is_ascii_alphanumeric() || c == '-';
+    let long = name.is_empty() || name.len() > LONGEST_NAME;
+    !long && !name.starts_with('-') && name.chars().all(fits)
+}
+
 /// Writes a starting file and says where it is.
 pub fn create(folders: &Folders, shelf: Shelf, name: &str) -> Result<PathBuf, Cannot> {
-    let fits = |c: char| c.is_ascii_alphanumeric() || c == '-';
-    if name.is_empty()
-        || name.len() > LONGEST_NAME
-        || name.starts_with('-')
-        || !name.chars().all(fits)
-    {
+    if !is_a_name(name) {
         return Err(Cannot::Name(name.to_owned()));
     }
     let template = template(shelf).ok_or(Cannot::NoTemplate(shelf))?;
@@ -80,10 +83,7 @@ pub fn create(folders: &Folders, shelf: Shelf, name: &str) -> Result<PathBuf, Ca
 pub fn write_new(path: &Path, text: &str) -> io::Result<()> {
     let folder = path.parent().unwrap_or(Path::new("."));
     fs::create_dir_all(folder)?;
-    let mut draft_name = std::ffi::OsString::from(".");
-    draft_name.push(path.file_name().unwrap_or_default());
-    draft_name.push(format!(".{}", std::process::id()));
-    let draft = folder.join(draft_name);
+    let draft = draft_of(path);
     let written = write_draft(&draft, text).and_then(|()| place(&draft, path));
     // the draft has done its work, or must not be left behind
     let removed = fs::remove_file(&draft);
@@ -92,6 +92,30 @@ pub fn write_new(path: &Path, text: &str) -> io::Result<()> {
         Err(error) if error.kind() != io::ErrorKind::NotFound => Err(error),
         _ => sync_folder(folder),
     }
+}
+
+/// Writes another text into a file that is there: at every moment the file is whole, the old one or the new.
+pub fn replace(path: &Path, text: &str) -> io::Result<()> {
+    // where the name is a link, what it points to is written
+    let path = fs::canonicalize(path)?;
+    let draft = draft_of(&path);
+    let rights = fs::metadata(&path)?.permissions();
+    let written = write_draft(&draft, text)
+        .and_then(|()| fs::set_permissions(&draft, rights))
+        .and_then(|()| fs::rename(&draft, &path));
+    if written.is_err() {
+        let _ = fs::remove_file(&draft);
+    }
+    written?;
+    sync_folder(path.parent().unwrap_or(Path::new(".")))
+}
+
+/// A name beside a file's own for what is not whole yet.
+fn draft_of(path: &Path) -> PathBuf {
+    let mut name = std::ffi::OsString::from(".");
+    name.push(path.file_name().unwrap_or_default());
+    name.push(format!(".{}", std::process::id()));
+    path.parent().unwrap_or(Path::new(".")).join(name)
 }
 
 fn write_draft(draft: &Path, text: &str) -> io::Result<()> {

@@ -10,6 +10,7 @@ mod coordinates;
 mod dial;
 mod eccentric;
 mod faults;
+mod found;
 mod learnt;
 mod mark;
 mod misread;
