@@ -123,6 +123,35 @@ pub const MAGNITUDE: Bound = Bound::new("magnitude", "", -27.0, 40.0);
 pub const PROPER_MOTION: Bound = Bound::new("proper motion", "mas a year", -20_000.0, 20_000.0);
 /// Parallax; that of the nearest star is 768 mas. A measured one may come out a little below zero.
 pub const PARALLAX: Bound = Bound::new("parallax", "mas", -100.0, 1_000.0);
+/// Year of an epoch or of a passage of perihelion.
+pub const YEAR: Bound = Bound::new("year", "", 1.0, 3000.0);
+/// Month of the year.
+pub const MONTH: Bound = Bound::new("month", "", 1.0, 12.0);
+/// Day of the month, with its fraction.
+pub const DAY: Bound = Bound::new("day", "", 1.0, 32.0);
+/// Least distance of a comet from the Sun: from within it to beyond the farthest seen.
+pub const PERIHELION_DISTANCE: Bound = Bound::new("perihelion distance", "au", 1e-3, 200.0);
+/// Half the length of an ellipse.
+pub const SEMIMAJOR_AXIS: Bound = Bound::new("semimajor axis", "au", 0.1, 1e6);
+/// Eccentricity of any orbit about the Sun; the largest seen is about 6.
+pub const ECCENTRICITY_OF_AN_ORBIT: Bound = Bound::new("eccentricity", "", 0.0, 20.0);
+/// Eccentricity of an ellipse, which stays below 1.
+pub const ECCENTRICITY_OF_AN_ELLIPSE: Bound = Bound::new("eccentricity", "", 0.0, 0.999_999_9);
+/// Inclination to the ecliptic, above 90° for a body that runs backward.
+pub const INCLINATION: Bound = Bound::new("inclination", "degrees", 0.0, 180.0);
+/// Longitude of the ascending node.
+pub const NODE: Bound = Bound::new("longitude of the node", "degrees", 0.0, 360.0);
+/// Argument of perihelion.
+pub const ARGUMENT_OF_PERIHELION: Bound =
+    Bound::new("argument of perihelion", "degrees", 0.0, 360.0);
+/// Mean anomaly.
+pub const MEAN_ANOMALY: Bound = Bound::new("mean anomaly", "degrees", 0.0, 360.0);
+/// Magnitude at one au from Sun and observer.
+pub const ABSOLUTE_MAGNITUDE: Bound = Bound::new("absolute magnitude", "", -10.0, 45.0);
+/// The slope parameter G of a minor planet.
+pub const SLOPE_PARAMETER: Bound = Bound::new("slope parameter", "", -1.0, 1.0);
+/// The power n of a comet's distance from the Sun.
+pub const POWER_OF_DISTANCE: Bound = Bound::new("power of the distance", "", -50.0, 100.0);
 /// Length or width of a target.
 pub const SIZE: Bound = Bound::new("size", "minutes of arc", 0.0, 5400.0);
 

@@ -33,6 +33,7 @@ fn place(target: &Target) -> CataloguePlace {
     match target.source {
         Source::Catalogue(place) => place,
         Source::Body(body) => panic!("{body:?} has no fixed place"),
+        Source::Orbit(orbit) => panic!("{orbit:?} has no fixed place"),
     }
 }
 

@@ -151,12 +151,15 @@ impl Catalogue {
     /// The same for one whose being unknown is nothing to explain: no search for names like it.
     pub(super) fn named(&self, text: &str) -> Result<Option<Target>, Unresolved> {
         if given::looks_like(text) {
-            return given::read(text)
-                .map(Some)
-                .map_err(|fault| Unresolved::Coordinates {
+            return match (given::read(text), self.own_named(&Asked::new(text))) {
+                (Ok(place), _) => Ok(Some(place)),
+                // a provisional designation, "2004 MN4", is made of nothing but figures and marks of angles
+                (Err(_), Some(own)) => Ok(Some(own.clone())),
+                (Err(fault), None) => Err(Unresolved::Coordinates {
                     text: text.to_owned(),
                     fault,
-                });
+                }),
+            };
         }
         let asked = Asked::new(text);
         if asked.is_empty() {
@@ -183,13 +186,16 @@ impl Catalogue {
         }
     }
 
+    /// The observer's own target that goes by exactly this name.
+    fn own_named(&self, asked: &Asked) -> Option<&Target> {
+        self.own
+            .iter()
+            .find(|target| target.names().any(|name| asked.is(name)))
+    }
+
     /// What goes by exactly this name.
     fn exact(&self, asked: &Asked) -> Option<Target> {
-        let own = self
-            .own
-            .iter()
-            .find(|target| target.names().any(|name| asked.is(name)));
-        if let Some(own) = own {
+        if let Some(own) = self.own_named(asked) {
             return Some(own.clone());
         }
         if let Some(own) = self.catalogues.iter().find_map(|own| own.named(asked)) {
@@ -281,7 +287,7 @@ impl Catalogue {
                 let (ra, dec) = place.at_icrs_j2000()?;
                 Some(CataloguePlace::icrs(ra, dec))
             }
-            Source::Body(_) => None,
+            Source::Body(_) | Source::Orbit(_) => None,
         }
     }
 }

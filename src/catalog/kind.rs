@@ -72,6 +72,10 @@ kinds! {
     GalaxyGroup = "galaxy group",
     /// A planet of the Sun.
     Planet = "planet",
+    /// A minor planet of the Sun.
+    MinorPlanet = "minor planet",
+    /// A comet.
+    Comet = "comet",
     /// The Moon.
     Moon = "moon",
     /// The Sun.

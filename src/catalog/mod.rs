@@ -18,6 +18,7 @@ pub mod index;
 pub mod kind;
 mod likeness;
 pub mod list;
+pub mod orbit_line;
 mod own;
 pub mod report;
 mod rows;

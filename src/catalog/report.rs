@@ -84,6 +84,6 @@ pub fn stated_place(source: &Source) -> Option<CataloguePlace> {
                 .at_icrs_j2000()
                 .map_or(*place, |(ra, dec)| CataloguePlace::icrs(ra, dec)),
         ),
-        Source::Body(_) => None,
+        Source::Body(_) | Source::Orbit(_) => None,
     }
 }

@@ -37,6 +37,8 @@ pub enum Origin {
     Ngc,
     /// Sun, Moon and planets.
     SolarSystem,
+    /// Elements of orbits among the observer's own catalogues.
+    Orbits,
     /// A list of the observer's own, which gives the place too.
     List,
     /// Coordinates as given.
@@ -52,6 +54,7 @@ impl Origin {
             Self::Messier => "messier",
             Self::Ngc => "ngc",
             Self::SolarSystem => "solar-system",
+            Self::Orbits => "orbits",
             Self::List => "list",
             Self::Given => "given",
         }

@@ -30,6 +30,8 @@ pub enum CautionCode {
     Uncalibrated,
     /// The last star was read long ago.
     StaleCalibration,
+    /// The elements of the orbit hold for an instant far from now.
+    OldElements,
 }
 
 /// A caution, in words for the observer.

@@ -126,7 +126,7 @@ fn about(dial: &Dial, stars: &[Target]) -> Vec<Target> {
             let star = (place.right_ascension.angle(), place.declination);
             separation(star, target) < FARTHEST + ROOM
         }
-        Source::Body(_) => false,
+        Source::Body(_) | Source::Orbit(_) => false,
     };
     stars.iter().filter(is_near).cloned().collect()
 }

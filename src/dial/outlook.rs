@@ -23,6 +23,10 @@ const SOON_MIN: f64 = 15.0;
 /// Older than this, a night's readings no longer speak for the mount as it stands.
 const STALE_HOURS: f64 = 12.0;
 
+/// Farther from their epoch than this, elements no longer give a place to the few minutes of arc that a circle
+/// shows: what the planets do to the orbit is not in them (common practice, no source).
+const OLD_ELEMENTS_DAYS: f64 = 100.0;
+
 /// The way to the target, for the Sun's sake.
 pub(super) struct Way {
     pub(super) from: Option<Axes>,
@@ -44,6 +48,7 @@ pub(super) fn cautions(
     found.extend(limit_cautions(setup, observed, side));
     found.extend(moon_caution(moment, source, observed));
     found.extend(pole_caution(observed));
+    found.extend(elements_caution(moment, source));
     found.extend(calibration_caution(setup, moment));
     found
 }
@@ -177,6 +182,24 @@ fn pole_caution(observed: &Observed) -> Option<Caution> {
         );
         Caution::new(CautionCode::NearPole, text)
     })
+}
+
+fn elements_caution(moment: &Moment, source: &Source) -> Option<Caution> {
+    const ADVICE: &str = "two-body places drift; get new ones from the Minor Planet Center";
+    let Source::Orbit(orbit) = source else {
+        return None;
+    };
+    let text = match orbit.age_days(moment.tt()) {
+        None => format!("the elements state no epoch: {ADVICE}"),
+        Some(days) if days > OLD_ELEMENTS_DAYS => {
+            format!("elements are {days:.0} days old: {ADVICE}")
+        }
+        Some(days) if days < -OLD_ELEMENTS_DAYS => {
+            format!("elements are for {:.0} days from now: {ADVICE}", -days)
+        }
+        Some(_) => return None,
+    };
+    Some(Caution::new(CautionCode::OldElements, text))
 }
 
 fn calibration_caution(setup: &Setup<'_>, moment: &Moment) -> Option<Caution> {

@@ -5,9 +5,10 @@
 
 use serde::{Deserialize, Serialize};
 
-use crate::angle::{Declination, RightAscension};
+use crate::angle::{Angle, Declination, RightAscension};
 use crate::catalog::{Constellation, Kind, Origin, Target};
-use crate::sky::{Body, CataloguePlace, Source};
+use crate::sky::{Body, Brightness, CataloguePlace, Orbit, Source};
+use crate::time::Tt;
 
 /// An object of a list.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
@@ -71,6 +72,30 @@ pub enum ListedPlace {
         /// Its name.
         body: String,
     },
+    /// A minor planet or a comet, by the elements of its orbit about the Sun, on the ecliptic of J2000.0.
+    Orbit {
+        /// Least distance from the Sun, in au.
+        perihelion_distance_au: f64,
+        /// Eccentricity.
+        eccentricity: f64,
+        /// Inclination to the ecliptic.
+        inclination_deg: f64,
+        /// Longitude of the ascending node.
+        node_deg: f64,
+        /// Argument of perihelion.
+        argument_of_perihelion_deg: f64,
+        /// Julian date of the passage of perihelion, TT.
+        perihelion_jd_tt: f64,
+        /// Julian date for which the elements hold, TT.
+        #[serde(default)]
+        epoch_jd_tt: Option<f64>,
+        /// Absolute magnitude, and the slope parameter G of a minor planet.
+        #[serde(default)]
+        h_g: Option<[f64; 2]>,
+        /// Absolute total magnitude of a comet, and the power of its distance from the Sun.
+        #[serde(default)]
+        h_n: Option<[f64; 2]>,
+    },
     /// A name no catalogue knew: kept in the list, never dialled.
     Unknown,
 }
@@ -118,6 +143,7 @@ fn origin(name: Option<&str>) -> Origin {
         Origin::Messier,
         Origin::Ngc,
         Origin::SolarSystem,
+        Origin::Orbits,
         Origin::Given,
     ];
     let named = known.into_iter().find(|origin| Some(origin.name()) == name);
@@ -165,6 +191,30 @@ impl ListedPlace {
                 radial_velocity_km_s: *radial_velocity_km_s,
             })),
             Self::Body { body } => Body::named(body).map(Source::Body),
+            Self::Orbit {
+                perihelion_distance_au,
+                eccentricity,
+                inclination_deg,
+                node_deg,
+                argument_of_perihelion_deg,
+                perihelion_jd_tt,
+                epoch_jd_tt,
+                h_g,
+                h_n,
+            } => Some(Source::Orbit(Orbit {
+                perihelion_distance_au: *perihelion_distance_au,
+                eccentricity: *eccentricity,
+                inclination: Angle::from_degrees(*inclination_deg),
+                node: Angle::from_degrees(*node_deg),
+                argument_of_perihelion: Angle::from_degrees(*argument_of_perihelion_deg),
+                perihelion: Tt::at_julian_day(*perihelion_jd_tt),
+                epoch: epoch_jd_tt.map(Tt::at_julian_day),
+                brightness: match (*h_g, *h_n) {
+                    (Some([absolute, slope]), _) => Brightness::MinorPlanet { absolute, slope },
+                    (None, Some([absolute, power])) => Brightness::Comet { absolute, power },
+                    (None, None) => Brightness::Unknown,
+                },
+            })),
             Self::Unknown => None,
         }
     }
@@ -185,6 +235,23 @@ impl From<&Source> for ListedPlace {
             },
             Source::Body(body) => Self::Body {
                 body: body.name().to_owned(),
+            },
+            Source::Orbit(orbit) => Self::Orbit {
+                perihelion_distance_au: orbit.perihelion_distance_au,
+                eccentricity: orbit.eccentricity,
+                inclination_deg: orbit.inclination.degrees(),
+                node_deg: orbit.node.degrees(),
+                argument_of_perihelion_deg: orbit.argument_of_perihelion.degrees(),
+                perihelion_jd_tt: orbit.perihelion.julian_day(),
+                epoch_jd_tt: orbit.epoch.map(Tt::julian_day),
+                h_g: match orbit.brightness {
+                    Brightness::MinorPlanet { absolute, slope } => Some([absolute, slope]),
+                    _ => None,
+                },
+                h_n: match orbit.brightness {
+                    Brightness::Comet { absolute, power } => Some([absolute, power]),
+                    _ => None,
+                },
             },
         }
     }

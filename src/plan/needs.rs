@@ -5,8 +5,8 @@
 //! | kind | dark from | from a full Moon |
 //! |---|---|---|
 //! | stars, double and variable stars, novae, planets, the Moon | the end of civil twilight | at any distance |
-//! | clusters, asterisms, planetary nebulae, places of no stated kind | the end of nautical twilight | 15° |
-//! | galaxies, other nebulae, supernova remnants, star clouds | the end of astronomical twilight | 60° |
+//! | clusters, asterisms, planetary nebulae, minor planets, places of no stated kind | the end of nautical twilight | 15° |
+//! | galaxies, other nebulae, supernova remnants, star clouds, comets | the end of astronomical twilight | 60° |
 //!
 //! A Moon partly lit counts by the share of its disc that is: half of it, half the distance. The Sun is never planned: it is
 //! below the horizon whenever it is dark enough for anything here, so that nothing near a Sun that is up is ever planned either.
@@ -42,6 +42,7 @@ impl Needs {
             | Kind::ClusterWithNebula
             | Kind::Asterism
             | Kind::PlanetaryNebula
+            | Kind::MinorPlanet
             | Kind::Place
             | Kind::Other => (Twilight::Nautical, 15.0),
             Kind::StarCloud
@@ -50,6 +51,7 @@ impl Needs {
             | Kind::ReflectionNebula
             | Kind::SupernovaRemnant
             | Kind::DarkNebula
+            | Kind::Comet
             | Kind::Galaxy
             | Kind::GalaxyPair
             | Kind::GalaxyTriplet

@@ -12,6 +12,7 @@
 
 mod air;
 mod body;
+mod brightness;
 mod catalogue_place;
 mod compass;
 mod course;
@@ -22,16 +23,20 @@ mod fk4;
 mod horizon;
 mod moment;
 mod observer;
+mod orbit;
+mod orbit_seen;
 mod place;
 pub mod refraction;
 mod rise_set;
 #[cfg(test)]
 mod samples;
+mod season;
 mod through_air;
 mod vector;
 
 pub use air::Air;
 pub use body::Body;
+pub use brightness::Brightness;
 pub use catalogue_place::{CataloguePlace, Equinox};
 pub use compass::compass_point;
 pub use course::{Course, Turning};
@@ -40,5 +45,6 @@ pub use equinox::EquinoxFault;
 pub use horizon::HorizonMask;
 pub use moment::Moment;
 pub use observer::Observer;
+pub use orbit::Orbit;
 pub use place::{Apparent, Observed, Source, separation};
 pub use rise_set::{Passage, Transit, Twilight};

@@ -13,7 +13,8 @@ use crate::sky::catalogue_place::{CataloguePlace, Star};
 use crate::sky::earth::Earth;
 use crate::sky::observer::Observer;
 use crate::sky::place::{Apparent, Source};
-use crate::sky::vector::{Matrix, Vector, length_and_direction, plus, spherical, turned};
+use crate::sky::season::Season;
+use crate::sky::vector::{Vector, length_and_direction, plus, spherical, turned};
 use crate::time::{SiderealTime, Tt, Utc};
 
 /// The state of the sky at one instant for one observer.
@@ -29,31 +30,6 @@ pub struct Moment {
     astrometry: IauAstrom,
     apparent_sidereal: SiderealTime,
     mean_sidereal: SiderealTime,
-}
-
-/// What changes little in a day and takes long to work out.
-#[derive(Clone, Copy, Debug)]
-struct Season {
-    /// When it was worked out.
-    tt: Tt,
-    /// From the ICRS to the true equator and equinox of date.
-    equator: Matrix,
-    earth: Earth,
-}
-
-impl Season {
-    fn at(tt: Tt) -> Self {
-        Self {
-            tt,
-            equator: sofars::pnp::pnm06a(tt.0, tt.1),
-            earth: Earth::at(tt),
-        }
-    }
-
-    /// Days from when it was worked out to an instant.
-    fn age(&self, tt: Tt) -> f64 {
-        (tt.0 - self.tt.0) + (tt.1 - self.tt.1)
-    }
 }
 
 impl Moment {
@@ -123,6 +99,17 @@ impl Moment {
         self.utc
     }
 
+    /// The instant in the time that the planets keep.
+    #[must_use]
+    pub const fn tt(&self) -> Tt {
+        self.tt
+    }
+
+    /// The Earth at this instant.
+    pub(super) const fn earth(&self) -> &Earth {
+        &self.earth
+    }
+
     /// The observer.
     #[must_use]
     pub const fn observer(&self) -> &Observer {
@@ -147,6 +134,7 @@ impl Moment {
         match source {
             Source::Catalogue(place) => self.apparent_catalogue(place),
             Source::Body(body) => self.apparent_body(*body),
+            Source::Orbit(orbit) => self.apparent_orbit(orbit),
         }
     }
 
@@ -193,14 +181,19 @@ impl Moment {
 
     /// From the observer now to the body when the light left it, in au.
     fn path_to(&self, body: Body) -> Vector {
+        self.path_of_light(|days| body.barycentric(&self.earth, self.tt, days))
+    }
+
+    /// From the observer now to where something was when the light left it, in au; `place` is its way from the
+    /// barycentre, so many days from now.
+    pub(super) fn path_of_light(&self, place: impl Fn(f64) -> Vector) -> Vector {
         /// Light covers one au in this many days.
         const DAYS_PER_AU: f64 = sofars::consts::AULT / sofars::consts::DAYSEC;
         let mut path = [0.0; 3];
         let mut light_days = 0.0;
         // each round is nearer by the body's speed over that of light, 2e-4 at most
         for _ in 0..3 {
-            let place = body.barycentric(&self.earth, self.tt, -light_days);
-            path = plus(&place, -1.0, &self.astrometry.eb);
+            path = plus(&place(-light_days), -1.0, &self.astrometry.eb);
             light_days = length_and_direction(&path).0 * DAYS_PER_AU;
         }
         path
@@ -221,7 +214,7 @@ impl Moment {
     }
 
     /// The apparent place of a direction in the axes of the ICRS before aberration.
-    fn of_date(&self, natural: &Vector) -> Apparent {
+    pub(super) fn of_date(&self, natural: &Vector) -> Apparent {
         let sky = &self.astrometry;
         let proper = ab(natural, &sky.v, sky.em, sky.bm1);
         let (ra, dec) = spherical(&turned(&self.season.equator, &proper));

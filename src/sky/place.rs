@@ -3,6 +3,7 @@
 use crate::angle::{Altitude, Angle, Azimuth, Declination, HourAngle, RightAscension};
 use crate::sky::body::Body;
 use crate::sky::catalogue_place::CataloguePlace;
+use crate::sky::orbit::Orbit;
 
 /// Where the place of a target comes from.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -11,6 +12,8 @@ pub enum Source {
     Catalogue(CataloguePlace),
     /// The motion of a body of the solar system.
     Body(Body),
+    /// The elements of an orbit about the Sun.
+    Orbit(Orbit),
 }
 
 /// A place seen from the site, on the true equator and equinox of date, without air.

@@ -198,6 +198,39 @@ fn leap_seconds(date: chrono::NaiveDate) -> Option<f64> {
 }
 
 impl Tt {
+    /// At a Julian date of TT, kept to a tenth of a millisecond.
+    #[must_use]
+    pub fn at_julian_day(julian_day: f64) -> Self {
+        Self(julian_day.floor(), julian_day - julian_day.floor())
+    }
+
+    /// At a day of the Gregorian calendar and its fraction, 1.0 the first midnight; nothing if there is no such day.
+    #[must_use]
+    pub fn of_date(year: i32, month: i32, day: f64) -> Option<Self> {
+        #[allow(clippy::cast_possible_truncation)] // a day of a month, else there is no such day
+        let whole = day.floor() as i32;
+        let (zero, midnight) = sofars::cal::cal2jd(year, month, whole).ok()?;
+        Some(Self(zero + midnight, day - day.floor()))
+    }
+
+    /// The Julian date of TT, to a tenth of a millisecond.
+    #[must_use]
+    pub fn julian_day(self) -> f64 {
+        self.0 + self.1
+    }
+
+    /// Later by so many days of 86,400 s, earlier if negative.
+    #[must_use]
+    pub fn plus_days(self, days: f64) -> Self {
+        Self(self.0, self.1 + days)
+    }
+
+    /// Days of 86,400 s from an earlier instant to this one.
+    #[must_use]
+    pub fn days_since(self, earlier: Self) -> f64 {
+        (self.0 - earlier.0) + (self.1 - earlier.1)
+    }
+
     /// Julian years since J2000.0.
     #[must_use]
     pub fn julian_years_since_j2000(self) -> f64 {

@@ -12,6 +12,7 @@ mod meeus;
 mod moon;
 mod mount;
 mod observing;
+mod orbits;
 mod published;
 mod refraction;
 mod rise_set;
