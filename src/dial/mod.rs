@@ -336,6 +336,39 @@ mod tests {
     }
 
     #[test]
+    fn old_elements_are_said_to_be_old() {
+        let lines = include_str!("../../tests/reference/orbit_elements.txt");
+        let (targets, _) = crate::catalog::orbit_line::read_all(lines);
+        let trial = Trial::new();
+        let said = |name: &str, utc: &str| -> Option<String> {
+            let target = targets.iter().find(|target| target.name == name).unwrap();
+            let dialled = dial(&trial.setup(), &moment(utc), target).unwrap();
+            let old = dialled
+                .cautions
+                .into_iter()
+                .find(|caution| caution.code == CautionCode::OldElements);
+            old.map(|caution| caution.text)
+        };
+        let advice = "two-body places drift; get new ones from the Minor Planet Center";
+        // the epoch is 2020 May 31.0 TT
+        let ceres = |utc| said("(1) Ceres", utc);
+        assert_eq!(ceres("2020-05-31T22:00:00Z"), None);
+        assert_eq!(ceres("2020-09-07T22:00:00Z"), None);
+        assert_eq!(
+            ceres("2020-12-31T00:00:00Z"),
+            Some(format!("elements are 214 days old: {advice}"))
+        );
+        assert_eq!(
+            ceres("2020-02-01T00:00:00Z"),
+            Some(format!("elements are for 120 days from now: {advice}"))
+        );
+        assert_eq!(
+            said("C/2015 A2 (PANSTARRS)", "2015-08-02T22:00:00Z"),
+            Some(format!("the elements state no epoch: {advice}"))
+        );
+    }
+
+    #[test]
     fn an_old_calibration_is_said_to_be_old() {
         let mut trial = Trial::new();
         let now = moment("2026-12-01T21:30:00Z");

@@ -302,6 +302,37 @@ mod tests {
     }
 
     #[test]
+    fn a_body_on_an_orbit_comes_back_from_the_journal_with_its_elements() {
+        let lines = include_str!("../../tests/reference/orbit_elements.txt");
+        let (targets, faults) = crate::catalog::orbit_line::read_all(lines);
+        assert_eq!((targets.len(), faults.len()), (4, 0));
+        for target in targets {
+            let text = serde_json::to_string(&ListedTarget::from(&target)).unwrap();
+            let back: ListedTarget = serde_json::from_str(&text).unwrap();
+            let back = back.target().unwrap();
+            let (Source::Orbit(was), Source::Orbit(is)) = (target.source, back.source) else {
+                panic!("{text}");
+            };
+            for (was, is) in [
+                (was.inclination, is.inclination),
+                (was.node, is.node),
+                (was.argument_of_perihelion, is.argument_of_perihelion),
+            ] {
+                assert!((was - is).abs().degrees() < ROUNDING_DEG, "{text}");
+            }
+            /// A Julian date in one number, in days.
+            const ROUNDING_D: f64 = 1e-9;
+            assert!(is.perihelion.days_since(was.perihelion).abs() < ROUNDING_D);
+            assert_eq!(is.epoch.map(Tt::julian_day), was.epoch.map(Tt::julian_day));
+            assert_eq!(is.brightness, was.brightness);
+            let shape = |orbit: &Orbit| (orbit.perihelion_distance_au, orbit.eccentricity);
+            assert_eq!(shape(&is), shape(&was));
+            let source = target.source;
+            assert_eq!(Target { source, ..back }, target);
+        }
+    }
+
+    #[test]
     fn what_no_catalogue_knew_is_never_dialled() {
         assert_eq!(ListedTarget::unknown("M 370", "typing slip").target(), None);
     }

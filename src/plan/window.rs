@@ -216,7 +216,7 @@ impl<'a> Watch<'a> {
 
     fn rise_transit_set(&self, source: &Source, course: &Course<'_>) -> [Option<Utc>; 3] {
         let (start, span_s) = (self.turning.start(), self.turning.span_s());
-        if let Source::Body(_) = source {
+        if let Source::Body(_) | Source::Orbit(_) = source {
             let passages = start.rises_and_sets(source, span_s);
             let first = |rising| {
                 let found = passages

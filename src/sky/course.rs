@@ -91,12 +91,12 @@ impl Turning {
                 let place = self.middle.apparent(source);
                 Way::Fixed(place.right_ascension, place.declination)
             }
-            Source::Body(body) => {
+            Source::Body(_) | Source::Orbit(_) => {
                 let steps = (self.span_s / STEP_S).ceil().max(1.0);
                 #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // a span of days
                 let times = (0..=steps as u32).map(|step| f64::from(step) * STEP_S);
                 let direction = |after_s| {
-                    let place = self.start.later(after_s).apparent_body(*body);
+                    let place = self.start.later(after_s).apparent(source);
                     unit(place.right_ascension.angle(), place.declination.angle())
                 };
                 Way::Moving(times.map(direction).collect())
