@@ -15,6 +15,7 @@ mod learnt;
 mod mark;
 mod misread;
 mod own_catalogues;
+mod orbits;
 mod page;
 mod plan;
 mod pretended;

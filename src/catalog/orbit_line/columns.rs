@@ -43,6 +43,11 @@ impl<'a> Columns<'a> {
         let Some(text) = self.text(first, last)? else {
             return Ok(None);
         };
+        if self.0.len() < last {
+            // what is left of a number is another number
+            let message = format!("the line ends within the {}", bound.name);
+            return Err(self.fault(self.trimmed(first, last), &message, HINT_NUMBER));
+        }
         let plain = text
             .bytes()
             .all(|b| b.is_ascii_digit() || matches!(b, b'.' | b'+' | b'-'));

@@ -93,13 +93,16 @@ pub fn read_as(format: Format, line: &str) -> Result<Target, TextFault> {
 /// text share ("PANSTARRS") is none of theirs.
 #[must_use]
 pub fn read_all(text: &str) -> (Vec<Target>, Vec<TextFault>) {
+    /// A line of fewer columns holds no elements in either format, and is something else.
+    const SHORTEST: usize = 60;
     let (mut targets, mut faults) = (Vec::new(), Vec::new());
     let usual = Format::of_text(text);
     let mut at = heading(text);
     for line in text.get(at..).unwrap_or("").split_inclusive('\n') {
         let said = line.trim_end();
         if !said.is_empty() {
-            let read = match Format::of_line(said).or(usual) {
+            let damaged = usual.filter(|_| said.len() > SHORTEST);
+            let read = match Format::of_line(said).or(damaged) {
                 Some(format) => read_as(format, said),
                 None => read(said),
             };
