@@ -154,7 +154,7 @@ impl Catalogue {
             return match (given::read(text), self.own_named(&Asked::new(text))) {
                 (Ok(place), _) => Ok(Some(place)),
                 // a provisional designation, "2004 MN4", is made of nothing but figures and marks of angles
-                (Err(_), Some(own)) => Ok(Some(own.clone())),
+                (Err(_), Some(own)) => Ok(Some(own)),
                 (Err(fault), None) => Err(Unresolved::Coordinates {
                     text: text.to_owned(),
                     fault,
@@ -187,18 +187,16 @@ impl Catalogue {
     }
 
     /// The observer's own target that goes by exactly this name.
-    fn own_named(&self, asked: &Asked) -> Option<&Target> {
-        self.own
-            .iter()
-            .find(|target| target.names().any(|name| asked.is(name)))
+    fn own_named(&self, asked: &Asked) -> Option<Target> {
+        let mut own = self.own.iter();
+        own.find(|target| target.names().any(|name| asked.is(name)))
+            .cloned()
+            .or_else(|| self.catalogues.iter().find_map(|own| own.named(asked)))
     }
 
     /// What goes by exactly this name.
     fn exact(&self, asked: &Asked) -> Option<Target> {
         if let Some(own) = self.own_named(asked) {
-            return Some(own.clone());
-        }
-        if let Some(own) = self.catalogues.iter().find_map(|own| own.named(asked)) {
             return Some(own);
         }
         if let Some(body) = Body::ALL.into_iter().find(|body| asked.is(body.name())) {

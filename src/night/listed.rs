@@ -303,6 +303,8 @@ mod tests {
 
     #[test]
     fn a_body_on_an_orbit_comes_back_from_the_journal_with_its_elements() {
+        /// A Julian date in one number, in days.
+        const ROUNDING_D: f64 = 1e-9;
         let lines = include_str!("../../tests/reference/orbit_elements.txt");
         let (targets, faults) = crate::catalog::orbit_line::read_all(lines);
         assert_eq!((targets.len(), faults.len()), (4, 0));
@@ -320,8 +322,6 @@ mod tests {
             ] {
                 assert!((was - is).abs().degrees() < ROUNDING_DEG, "{text}");
             }
-            /// A Julian date in one number, in days.
-            const ROUNDING_D: f64 = 1e-9;
             assert!(is.perihelion.days_since(was.perihelion).abs() < ROUNDING_D);
             assert_eq!(is.epoch.map(Tt::julian_day), was.epoch.map(Tt::julian_day));
             assert_eq!(is.brightness, was.brightness);

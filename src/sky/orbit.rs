@@ -120,7 +120,7 @@ fn universal_anomaly(q: f64, e: f64, alpha: f64, time: f64) -> f64 {
         let (c2, c3) = stumpff(alpha * square);
         let over = way * (q + e * square * c3) - since;
         let next = way - over / (q + e * square * c2);
-        if !(next < way) {
+        if next >= way || next.is_nan() {
             break;
         }
         way = next;

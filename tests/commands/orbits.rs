@@ -43,11 +43,40 @@ fn old_elements_carry_a_caution() {
 #[test]
 fn a_bad_line_is_reported_by_check_and_leaves_the_others_usable() {
     let home = Home::new();
-    let bad = std::fs::read_to_string(repository("tests/files/bad/orbits-minor-planets.mpc"));
+    let bad = std::fs::read_to_string(repository(
+        "tests/files/bad/catalogs/orbits-minor-planets.mpc",
+    ));
     let file = home.write("config/nonius/catalogs/mine.mpc", &bad.unwrap());
     let checked = home.run(&["check", &file]);
     assert_eq!(checked.status, 2, "{}", checked.err);
     assert!(checked.err.contains("mine.mpc:7:21\n"), "{}", checked.err);
-    let dialled = home.out(&["dial", "Ceres", "--at", "2020-06-17T22:00:00Z"]);
-    assert!(dialled.contains("(1) Ceres"), "{dialled}");
+    let dialled = home.run(&["dial", "Ceres", "--at", "2020-06-17T22:00:00Z"]);
+    assert_eq!(dialled.status, 0, "{}", dialled.err);
+    assert!(dialled.out.contains("(1) Ceres"), "{}", dialled.out);
+    assert!(
+        dialled.err.starts_with("warning: 6 rows of"),
+        "{}",
+        dialled.err
+    );
+}
+
+#[test]
+fn a_wanderer_is_found_by_every_name_it_goes_by() {
+    let home = home();
+    for (asked, name) in [
+        ("Ceres", "(1) Ceres"),
+        ("1 Ceres", "(1) Ceres"),
+        ("(2) pallas", "(2) Pallas"),
+        ("hale bopp", "C/1995 O1 (Hale-Bopp)"),
+        ("C/1995 O1", "C/1995 O1 (Hale-Bopp)"),
+        ("panstarrs", "C/2015 A2 (PANSTARRS)"),
+    ] {
+        let sheet = home.json(&["dial", asked, "--at", "2020-06-17T23:00:00Z"]);
+        assert_eq!(text(&sheet["dials"][0], "/target"), name, "{asked}");
+    }
+    let found = home.json(&["find", "ceres", "--kind", "minor planet"]);
+    let found = &found["found"][0];
+    assert_eq!(text(found, "/name"), "(1) Ceres");
+    assert_eq!(text(found, "/catalogue"), "orbits");
+    assert!(found["ra_deg"].is_null(), "{found}");
 }

@@ -37,7 +37,7 @@ pub struct Spoilt {
 
 /// What really was.
 pub enum Truth {
-    Star(Target),
+    Star(Box<Target>),
     Hour(Kind, Reading),
     Dec(Kind, Reading),
     Side(Side),
@@ -258,7 +258,7 @@ fn other_star(chance: &mut Chance, night: &Night<'_>) -> Option<Spoilt> {
             ..read
         },
         circumstances: agreed(),
-        truth: Truth::Star(other.clone()),
+        truth: Truth::Star(Box::new(other.clone())),
     })
 }
 

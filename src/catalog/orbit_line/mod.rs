@@ -87,25 +87,31 @@ pub fn read_as(format: Format, line: &str) -> Result<Target, TextFault> {
     }
 }
 
+/// The same for a line among others of a format: it is one of them unless it shows the other format, or is too short
+/// for either.
+pub fn read_among(usual: Option<Format>, line: &str) -> Result<Target, TextFault> {
+    /// A line of fewer columns holds no elements in either format, and is something else.
+    const SHORTEST: usize = 60;
+    let damaged = usual.filter(|_| line.len() > SHORTEST);
+    match Format::of_line(line).or(damaged) {
+        Some(format) => read_as(format, line),
+        None => read(line),
+    }
+}
+
 /// All targets of a text, and what is wrong with the lines that are none, each at its place in the text.
 ///
 /// The heading of the file and empty lines are passed over. A discoverer's name alone that several comets of the
 /// text share ("PANSTARRS") is none of theirs.
 #[must_use]
 pub fn read_all(text: &str) -> (Vec<Target>, Vec<TextFault>) {
-    /// A line of fewer columns holds no elements in either format, and is something else.
-    const SHORTEST: usize = 60;
     let (mut targets, mut faults) = (Vec::new(), Vec::new());
     let usual = Format::of_text(text);
     let mut at = heading(text);
     for line in text.get(at..).unwrap_or("").split_inclusive('\n') {
         let said = line.trim_end();
         if !said.is_empty() {
-            let damaged = usual.filter(|_| said.len() > SHORTEST);
-            let read = match Format::of_line(said).or(damaged) {
-                Some(format) => read_as(format, said),
-                None => read(said),
-            };
+            let read = read_among(usual, said);
             match read {
                 Ok(target) => targets.push(target),
                 Err(fault) => faults.push(TextFault {
@@ -139,7 +145,7 @@ mod tests {
     use crate::sky::{Brightness, Orbit, Source};
     use crate::time::Tt;
 
-    /// Source: PyPI skyfield 1.55, skyfield/tests/test_keplerlib.py, lines of MPCORB of 2020 and 2022.
+    /// Source: `PyPI` skyfield 1.55, `skyfield/tests/test_keplerlib.py`, lines of the orbits of 2020 and 2022.
     const CERES: &str = "00001    3.4   0.15 K205V 162.68631   73.73161   80.28698   10.58862  0.0775571  0.21406009   2.7676569  0 MPO492748  6751 115 1801-2019 0.60 M-v 30h Williams   0000      (1) Ceres              20190915";
     const PALLAS: &str = "00002    4.11  0.15 K221L 272.47992  310.69724  172.91658   34.92531  0.2299930  0.21366046   2.7711069  0 MPO681823  8875 119 1804-2022 0.58 M-c 28k Pan        0000      (2) Pallas             20220105";
     /// Source: the same file, lines of the comets' elements.

@@ -9,6 +9,7 @@ use crate::catalog::Target;
 use crate::site::fault::{Fault, Faults, FileText};
 use crate::site::own::cannot_be_read;
 use crate::site::own::csv_format::Csv;
+use crate::site::own::orbits::Orbits;
 use crate::site::own::votable::Votable;
 
 /// What stands before the rows is looked for among so many bytes.
@@ -46,6 +47,9 @@ pub(super) fn of(path: &Path, file: &File) -> Result<Box<dyn Format>, Faults> {
     if Votable::is_begun_by(&head.text) {
         return Ok(Box::new(Votable::of(&head)?));
     }
+    if Orbits::is_begun_by(path, &head.text) {
+        return Ok(Box::new(Orbits::of(&head)));
+    }
     Ok(Box::new(Csv::of(&head)?))
 }
 
@@ -69,5 +73,8 @@ fn head(mut file: &File) -> io::Result<Vec<u8>> {
 #[must_use]
 pub fn is_told_by_beginning(path: &Path) -> bool {
     let beginning = File::open(path).and_then(|file| head(&file));
-    beginning.is_ok_and(|head| Votable::is_begun_by(&String::from_utf8_lossy(&head)))
+    beginning.is_ok_and(|head| {
+        let text = String::from_utf8_lossy(&head);
+        Votable::is_begun_by(&text) || Orbits::is_begun_by(path, &text)
+    })
 }

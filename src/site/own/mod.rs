@@ -7,6 +7,7 @@
 mod csv_format;
 mod format;
 mod kept;
+mod orbits;
 mod pieces;
 mod rows;
 mod votable;
