@@ -189,7 +189,8 @@ Made by make_doubles.py beside this file. Changes made: which stars are pairs is
 angle are computed from the places of the two stars in the source. Of {len(remembered)} remembered pairs {counted['dropped']} are dropped: the star's Hp
 does not fit, or the source's pair is not within {SEPARATION_SLACK}" and {SEPARATION_SHARE:.0%} of the remembered separation and {ANGLE_SLACK:.0f} degrees of the
 angle ({MOVING:.0f} times that for a pair whose orbit shows; of two stars alike within {ALIKE} mag the
-first is the remembered one). Measured angles are those of the ICRS, not of date.
+first is the remembered one, which need not be the one of the Hipparcos number). Hp fits within {HP_TOLERANCE} mag of
+the primary or of the two together. Measured angles are those of the ICRS, not of date.
 Columns: hip = Hipparcos number of the primary; pair = components; separation_arcsec; angle_deg = position angle of the
 second star from the first, north through east, degrees; primary, secondary = magnitudes: Gaia's G, Hipparcos' Hp, or V
 where remembered; epoch = year of the measure; source."""

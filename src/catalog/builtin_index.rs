@@ -1,6 +1,7 @@
 //! The index of the tables compiled into the program, made when something is searched for the first time.
 
 use crate::catalog::deep_sky::{DeepSky, DeepSkyObject};
+use crate::catalog::facts::FactTables;
 use crate::catalog::index::{Builder, Facts, Index, Stamp};
 use crate::catalog::stars::{Star, StarNames, Stars};
 use crate::catalog::{Constellation, Kind};
@@ -37,7 +38,7 @@ pub struct BuiltInIndex {
 impl BuiltInIndex {
     /// Of the stars and the tables of clusters, nebulae and galaxies.
     #[must_use]
-    pub fn new(stars: &Stars, deep_sky: &[DeepSky]) -> Self {
+    pub fn new(stars: &Stars, deep_sky: &[DeepSky], facts: &FactTables) -> Self {
         let mut builder = Builder::default();
         let mut entries = Vec::new();
         for object in deep_sky.iter().flat_map(|table| table.all()) {
@@ -53,13 +54,17 @@ impl BuiltInIndex {
             }
             entries.push(Entry::DeepSky(object));
         }
+        let doubles: Vec<&str> = facts.doubles().collect();
+        let variables: Vec<&str> = facts.variables().collect();
         let mut named = stars.named().peekable();
         for star in stars.all() {
             builder.row(Facts {
                 reference: entries.len() as u64,
                 magnitude: star.magnitude().map(single),
                 direction: None,
-                kinds: Kind::Star.bit(),
+                kinds: Kind::Star.bit()
+                    | bit_if(Kind::DoubleStar, doubles.contains(&star.hip_text()))
+                    | bit_if(Kind::VariableStar, variables.contains(&star.hip_text())),
                 constellation: position(star.constellation_position()),
             });
             // both tables are in order of the number
@@ -92,6 +97,10 @@ impl BuiltInIndex {
         let reference = self.index.as_ref()?.reference(row)?;
         self.entries.get(usize::try_from(reference).ok()?).copied()
     }
+}
+
+const fn bit_if(kind: Kind, it_is: bool) -> u32 {
+    if it_is { kind.bit() } else { 0 }
 }
 
 /// A magnitude as an index keeps it.

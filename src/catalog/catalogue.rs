@@ -5,6 +5,7 @@ use std::sync::{Arc, OnceLock};
 use crate::catalog::asked::{Asked, Fit};
 use crate::catalog::builtin_index::BuiltInIndex;
 use crate::catalog::deep_sky::DeepSky;
+use crate::catalog::facts::FactTables;
 use crate::catalog::own::OwnCatalogue;
 use crate::catalog::stars::{Star, StarNames, Stars};
 use crate::catalog::target::Origin;
@@ -139,8 +140,13 @@ impl Catalogue {
 
     /// The index of the built-in tables, made when it is first asked for.
     pub(super) fn built_in(&self) -> &BuiltInIndex {
-        self.built_in
-            .get_or_init(|| Arc::new(BuiltInIndex::new(&self.stars, &[self.messier, self.ngc])))
+        self.built_in.get_or_init(|| {
+            Arc::new(BuiltInIndex::new(
+                &self.stars,
+                &[self.messier, self.ngc],
+                &FactTables::builtin(),
+            ))
+        })
     }
 
     /// The target of a name, or of coordinates, forgiving of case, gaps and usual spellings.

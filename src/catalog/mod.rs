@@ -10,6 +10,7 @@ mod builtin_index;
 mod catalogue;
 pub mod constellation;
 mod deep_sky;
+pub mod facts;
 mod faint_stars;
 mod fold;
 pub mod given;
@@ -33,6 +34,7 @@ pub mod target;
 
 pub use catalogue::{Catalogue, Unresolved};
 pub use constellation::Constellation;
+pub use facts::{Extreme, Facts, Pair, Variable};
 pub use greek::Greek;
 pub use kind::{Kind, UnknownKind};
 pub use list::{TargetList, clean};

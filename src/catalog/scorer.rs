@@ -5,7 +5,7 @@ use crate::catalog::fold::Words;
 use crate::catalog::likeness::Typed;
 use crate::catalog::stars::{Star, StarNames};
 use crate::catalog::surroundings::Surroundings;
-use crate::catalog::{Constellation, Kind, Target};
+use crate::catalog::{Constellation, Target};
 
 /// What is typed, and the words of one entry after another.
 #[derive(Clone, Debug)]
@@ -43,10 +43,10 @@ impl Scorer {
     /// Takes what stands beside the names that follow.
     fn beside(
         &mut self,
-        kind: impl FnOnce() -> Kind,
+        kinds: impl FnOnce() -> u32,
         constellation: impl FnOnce() -> Option<usize>,
     ) {
-        self.around.fill(&mut self.beside, kind, constellation);
+        self.around.fill(&mut self.beside, kinds, constellation);
     }
 
     /// The likeness of the best of several names.
@@ -66,20 +66,20 @@ impl Scorer {
             return 1.0;
         }
         let position = || Constellation::position(target.constellation?.abbreviation);
-        self.beside(|| target.kind, position);
+        self.beside(|| target.kind.bit(), position);
         self.best(target.names())
     }
 
     /// The likeness of a cluster, nebula or galaxy.
     pub fn deep_sky(&mut self, object: DeepSkyObject) -> f64 {
-        self.beside(|| object.kind(), || object.constellation_position());
+        self.beside(|| object.kind().bit(), || object.constellation_position());
         self.best(object.names())
     }
 
-    /// The likeness of a star by its names.
-    pub fn star(&mut self, names: &StarNames) -> f64 {
+    /// The likeness of a star, which is of these kinds, by its names.
+    pub fn star(&mut self, names: &StarNames, kinds: u32) -> f64 {
         let constellation = Constellation::position(names.constellation);
-        self.beside(|| Kind::Star, || constellation);
+        self.beside(|| kinds, || constellation);
         let proper = self.best(names.proper());
         let within = Some(self.around.within_name(constellation));
         // letter and number are written in the table as they fold

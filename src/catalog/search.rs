@@ -122,7 +122,7 @@ impl Catalogue {
                 if !filter.is_near(|| entry.place()) {
                     return None;
                 }
-                let score = self.score(scorer, entry);
+                let score = self.score(scorer, entry, index.kinds_of(row));
                 if score <= 0.0 {
                     return None;
                 }
@@ -150,7 +150,7 @@ impl Catalogue {
         best.found()
     }
 
-    fn score(&self, scorer: &mut Scorer, entry: Entry) -> f64 {
+    fn score(&self, scorer: &mut Scorer, entry: Entry, kinds: u32) -> f64 {
         if scorer.typed().is_empty() {
             return 1.0;
         }
@@ -158,7 +158,7 @@ impl Catalogue {
             Entry::DeepSky(object) => scorer.deep_sky(object),
             Entry::Star(star) => {
                 let names = self.stars.names_of(star);
-                names.map_or(0.0, |names| scorer.star(&names))
+                names.map_or(0.0, |names| scorer.star(&names, kinds))
             }
         }
     }
@@ -282,6 +282,7 @@ mod tests {
     use proptest::prelude::*;
 
     use super::*;
+    use crate::catalog::facts::FactTables;
 
     const STARS: &str = "hip,ra_deg,dec_deg,pm_ra_mas,pm_dec_mas,parallax_mas,hp,b_v,constellation\n\
         4427,14.17712600,60.71674000,25.17,-3.92,5.94,2.17,-0.05,Cas\n\
@@ -395,9 +396,20 @@ mod tests {
             .into_iter()
             .map(|body| scorer.target(&solar_system::target(body)))
             .collect();
+        let facts = FactTables::builtin();
+        let kinds = |hip: &str| {
+            let double = facts.doubles().any(|double| double == hip);
+            let variable = facts.variables().any(|variable| variable == hip);
+            Kind::Star.bit()
+                | (u32::from(double) * Kind::DoubleStar.bit())
+                | (u32::from(variable) * Kind::VariableStar.bit())
+        };
         let objects = catalogue.messier.all().chain(catalogue.ngc.all());
         scores.extend(objects.map(|object| scorer.deep_sky(object)));
-        scores.extend(catalogue.stars.named().map(|names| scorer.star(&names)));
+        scores.extend(catalogue.stars.named().map(|names| {
+            let star = catalogue.star(&names).unwrap();
+            scorer.star(&names, kinds(star.hip_text()))
+        }));
         scores.retain(|score| *score > 0.0);
         scores.sort_by(|a, b| b.total_cmp(a));
         scores.truncate(limit);

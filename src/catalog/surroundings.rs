@@ -81,21 +81,25 @@ impl Surroundings {
         found.unwrap_or(&self.nothing)
     }
 
-    /// For every word typed, its likeness to the words of a kind and a constellation (by its place
+    /// For every word typed, its likeness to the words of some kinds (by their bits) and a constellation (by its place
     /// among [`CONSTELLATIONS`]) beside a name; the two are looked up only if they matter.
     pub fn fill(
         &self,
         beside: &mut Vec<f64>,
-        kind: impl FnOnce() -> Kind,
+        kinds: impl FnOnce() -> u32,
         constellation: impl FnOnce() -> Option<usize>,
     ) {
         beside.clone_from(&self.nothing);
         if !self.matter {
             return;
         }
-        let of_kind = self.kinds.get(kind() as usize);
+        let bits = kinds();
+        let told = Kind::ALL.iter().zip(&self.kinds);
+        let of_kind = told
+            .filter(|(kind, _)| kind.bit() & bits != 0)
+            .map(|(_, told)| told);
         let of_constellation = constellation().and_then(|at| self.constellations.get(at));
-        for likenesses in of_kind.into_iter().chain(of_constellation) {
+        for likenesses in of_kind.chain(of_constellation) {
             raise(beside, likenesses);
         }
     }
@@ -118,12 +122,12 @@ mod tests {
         let mut beside = Vec::new();
         around.fill(
             &mut beside,
-            || Kind::Galaxy,
+            || Kind::Galaxy.bit(),
             || Constellation::position("Vir"),
         );
         assert!((beside[0] - 1.0).abs() < f64::EPSILON);
         assert!(beside[1] > 0.8 && beside[2] <= 0.0);
-        around.fill(&mut beside, || Kind::OpenCluster, || None);
+        around.fill(&mut beside, || Kind::OpenCluster.bit(), || None);
         assert!(beside.iter().all(|likeness| *likeness <= 0.0));
     }
 

@@ -10,6 +10,7 @@ use crate::estimate::{Prediction, chance};
 use crate::metal::{Mount, Optic, Side, TubeDirections, to_axes};
 use crate::sky::{Body, Moment, Observed, Source};
 
+pub mod about;
 pub mod aside;
 pub mod bright;
 pub mod caution;

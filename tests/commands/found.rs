@@ -133,3 +133,23 @@ fn a_list_is_built_by_searching_and_keeps_what_is_written_in_it() {
     let ran = home.run(&["find", "m 13", "--list", "no/such folder"]);
     assert_eq!(ran.status, 2, "{ran:?}");
 }
+
+#[test]
+fn doubles_and_variables_are_found_by_their_kind() {
+    let home = Home::new();
+    let doubles = names(&home, &["--kind", "double star", "--constellation", "Gem"]);
+    assert!(doubles.contains(&"Castor".to_owned()), "{doubles:?}");
+    let variables = names(
+        &home,
+        &["--kind", "variable star", "--constellation", "Per"],
+    );
+    assert!(variables.contains(&"Algol".to_owned()), "{variables:?}");
+    assert!(!variables.contains(&"Mirfak".to_owned()), "{variables:?}");
+    let typed = names(&home, &["double", "star", "gem", "--limit", "5"]);
+    assert!(typed.contains(&"Castor".to_owned()), "{typed:?}");
+    let page = home.out(&["dial", "Algol", "--at", EVENING]);
+    assert!(
+        page.contains("  star                varies from 2.1 to 3.4 every 2.87 days"),
+        "{page}"
+    );
+}

@@ -223,7 +223,11 @@ impl Index {
     /// Entries of a section; nothing beyond its end.
     pub(super) fn entries(&self, section: Section, range: Range<u64>) -> Cow<'_, [u8]> {
         let place = self.place(section);
-        let at = |entry: u64| place.start + entry * section.width();
+        let at = |entry: u64| {
+            place
+                .start
+                .saturating_add(entry.saturating_mul(section.width()))
+        };
         let (start, end) = (at(range.start), at(range.end));
         if start > end || end > place.end {
             return Cow::Borrowed(&[]);
@@ -240,6 +244,15 @@ impl Index {
     #[must_use]
     pub fn kinds(&self) -> Vec<u32> {
         numbers(&self.of_rows(Section::Kinds)).collect()
+    }
+
+    /// The bits of the kinds of one row.
+    #[must_use]
+    pub fn kinds_of(&self, row: usize) -> u32 {
+        let row = u64::try_from(row).unwrap_or(u64::MAX - 1);
+        numbers(&self.entries(Section::Kinds, row..row + 1))
+            .next()
+            .unwrap_or(0)
     }
 
     /// The place in the table of constellations of every row's; 255 for none.

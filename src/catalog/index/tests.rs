@@ -40,7 +40,7 @@ fn score(typed: &Typed, around: &Surroundings, (names, _, kind, constellation): 
     let mut beside = Vec::new();
     around.fill(
         &mut beside,
-        || *kind,
+        || kind.bit(),
         || constellation.and_then(Constellation::position),
     );
     let scores = names.iter().map(|name| {

@@ -6,6 +6,7 @@ use crate::catalog::Target;
 use crate::command::dial::words;
 use crate::command::dial::{Answer, Outcome};
 use crate::command::station::Station;
+use crate::dial::about;
 use crate::dial::bright::FAINTEST_RIVAL_HP;
 use crate::dial::neighbour::{Neighbour, neighbour};
 use crate::dial::{Chance, Dial};
@@ -55,6 +56,9 @@ fn setting(
 ) -> io::Result<()> {
     writeln!(out, "{}", description(target))?;
     let mut row = |label: &str, text: &str| writeln!(out, "  {label:<20}{text}");
+    for line in about::lines(moment, target) {
+        row("star", &line)?;
+    }
     row("side", dial.side.in_words())?;
     let mount = &station.mount;
     let hour_lies = mount
