@@ -1,7 +1,7 @@
 //! The observer's own catalogues: files of any size in a format of the trade, of which a row is read when it is wanted.
 //!
-//! [`open`] tells the format by the file's first lines ([`format`]) and brings the index of its names, kept from an earlier
-//! run if the file is still what it was ([`kept`]), else made now, which for millions of rows takes seconds. Rows that
+//! [`open`] tells the format by the file's first lines (`format.rs`) and brings the index of its names, kept from an earlier
+//! run if the file is still what it was (`kept.rs`), else made now, which for millions of rows takes seconds. Rows that
 //! cannot be read are counted and left out; [`check`] says what is wrong with them.
 
 mod csv_format;
