@@ -1,5 +1,6 @@
 //! The index of the tables compiled into the program, made when something is searched for the first time.
 
+use crate::catalog::asked::Asked;
 use crate::catalog::deep_sky::{DeepSky, DeepSkyObject};
 use crate::catalog::facts::FactTables;
 use crate::catalog::index::{Builder, Facts, Index, Stamp};
@@ -89,6 +90,26 @@ impl BuiltInIndex {
             index: builder.index(&Stamp::default()),
             entries,
         }
+    }
+
+    /// The cluster, nebula or galaxy that goes by exactly this name; of several the first of its table.
+    #[must_use]
+    pub fn object_named(&self, asked: &Asked) -> Option<DeepSkyObject> {
+        let index = self.index.as_ref()?;
+        let rows = asked
+            .spellings()
+            .flat_map(|spelling| index.rows_named(spelling));
+        // the rows of the tables go by their order
+        let mut references: Vec<u64> = rows.filter_map(|row| index.reference(row)).collect();
+        references.sort_unstable();
+        let entries = references
+            .into_iter()
+            .filter_map(|reference| self.entries.get(usize::try_from(reference).ok()?));
+        let mut objects = entries.filter_map(|entry| match entry {
+            Entry::DeepSky(object) => Some(*object),
+            Entry::Star(_) => None,
+        });
+        objects.find(|object| object.names().any(|name| asked.is(name)))
     }
 
     /// The table's row of a row of the index.

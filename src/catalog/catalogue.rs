@@ -154,8 +154,14 @@ impl Catalogue {
         self.named(text)?.ok_or_else(|| self.unknown(text))
     }
 
-    /// The same for one whose being unknown is nothing to explain: no search for names like it.
-    pub(super) fn named(&self, text: &str) -> Result<Option<Target>, Unresolved> {
+    /// The same where its being unknown, or wrong, is nothing to explain: no search for names like it.
+    #[must_use]
+    pub fn known(&self, text: &str) -> Option<Target> {
+        self.named(text).ok().flatten()
+    }
+
+    /// The same, with what is wrong with a text that could be a target.
+    fn named(&self, text: &str) -> Result<Option<Target>, Unresolved> {
         if given::looks_like(text) {
             return match (given::read(text), self.own_named(&Asked::new(text))) {
                 (Ok(place), _) => Ok(Some(place)),
@@ -226,10 +232,12 @@ impl Catalogue {
         if let Some(star) = named.and_then(|names| self.star(&names)) {
             return self.stars.target(star);
         }
-        // by far the longest table last
-        of_name(self.messier)
-            .or_else(|| of_name(self.ngc))?
-            .target()
+        // by far the longest table last, by its index if there is one
+        match self.built_in.get() {
+            Some(built_in) => built_in.object_named(asked),
+            None => of_name(self.messier).or_else(|| of_name(self.ngc)),
+        }?
+        .target()
     }
 
     /// The star of a letter asked for without the number of its component.

@@ -52,11 +52,7 @@ impl Catalogue {
             Some(place) => Target {
                 source: Source::Catalogue(place),
                 catalogue: Origin::List,
-                ..self
-                    .named(&name)
-                    .ok()
-                    .flatten()
-                    .unwrap_or_else(|| nameless(place))
+                ..self.known(&name).unwrap_or_else(|| nameless(place))
             },
         };
         if written.place.is_some() {

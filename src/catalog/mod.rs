@@ -6,12 +6,14 @@
 //! read in place, so that a run that wants one target pays for one.
 
 mod asked;
+mod best;
 mod builtin_index;
 mod catalogue;
 pub mod constellation;
 mod deep_sky;
 pub mod facts;
 mod faint_stars;
+mod filter;
 mod fold;
 pub mod given;
 pub mod greek;
@@ -35,12 +37,13 @@ pub mod target;
 pub use catalogue::{Catalogue, Unresolved};
 pub use constellation::Constellation;
 pub use facts::{Extreme, Facts, Pair, Variable};
+pub use filter::{Filter, Near};
 pub use greek::Greek;
 pub use kind::{Kind, UnknownKind};
 pub use list::{TargetList, clean};
 pub use own::{OwnCatalogue, Rows};
 pub use report::FindReport;
-pub use search::{Filter, Found, Near};
+pub use search::Found;
 pub use sieve::kept_direction;
 pub use star_field::StarPlace;
 pub use target::{Origin, Target};

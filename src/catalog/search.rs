@@ -1,52 +1,14 @@
 //! The search through all catalogues: one engine for the command and for the screen.
 
-use crate::angle::Angle;
+use crate::catalog::best::Best;
 use crate::catalog::builtin_index::Entry;
-use crate::catalog::catalogue::distance_deg;
 use crate::catalog::index::{Candidates, Index};
 use crate::catalog::likeness::Typed;
 use crate::catalog::scorer::Scorer;
 use crate::catalog::sieve::Sieve;
 use crate::catalog::stars::Star;
-use crate::catalog::{Catalogue, Constellation, Kind, Target, solar_system};
-use crate::sky::{Body, CataloguePlace};
-
-/// What is wanted besides the words typed.
-#[derive(Clone, Debug)]
-pub struct Filter {
-    /// Only this kind.
-    pub kind: Option<Kind>,
-    /// Only in this constellation.
-    pub constellation: Option<&'static Constellation>,
-    /// Only what is brighter than this magnitude; what has none is left out.
-    pub brighter_than: Option<f64>,
-    /// Only what stands near a place; Sun, Moon and planets, which wander, are left out.
-    pub near: Option<Near>,
-    /// No more than so many.
-    pub limit: usize,
-}
-
-/// Within a distance of a place.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Near {
-    /// In the ICRS at J2000.0, as [`Catalogue::fixed_place`] gives it.
-    pub place: CataloguePlace,
-    /// The greatest distance on the sky.
-    pub within: Angle,
-}
-
-impl Default for Filter {
-    /// Everything, twenty at most.
-    fn default() -> Self {
-        Self {
-            kind: None,
-            constellation: None,
-            brighter_than: None,
-            near: None,
-            limit: 20,
-        }
-    }
-}
+use crate::catalog::{Catalogue, Filter, Target, solar_system};
+use crate::sky::Body;
 
 /// A target found, and how well it fits what was typed.
 #[derive(Clone, Debug, PartialEq)]
@@ -60,19 +22,6 @@ pub struct Found {
 /// Rows of a large catalogue read and found less like what was typed than their words promised, after which a search gives
 /// up looking for better: it only happens where the words typed belong to different names of one thing.
 const MOST_DISAPPOINTMENTS: usize = 20_000;
-
-/// Something in the catalogues that fits.
-struct Hit {
-    target: Target,
-    score: f64,
-    magnitude: f64,
-}
-
-/// The best found so far.
-struct Best {
-    hits: Vec<Hit>,
-    limit: usize,
-}
 
 impl Catalogue {
     /// What fits the words typed and the filter, the best first and among equals the brightest.
@@ -203,86 +152,14 @@ fn looked_through(
     best
 }
 
-impl Best {
-    const fn of(limit: usize) -> Self {
-        Self {
-            hits: Vec::new(),
-            limit,
-        }
-    }
-
-    /// True if there are as many as are wanted, none worse than this.
-    fn is_full_of(&self, score: f64) -> bool {
-        self.hits.len() >= self.limit && self.hits.last().is_none_or(|worst| worst.score >= score)
-    }
-
-    /// Takes one in if it is among the best, after those that are as good and as bright.
-    fn offer(
-        &mut self,
-        score: f64,
-        magnitude: Option<f64>,
-        target: impl FnOnce() -> Option<Target>,
-    ) {
-        let magnitude = magnitude.unwrap_or(f64::INFINITY);
-        let place = self.hits.partition_point(|hit| {
-            let worse = hit.score.total_cmp(&score).reverse();
-            worse.then(hit.magnitude.total_cmp(&magnitude)).is_le()
-        });
-        if score <= 0.0 || place >= self.limit {
-            return;
-        }
-        let Some(target) = target() else { return };
-        let hit = Hit {
-            target,
-            score,
-            magnitude,
-        };
-        self.hits.insert(place, hit);
-        self.hits.truncate(self.limit);
-    }
-
-    fn join(&mut self, other: Self) {
-        for hit in other.hits {
-            let target = hit.target;
-            self.offer(hit.score, target.magnitude, || Some(target));
-        }
-    }
-
-    fn found(self) -> Vec<Found> {
-        let found = self.hits.into_iter();
-        found
-            .map(|Hit { target, score, .. }| Found { target, score })
-            .collect()
-    }
-}
-
-impl Filter {
-    /// True of a target that passes.
-    fn passes(&self, target: &Target) -> bool {
-        self.kind.is_none_or(|kind| target.kind.is_a(kind))
-            && self
-                .constellation
-                .is_none_or(|wanted| target.constellation == Some(wanted))
-            && self
-                .brighter_than
-                .is_none_or(|limit| target.magnitude.is_some_and(|magnitude| magnitude < limit))
-            && self.is_near(|| Catalogue::fixed_place(target))
-    }
-
-    /// True if a place is within the distance wanted, or none is.
-    fn is_near(&self, place: impl FnOnce() -> Option<CataloguePlace>) -> bool {
-        self.near.is_none_or(|near| {
-            place().is_some_and(|place| distance_deg(&near.place, &place) <= near.within.degrees())
-        })
-    }
-}
-
 #[cfg(test)]
 mod tests {
     use proptest::prelude::*;
 
     use super::*;
+    use crate::angle::Angle;
     use crate::catalog::facts::FactTables;
+    use crate::catalog::{Constellation, Kind, Near};
 
     const STARS: &str = "hip,ra_deg,dec_deg,pm_ra_mas,pm_dec_mas,parallax_mas,hp,b_v,constellation\n\
         4427,14.17712600,60.71674000,25.17,-3.92,5.94,2.17,-0.05,Cas\n\

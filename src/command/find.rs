@@ -10,6 +10,7 @@ use crate::catalog::{
     Catalogue, Constellation, Filter, FindReport, Found, Kind, Near, Target, Unresolved, clean,
 };
 use crate::command::catalogues;
+use crate::command::columns;
 use crate::command::new;
 use crate::command::options::Common;
 use crate::command::station::Station;
@@ -171,21 +172,7 @@ fn table(found: &[Found], out: &mut dyn Write) -> anyhow::Result<()> {
     let rows: Vec<[String; HEADINGS.len()]> = std::iter::once(HEADINGS.map(str::to_owned))
         .chain(found.iter().map(row))
         .collect();
-    let widths: [usize; HEADINGS.len()] = std::array::from_fn(|column| {
-        let cells = rows.iter().filter_map(|row| row.get(column));
-        cells.map(|cell| cell.chars().count()).max().unwrap_or(0)
-    });
-    for row in &rows {
-        let cells = row.iter().zip(widths).enumerate();
-        let line: Vec<String> = cells
-            .map(|(column, (cell, width))| match column {
-                // numbers stand under one another at their right ends
-                3..=5 => format!("{cell:>width$}"),
-                _ => format!("{cell:<width$}"),
-            })
-            .collect();
-        writeln!(out, "{}", line.join("  ").trim_end())?;
-    }
+    columns::print(&rows, |column| (3..=5).contains(&column), out)?;
     Ok(writeln!(out, "\nplaces: ICRS, epoch J2000.0")?)
 }
 

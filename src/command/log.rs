@@ -5,6 +5,7 @@ use std::path::{Path, PathBuf};
 
 use clap::{Args, ValueEnum};
 
+use crate::command::columns;
 use crate::night::{Log, Night, NightSummary, Nights, journal};
 use crate::time;
 
@@ -160,7 +161,7 @@ fn nights_as_text(nights: &Nights, out: &mut dyn Write) -> anyhow::Result<()> {
             night.readings.to_string(),
         ]
     }));
-    print(&table, out)
+    Ok(columns::print(&table, |_| false, out)?)
 }
 
 fn log_as_text(log: &Log, out: &mut dyn Write) -> anyhow::Result<()> {
@@ -186,23 +187,5 @@ fn log_as_text(log: &Log, out: &mut dyn Write) -> anyhow::Result<()> {
             entry.note.clone(),
         ]
     }));
-    print(&table, out)
-}
-
-/// Prints rows with their columns aligned, two spaces between.
-fn print<const N: usize>(rows: &[[String; N]], out: &mut dyn Write) -> anyhow::Result<()> {
-    let mut widths = [0; N];
-    for row in rows {
-        for (width, cell) in widths.iter_mut().zip(row) {
-            *width = cell.chars().count().max(*width);
-        }
-    }
-    for row in rows {
-        let cells = row.iter().zip(widths);
-        let padded: Vec<_> = cells
-            .map(|(cell, width)| format!("{cell:width$}"))
-            .collect();
-        writeln!(out, "{}", padded.join("  ").trim_end())?;
-    }
-    Ok(())
+    Ok(columns::print(&table, |_| false, out)?)
 }

@@ -8,6 +8,7 @@ use clap::{Parser, Subcommand};
 pub mod calibrate;
 mod catalogues;
 pub mod check;
+mod columns;
 pub mod completions;
 mod demonstration;
 pub mod dial;

@@ -7,6 +7,7 @@ use clap::Args;
 
 use crate::angle::Angle;
 use crate::catalog::clean;
+use crate::command::columns;
 use crate::command::exit::Refused;
 use crate::command::options::{Common, seconds};
 use crate::command::station::Station;
@@ -239,21 +240,7 @@ impl Page<'_> {
         };
         let head = HEADINGS.map(str::to_owned);
         let rows: Vec<[String; 6]> = std::iter::once(head).chain(order.iter().map(row)).collect();
-        let widths: [usize; 6] = std::array::from_fn(|column| {
-            let cells = rows.iter().filter_map(|row| row.get(column));
-            cells.map(|cell| cell.chars().count()).max().unwrap_or(0)
-        });
-        for row in &rows {
-            let cells = row.iter().zip(widths).enumerate();
-            let line: Vec<String> = cells
-                .map(|(column, (cell, width))| match column {
-                    0 => format!("{cell:>width$}"),
-                    _ => format!("{cell:<width$}"),
-                })
-                .collect();
-            writeln!(out, "{}", line.join("  ").trim_end())?;
-        }
-        Ok(())
+        columns::print(&rows, |column| column == 0, out)
     }
 
     fn sums(&self, out: &mut dyn Write) -> io::Result<()> {

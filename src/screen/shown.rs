@@ -247,10 +247,12 @@ impl From<'_> {
 
     fn matches(&self, typed: &str) -> Vec<Target> {
         if typed.trim().is_empty() {
+            // the search has just been opened: the first letter shall not wait for the index
+            self.observatory.catalogue.prepare_search();
             return Vec::new();
         }
         // coordinates, and names typed to the end
-        let resolved = self.observatory.catalogue.resolve(typed).ok();
+        let resolved = self.observatory.catalogue.known(typed);
         let filter = Filter {
             limit: MATCHES,
             ..Filter::default()

@@ -34,6 +34,7 @@ pub mod own;
 pub mod readings_file;
 pub mod site_file;
 pub mod table;
+mod table_columns;
 mod value;
 mod written_angle;
 

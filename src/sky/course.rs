@@ -9,7 +9,8 @@ use crate::angle::{Altitude, Angle, Declination, HourAngle, RightAscension};
 use crate::sky::moment::Moment;
 use crate::sky::place::{Apparent, Observed, Source};
 use crate::sky::refraction;
-use crate::sky::vector::{Vector, equatorial, horizontal, plus, spherical, unit};
+use crate::sky::through_air::lifted;
+use crate::sky::vector::{Vector, plus, spherical, unit};
 use crate::time::sidereal;
 
 /// What wanders is placed so often; between, it is taken to go straight: the Moon, whose place is bent most, by its
@@ -149,19 +150,10 @@ impl Course<'_> {
     /// The observed place after so many seconds.
     #[must_use]
     pub fn observed(&self, after_s: f64) -> Observed {
-        let place = self.apparent(after_s);
         let latitude = self.turning.start.observer().latitude;
-        let (azimuth, airless) = horizontal(place.hour_angle, place.declination, latitude);
-        let refraction = self.turning.lift(airless);
-        let altitude = Altitude::new(airless.angle() + refraction);
-        let (hour_angle, declination) = equatorial(azimuth, altitude, latitude);
-        Observed {
-            hour_angle,
-            declination,
-            azimuth,
-            altitude,
-            refraction,
-        }
+        lifted(&self.apparent(after_s), latitude, |airless| {
+            self.turning.lift(airless)
+        })
     }
 
     /// When it first goes through an hour angle, if it stays among the stars and does so in the time looked at.

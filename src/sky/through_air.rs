@@ -1,28 +1,38 @@
 //! From apparent place to observed place and back, at one moment: the air between.
 
-use crate::angle::{Altitude, Angle, Declination, HourAngle, RightAscension};
+use crate::angle::{Altitude, Angle, Declination, HourAngle, Latitude, RightAscension};
 use crate::sky::body::Body;
 use crate::sky::moment::Moment;
 use crate::sky::place::{Apparent, Observed};
 use crate::sky::refraction;
 use crate::sky::vector::{equatorial, horizontal};
 
+/// The place an apparent one is lifted to, by as much as is said for its airless altitude.
+pub(super) fn lifted(
+    apparent: &Apparent,
+    latitude: Latitude,
+    lift: impl FnOnce(Altitude) -> Angle,
+) -> Observed {
+    let (azimuth, airless) = horizontal(apparent.hour_angle, apparent.declination, latitude);
+    let refraction = lift(airless);
+    let altitude = Altitude::new(airless.angle() + refraction);
+    let (hour_angle, declination) = equatorial(azimuth, altitude, latitude);
+    Observed {
+        hour_angle,
+        declination,
+        azimuth,
+        altitude,
+        refraction,
+    }
+}
+
 impl Moment {
     /// The observed place: the apparent one lifted by refraction.
     #[must_use]
     pub fn observed(&self, apparent: &Apparent) -> Observed {
-        let latitude = self.observer().latitude;
-        let (azimuth, airless) = horizontal(apparent.hour_angle, apparent.declination, latitude);
-        let refraction = refraction::at_true(airless, self.observer().air);
-        let altitude = Altitude::new(airless.angle() + refraction);
-        let (hour_angle, declination) = equatorial(azimuth, altitude, latitude);
-        Observed {
-            hour_angle,
-            declination,
-            azimuth,
-            altitude,
-            refraction,
-        }
+        lifted(apparent, self.observer().latitude, |airless| {
+            refraction::at_true(airless, self.observer().air)
+        })
     }
 
     /// The observed place at an hour angle and declination the tube points to.

@@ -2,17 +2,8 @@
 //! than another ending on the same object and side.
 
 use crate::plan::order::route::Node;
+use crate::plan::order::way::{Way, keep};
 use crate::plan::order::{List, delay_price, price_between, waiting_price};
-
-/// A way of having taken a set of objects.
-#[derive(Clone, Copy)]
-struct Way {
-    node: Node,
-    ends: f64,
-    price: f64,
-    /// Which way of the set without the last object.
-    before: usize,
-}
 
 /// The best order.
 pub(super) fn route(list: &List) -> Vec<Node> {
@@ -65,20 +56,6 @@ pub(super) fn route(list: &List) -> Vec<Node> {
         }
     }
     back(list, &objects, &ways)
-}
-
-/// Keeps a way unless another ending alike is neither later nor dearer; drops those that are both.
-fn keep(ways: &mut Vec<Way>, way: Way) {
-    let alike =
-        |other: &Way| (other.node.object, other.node.window) == (way.node.object, way.node.window);
-    if ways
-        .iter()
-        .any(|other| alike(other) && other.ends <= way.ends && other.price <= way.price)
-    {
-        return;
-    }
-    ways.retain(|other| !(alike(other) && way.ends <= other.ends && way.price <= other.price));
-    ways.push(way);
 }
 
 /// The cheapest way of having taken the most objects, from its end back to its beginning.

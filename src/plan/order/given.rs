@@ -2,6 +2,7 @@
 //! take each.
 
 use crate::plan::order::route::Node;
+use crate::plan::order::way::{Way, keep};
 use crate::plan::order::{List, delay_price, price_between, waiting_price};
 
 /// So many ways of having come to an object are kept, the cheapest and the earliest; there are seldom more than a few that
@@ -57,16 +58,6 @@ fn most(list: &List) -> Vec<usize> {
     chosen
 }
 
-/// A way of having taken the objects so far.
-#[derive(Clone, Copy)]
-struct Way {
-    node: Node,
-    ends: f64,
-    price: f64,
-    /// Which way of the object before.
-    before: usize,
-}
-
 /// The windows to take objects in, in this order, so that the price is least; nothing if they cannot all be taken in it.
 pub(super) fn best_windows(list: &List, objects: &[usize]) -> Vec<Node> {
     let mut ways: Vec<Vec<Way>> = Vec::with_capacity(objects.len());
@@ -117,19 +108,6 @@ pub(super) fn best_windows(list: &List, objects: &[usize]) -> Vec<Node> {
     }
     route.reverse();
     route
-}
-
-/// Keeps a way unless another through the same window is neither later nor dearer; drops those that are both.
-fn keep(ways: &mut Vec<Way>, way: Way) {
-    let same = |other: &Way| other.node.window == way.node.window;
-    if ways
-        .iter()
-        .any(|other| same(other) && other.ends <= way.ends && other.price <= way.price)
-    {
-        return;
-    }
-    ways.retain(|other| !(same(other) && way.ends <= other.ends && way.price <= other.price));
-    ways.push(way);
 }
 
 fn thin(ways: &mut Vec<Way>) {

@@ -21,6 +21,7 @@ mod given;
 mod moves;
 mod route;
 mod search;
+mod way;
 
 use crate::angle::Angle;
 use crate::plan::stand::Stand;

@@ -11,6 +11,7 @@ mod orbits;
 mod pieces;
 mod rows;
 mod votable;
+mod votable_field;
 mod votable_head;
 mod votable_unit;
 mod wrong;

@@ -9,9 +9,10 @@ use std::collections::HashMap;
 use std::ops::Range;
 
 use quick_xml::Reader;
-use quick_xml::events::{BytesStart, Event};
+use quick_xml::events::Event;
 
 use crate::site::fault::Fault;
+use crate::site::own::votable_field::{Field, attribute, chosen};
 use crate::site::own::votable_unit::{Angular, PerYear};
 use crate::sky::Equinox;
 
@@ -62,18 +63,6 @@ pub enum Holds {
     Epoch,
     /// Nothing that is wanted.
     Other,
-}
-
-/// A `FIELD` as it is written.
-#[derive(Clone, Debug, Default)]
-struct Field {
-    name: String,
-    ucd: String,
-    unit: Option<String>,
-    reference: Option<String>,
-    null: Option<String>,
-    is_text: bool,
-    at: Range<usize>,
 }
 
 /// A `COOSYS` as it is written.
@@ -146,78 +135,6 @@ impl Head {
 
 fn position(reader: &Reader<&[u8]>) -> usize {
     usize::try_from(reader.buffer_position()).unwrap_or(usize::MAX)
-}
-
-fn attribute(tag: &BytesStart<'_>, name: &str) -> Option<String> {
-    let found = tag.try_get_attribute(name).ok()??;
-    let text = quick_xml::escape::unescape(&found.value).ok()?;
-    Some(text.trim().to_owned()).filter(|text| !text.is_empty())
-}
-
-impl Field {
-    fn of(tag: &BytesStart<'_>, at: Range<usize>) -> Self {
-        let datatype = attribute(tag, "datatype");
-        Self {
-            name: attribute(tag, "name").unwrap_or_default(),
-            ucd: attribute(tag, "ucd").unwrap_or_default().to_lowercase(),
-            unit: attribute(tag, "unit"),
-            reference: attribute(tag, "ref"),
-            null: None,
-            is_text: datatype.is_some_and(|of| matches!(of.as_str(), "char" | "unicodeChar")),
-            at,
-        }
-    }
-
-    fn has(&self, parts: &[&str]) -> bool {
-        let ucd = self.ucd.as_str();
-        !ucd.contains("error") && parts.iter().all(|part| ucd.contains(part))
-    }
-
-    fn is_main(&self) -> bool {
-        self.ucd.contains("main")
-    }
-
-    fn is_called(&self, names: &[&str]) -> bool {
-        self.ucd.is_empty()
-            && names
-                .iter()
-                .any(|name| name.eq_ignore_ascii_case(&self.name))
-    }
-
-    fn is_ra(&self) -> bool {
-        (self.has(&["pos.eq.ra"]) && !self.has(&["pos.pm"]))
-            || self.has(&["pos_eq_ra"])
-            || self.is_called(&["ra", "raj2000", "_raj2000", "ra_icrs", "ra2000"])
-    }
-
-    fn is_dec(&self) -> bool {
-        (self.has(&["pos.eq.dec"]) && !self.has(&["pos.pm"]))
-            || self.has(&["pos_eq_dec"])
-            || self.is_called(&["dec", "de", "dej2000", "_dej2000", "de_icrs", "dec2000"])
-    }
-
-    fn is_name(&self) -> bool {
-        self.has(&["meta.id"])
-            || self.has(&["id_main"])
-            || self.is_called(&["name", "id", "designation", "main_id"])
-    }
-
-    fn is_magnitude(&self) -> bool {
-        self.has(&["phot.mag"])
-            || self.has(&["phot_mag"])
-            || self.is_called(&["mag", "vmag", "magnitude"])
-    }
-}
-
-/// The one of the columns it is: the main one, else the first.
-fn chosen(
-    fields: &[Field],
-    is_one: impl Fn(&Field) -> bool,
-    is_better: impl Fn(&Field) -> bool,
-) -> Option<usize> {
-    let ones = || fields.iter().enumerate().filter(|(_, field)| is_one(field));
-    let better = ones().find(|(_, field)| is_better(field));
-    better.or_else(|| ones().next()).map(|(at, _)| at)
 }
 
 /// From what is written to what it means.
